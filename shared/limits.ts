@@ -1,0 +1,41 @@
+/** What one call may hold. Served in the OpenAPI document, enforced by the schemas, quoted in refusals. */
+export const limits = {
+  /** Bytes of a request body after decompression. */
+  bodyBytes: 4 * 1024 * 1024,
+  /** Levels of nesting of a JSON body. */
+  jsonDepth: 32,
+  boresPerCall: 2_000,
+  readingsPerBore: 10_000,
+  /** Readings of all bores of one call together. */
+  readingsPerCall: 50_000,
+  stationsPerCall: 2_000,
+  componentsPerCall: 500,
+  supportsPerComponent: 50,
+  padsPerSupport: 12,
+  stockPerCall: 200,
+  idLength: 64,
+  noteLength: 2_000,
+  nameLength: 120,
+  pageSizeDefault: 50,
+  pageSizeMax: 200,
+  faultsListed: 100,
+  echoedTextLength: 100,
+  idempotencyKeyLength: 255,
+} as const;
+
+/**
+ * Bounds of measured quantities, the same number in whatever unit the caller chose.
+ * They are far outside any machine: they keep arithmetic finite, they do not judge a reading.
+ */
+export const bounds = {
+  coordinate: { min: -1e10, max: 1e10 },
+  positiveLength: { min: 1e-6, max: 1e10 },
+  offset: { min: -1e9, max: 1e9 },
+  uncertainty: { min: 1e-12, max: 1e9 },
+  variance: { min: -1e18, max: 1e18 },
+  thickness: { min: 0, max: 1e6 },
+  clockDeg: { min: -360, max: 360 },
+  halfAngleDeg: { min: -89, max: 89 },
+  level: { min: 0.5, max: 1 },
+  weight: { min: 1e-12, max: 1e12 },
+} as const;
