@@ -7,13 +7,21 @@ export const unitsSchema = z
   .strictObject({
     axial: z.enum(unitChoices.axial).meta({ description: "z and lengths along the machine." }),
     bore: z.enum(unitChoices.bore).meta({ description: "Coordinates of points on a wall, diameters." }),
-    offset: z.enum(unitChoices.offset).meta({ description: "Readings from nominal, centres, targets, deviations, tolerances, shims, uncertainties." }),
+    offset: z
+      .enum(unitChoices.offset)
+      .meta({
+        description: "Readings from nominal, centres, targets, deviations, tolerances, shims, uncertainties.",
+      }),
   })
   .meta({ id: "Units", description: "Always stated, never assumed." });
 
 export const seenSchema = z
   .enum(["downstream", "upstream"])
-  .meta({ id: "Seen", description: "The way the reader looked. Answers are always in the downstream view: h to the right, v up." });
+  .meta({
+    id: "Seen",
+    description:
+      "The way the reader looked. Answers are always in the downstream view: h to the right, v up.",
+  });
 
 export const levelSchema = z
   .number()
@@ -21,7 +29,11 @@ export const levelSchema = z
   .lt(bounds.level.max)
   .meta({ description: "Coverage probability of expanded uncertainties; 0.95 when absent." });
 
-export const noteSchema = z.string().max(limits.noteLength).nullable().meta({ description: "Free text kept with the record." });
+export const noteSchema = z
+  .string()
+  .max(limits.noteLength)
+  .nullable()
+  .meta({ description: "Free text kept with the record." });
 export const jobIdSchema = z.uuid().nullable().meta({ description: "The job this calculation belongs to." });
 
 /** h to the right, v up, in `offset` units. */
@@ -36,7 +48,11 @@ export const covarianceSchema = z
   .max(2)
   .meta({ id: "Covariance", description: "2 × 2 covariance of (h, v), in the square of the offset unit." });
 
-export const dofSchema = z.number().positive().nullable().meta({ description: "Degrees of freedom; null or absent is infinite." });
+export const dofSchema = z
+  .number()
+  .positive()
+  .nullable()
+  .meta({ description: "Degrees of freedom; null or absent is infinite." });
 
 export const warningSchema = z
   .object({ code: z.string(), detail: z.string() })
@@ -51,13 +67,18 @@ export const deviationAnswer = z
     h: z.number(),
     v: z.number(),
     radial: z.number(),
-    clockDeg: z.number().nullable().meta({ description: "Direction of the deviation, [0, 360); null when it is zero." }),
+    clockDeg: z
+      .number()
+      .nullable()
+      .meta({ description: "Direction of the deviation, [0, 360); null when it is zero." }),
   })
   .meta({ id: "Deviation", description: "In offset units. Positive: the bore lies right, or high." });
 
 export const toleranceSchema = z
   .union([
-    z.strictObject({ radial: quantity("offset", "uncertainty", "Half-width of a round tolerance.") }).meta({ id: "RadialTolerance" }),
+    z
+      .strictObject({ radial: quantity("offset", "uncertainty", "Half-width of a round tolerance.") })
+      .meta({ id: "RadialTolerance" }),
     z.strictObject({ h: toleranceSide(), v: toleranceSide() }).meta({ id: "PlaneTolerance" }),
   ])
   .meta({ id: "Tolerance", description: "Half-widths, or [min, max] where one-sided." });
@@ -65,7 +86,10 @@ export const toleranceSchema = z
 function toleranceSide() {
   return z.union([
     quantity("offset", "uncertainty", "Half-width."),
-    z.array(quantity("offset", "offset", "Least and most.")).min(2).max(2),
+    z
+      .array(quantity("offset", "offset", "Least and most."))
+      .min(2)
+      .max(2),
   ]);
 }
 

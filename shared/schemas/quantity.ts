@@ -26,7 +26,11 @@ export function fixedQuantity(unit: string, bound: Bound, description: string) {
 }
 
 /** Clock angle: degrees clockwise from 12 o'clock. */
-export const clockDeg = fixedQuantity("deg", "clockDeg", "Degrees clockwise from 12 o'clock in the view named by `seen`.");
+export const clockDeg = fixedQuantity(
+  "deg",
+  "clockDeg",
+  "Degrees clockwise from 12 o'clock in the view named by `seen`.",
+);
 
 /** An id that the caller gives to a bore, station, component, support or pad. */
 export const callerId = z

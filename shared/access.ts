@@ -1,0 +1,79 @@
+/**
+ * Who may do what: one row for each operation. A signed-in member needs a role of the row, an API key its scope.
+ * Enforced by server/middleware/authenticate.ts alone; tests walk every row. What is not listed cannot be routed.
+ */
+export const roles = ["admin", "engineer", "developer", "viewer"] as const;
+export type Role = (typeof roles)[number];
+
+export const scopes = [
+  "calculations:write",
+  "calculations:read",
+  "usage:read",
+  "keys:read",
+  "keys:write",
+  "members:read",
+  "members:write",
+] as const;
+export type Scope = (typeof scopes)[number];
+
+export type Access =
+  /** Anyone, signed in or not. */
+  | { readonly by: "anyone" }
+  /** Any credential of an organisation. */
+  | { readonly by: "caller" }
+  /** A signed-in member only: it acts on the member's own session. */
+  | { readonly by: "member" }
+  | { readonly by: "scope"; readonly scope: Scope; readonly roles: readonly Role[] };
+
+const anyone: Access = { by: "anyone" };
+const caller: Access = { by: "caller" };
+const member: Access = { by: "member" };
+const grant = (scope: Scope, ...allowed: Role[]): Access => ({ by: "scope", scope, roles: allowed });
+
+const compute = grant("calculations:write", "admin", "engineer", "developer");
+const readRecords = grant("calculations:read", "admin", "engineer", "developer", "viewer");
+const readKeys = grant("keys:read", "admin", "engineer", "developer");
+const writeKeys = grant("keys:write", "admin", "developer");
+const readMembers = grant("members:read", "admin", "engineer");
+const writeMembers = grant("members:write", "admin");
+
+export const operationAccess = {
+  createBoreFit: compute,
+  createAxisDeviation: compute,
+  createShimMove: compute,
+  replayCalculation: compute,
+  listCalculations: readRecords,
+  readCalculation: readRecords,
+  listKeys: readKeys,
+  readKey: readKeys,
+  createKey: writeKeys,
+  revokeKey: writeKeys,
+  listMembers: readMembers,
+  readMember: readMembers,
+  createMember: writeMembers,
+  updateMember: writeMembers,
+  renewInvitation: writeMembers,
+  acceptInvitation: anyone,
+  readUsage: grant("usage:read", "admin", "engineer", "developer"),
+  createSession: anyone,
+  refreshSession: anyone,
+  endSession: member,
+  readCaller: caller,
+  readMeta: anyone,
+  listProblems: anyone,
+  readProblem: anyone,
+  readLiveness: anyone,
+  readReadiness: anyone,
+  readMetrics: anyone,
+  readDocument: anyone,
+} as const satisfies Record<string, Access>;
+
+export type OperationId = keyof typeof operationAccess;
+
+/** The scopes that a role's own operations need: what its members can do, and can grant to a key. */
+export function scopesOfRole(role: Role): Scope[] {
+  const rows: Access[] = Object.values(operationAccess);
+  return scopes.filter((scope) =>
+    rows.some((row) => row.by === "scope" && row.scope === scope && row.roles.includes(role)),
+  );
+}
