@@ -18,6 +18,7 @@ export const problemKinds = {
   duplicate_key: kind(400, "A member name stands twice in one object", "Send each member once."),
   too_deep: kind(400, "The body is nested too deeply", "Send at most 32 levels."),
   invalid_encoding: kind(400, "The body or the address is not valid UTF-8", "Encode text as UTF-8."),
+  malformed_request: kind(400, "The request is not well-formed HTTP", "Correct the client."),
   unknown_parameter: kind(
     400,
     "A query parameter is not known here",
@@ -47,7 +48,6 @@ export const problemKinds = {
     "The credential may not do this",
     "Use a credential with the scope named in the answer.",
   ),
-  role_insufficient: kind(403, "The member's role may not do this", "Ask an administrator."),
   origin_refused: kind(403, "The request came from another origin", "Call from the console's own address."),
   // 404, 405, 406, 409, 412, 413, 415, 422 of the protocol, 428, 429
   not_found: kind(404, "There is nothing here", "Check the address and the id."),
@@ -70,7 +70,6 @@ export const problemKinds = {
     "An organisation keeps at least one active administrator",
     "Make another member administrator first.",
   ),
-  already_revoked: kind(409, "The key is revoked already", "Nothing is left to do."),
   version_stale: kind(
     412,
     "The resource has changed since it was read",
@@ -81,7 +80,6 @@ export const problemKinds = {
     "The call is larger than the service takes",
     "Split the call; the limit is named in the answer.",
   ),
-  address_too_long: kind(414, "The address is too long", "Shorten it."),
   media_type_unsupported: kind(
     415,
     "The body's media type is not taken",

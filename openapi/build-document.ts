@@ -1,0 +1,201 @@
+import { OpenAPIRegistry, OpenApiGeneratorV31, type RouteConfig } from "@asteasolutions/zod-to-openapi";
+import { z } from "zod";
+import { operationAccess, roles, type Access } from "../shared/access.ts";
+import { problemKinds, type ProblemCode } from "../shared/error-codes.ts";
+import { problemSchema } from "../shared/schemas/problem.ts";
+import type { ExampleSet, Operation } from "../server/http/operation.ts";
+import { apiVersion } from "../server/http/api-version.ts";
+
+const bearer = "bearer";
+
+/** The OpenAPI 3.1 document, from the literals that route the calls. */
+export function buildDocument(operations: readonly Operation[]): object {
+  const registry = new OpenAPIRegistry();
+  registry.registerComponent("securitySchemes", bearer, {
+    type: "http",
+    scheme: "bearer",
+    description: "An API key, or the access token of a sign-in.",
+  });
+  for (const operation of operations) registry.registerPath(pathOf(operation));
+  return new OpenApiGeneratorV31(registry.definitions).generateDocument({
+    openapi: "3.1.0",
+    info: {
+      title: "Borewright",
+      version: apiVersion,
+      description: DESCRIPTION,
+      license: { name: "MIT", identifier: "MIT" },
+    },
+    servers: [{ url: "/" }],
+    tags: TAGS,
+  });
+}
+
+const DESCRIPTION = `Every computing call states its units and is kept as a record that can be read and replayed.
+
+\`z\` runs downstream from one common face. A cross-section is seen looking downstream: \`h\` to the right, \`v\` up; \`clockDeg\` clockwise from 12 o'clock. Uncertainties sent in are standard (k = 1); expanded ones in answers carry k and dof.
+
+Errors are RFC 9457 problems; \`errors\` names every fault by RFC 6901 pointer. Any POST takes an \`Idempotency-Key\`.
+
+The service computes; it does not authorise a move. Lock out and prove dead; follow the maker's limits and torque values; a qualified engineer decides.`;
+
+const TAGS = [
+  {
+    name: "Calculations",
+    description: "Readings to centres, centres to deviations, deviations to shim moves.",
+  },
+  { name: "Records", description: "What was computed, by whom, from what: immutable and replayable." },
+  { name: "Keys", description: "API keys for programs." },
+  { name: "Members", description: "People and their roles." },
+  { name: "Usage", description: "What was computed, counted." },
+  { name: "Sign-in", description: "Sessions of people." },
+  { name: "Service", description: "Health, versions, codes, this document." },
+];
+
+function pathOf(operation: Operation): RouteConfig {
+  const access: Access = operationAccess[operation.operationId];
+  const headers = headersOf(operation, access);
+  const params = paramsOf(operation);
+  return {
+    operationId: operation.operationId,
+    method: operation.method,
+    path: operation.path,
+    tags: [operation.tag],
+    summary: operation.summary,
+    description: `${operation.description}${accessSentence(access)}`,
+    security: access.by === "anyone" ? [] : [{ [bearer]: [] }],
+    request: {
+      ...(params ? { params: z.object(params) } : {}),
+      ...(operation.query ? { query: operation.query } : {}),
+      ...(headers ? { headers } : {}),
+      ...(operation.body
+        ? {
+            body: {
+              required: true,
+              content: {
+                "application/json": { schema: operation.body, ...examplesOf(operation.requestExamples) },
+              },
+            },
+          }
+        : {}),
+    },
+    responses: { [operation.response.status]: successOf(operation), ...problemsOf(operation, access) },
+  };
+}
+
+function accessSentence(access: Access): string {
+  if (access.by === "anyone") return "";
+  if (access.by === "caller") return "\n\nAny credential.";
+  if (access.by === "member") return "\n\nA signed-in member.";
+  const who = access.roles.length === roles.length ? "any role" : access.roles.join(", ");
+  return `\n\nKeys: scope \`${access.scope}\`. Members: ${who}.`;
+}
+
+function paramsOf({ path, params = {} }: Operation): Record<string, z.ZodType> | null {
+  const names = [...path.matchAll(/\{(\w+)\}/g)].map(([, name = ""]) => name);
+  if (names.length === 0) return null;
+  return Object.fromEntries(names.map((name) => [name, params[name] ?? z.uuid()]));
+}
+
+function headersOf(operation: Operation, access: Access): z.ZodObject | null {
+  const headers: Record<string, z.ZodType> = {};
+  if (operation.method === "post" && access.by !== "anyone") {
+    headers["Idempotency-Key"] = z.string().min(1).max(255).optional().meta({
+      description: "Any text of your own. The same key and body give the first answer again.",
+    });
+  }
+  if (operation.conditional) {
+    headers["If-Match"] = z
+      .string()
+      .meta({ description: "The ETag of the version you read.", example: '"1"' });
+  }
+  return Object.keys(headers).length === 0 ? null : z.object(headers);
+}
+
+function successOf({ response }: Operation) {
+  if (!response.schema) return { description: response.description };
+  const mediaType = response.mediaType ?? "application/json";
+  const schema =
+    mediaType === "application/json" && response.schema instanceof z.ZodString
+      ? z.record(z.string(), z.unknown())
+      : response.schema;
+  return {
+    description: response.description,
+    content: { [mediaType]: { schema, ...examplesOf(response.examples) } },
+  };
+}
+
+function examplesOf(examples: (() => ExampleSet) | undefined): { examples?: ExampleSet } {
+  return examples ? { examples: examples() } : {};
+}
+
+/** Every problem the operation can answer, by status, each code with an example. */
+function problemsOf(operation: Operation, access: Access): Record<string, unknown> {
+  const codes = new Set<ProblemCode>([...impliedCodes(operation, access), ...operation.errors]);
+  const byStatus: Record<string, { description: string; content: Record<string, unknown> }> = {};
+  for (const code of codes) {
+    const { status, title, fix } = problemKinds[code];
+    const entry = (byStatus[status] ??= {
+      description: "",
+      content: { "application/problem+json": { schema: problemSchema, examples: {} } },
+    });
+    entry.description += `${entry.description === "" ? "" : " "}${title} (\`${code}\`).`;
+    const media = entry.content["application/problem+json"] as { examples: Record<string, unknown> };
+    media.examples[code] = { summary: title, value: problemExample(code, status, title, fix, operation) };
+  }
+  return byStatus;
+}
+
+function problemExample(code: ProblemCode, status: number, title: string, fix: string, operation: Operation) {
+  const base = {
+    type: `/v1/problems/${code}`,
+    title,
+    status,
+    detail: `${title}.`,
+    code,
+    requestId: "0193a5e0-7c00-7000-8000-00000000000a",
+  };
+  const errors =
+    status === 422 && operation.body ? { errors: [{ pointer: "", code, detail: `${title}.` }] } : {};
+  return { ...base, instance: operation.path, fix, ...errors };
+}
+
+/** Codes that method, access and body bring by themselves. */
+function impliedCodes(operation: Operation, access: Access): ProblemCode[] {
+  const codes: ProblemCode[] = ["unknown_parameter", "invalid_header"];
+  if (operation.limit !== "none") codes.push("rate_limited");
+  if (operation.query) codes.push("invalid_parameter");
+  if (access.by !== "anyone")
+    codes.push(
+      "credential_missing",
+      "credential_invalid",
+      "key_expired",
+      "key_revoked",
+      "session_expired",
+      "scope_missing",
+    );
+  if (operation.path.includes("{")) codes.push("not_found");
+  if (operation.conditional) codes.push("precondition_required", "version_stale");
+  if (operation.method === "post" && access.by !== "anyone")
+    codes.push("idempotency_in_progress", "idempotency_key_reused");
+  if (operation.body) {
+    codes.push(
+      "invalid_json",
+      "duplicate_key",
+      "too_deep",
+      "invalid_encoding",
+      "call_too_large",
+      "media_type_unsupported",
+    );
+    codes.push(
+      "several_faults",
+      "required",
+      "unknown_field",
+      "wrong_type",
+      "out_of_range",
+      "text_invalid",
+      "choice_unknown",
+    );
+  }
+  codes.push("internal_error", "unavailable");
+  return [...new Set(codes)];
+}

@@ -1,0 +1,23 @@
+import type { Logger } from "pino";
+import type { Config } from "./config.ts";
+import type { Database } from "./database.ts";
+import type { Metrics } from "./http/metrics.ts";
+import type { Shutdown } from "./http/shutdown.ts";
+import type { Credentials } from "./services/credentials.ts";
+import type { Secrets } from "./services/secrets.ts";
+
+/** What the service is built from. Time and ids come in, so that a test can hold them still. */
+export interface Deps {
+  readonly config: Config;
+  readonly database: Database;
+  readonly secrets: Secrets;
+  readonly credentials: Credentials;
+  readonly log: Logger;
+  readonly metrics: Metrics;
+  readonly shutdown: Shutdown;
+  readonly now: () => Date;
+  /** A new UUIDv7. */
+  readonly newId: () => string;
+  /** Holds every answer against its schema before it is sent: on in tests. */
+  readonly verifyReplies: boolean;
+}

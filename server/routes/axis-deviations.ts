@@ -1,0 +1,37 @@
+import { axisDeviationRequest, axisDeviationResponse } from "../../shared/schemas/axis-deviations.ts";
+import { axisDeviationKind } from "../calculations/axis-deviation.ts";
+import { exampleAnswers, exampleRequests } from "../http/example-calls.ts";
+import { defineOperation } from "../http/operation.ts";
+import { runCalculation } from "../services/run-calculation.ts";
+import { computeErrors } from "./compute-errors.ts";
+
+const createAxisDeviation = defineOperation({
+  operationId: "createAxisDeviation",
+  method: "post",
+  path: "/v1/axis-deviations",
+  tag: "Calculations",
+  summary: "Measure deviations from the reference axis",
+  description:
+    "Lays the reference axis through the reference stations and answers how far every station's centre lies from where it should, with uncertainty and verdict. The answer is kept as a record.",
+  body: axisDeviationRequest,
+  faultsBesideSchema: axisDeviationKind.faultsBesideSchema,
+  requestExamples: () => exampleRequests("axis-deviations"),
+  response: {
+    status: 201,
+    description: "Axis and deviations, as stored.",
+    schema: axisDeviationResponse,
+    examples: () => exampleAnswers("axis-deviations", axisDeviationKind),
+  },
+  errors: [
+    ...computeErrors,
+    "reference_count",
+    "stations_coincident",
+    "unknown_reference",
+    "covariance_not_positive",
+    "tolerance_invalid",
+    "weights_incomplete",
+  ],
+  handle: (call) => runCalculation(axisDeviationKind, call),
+});
+
+export const axisDeviationOperations = [createAxisDeviation];

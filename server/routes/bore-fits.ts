@@ -1,0 +1,38 @@
+import { boreFitRequest, boreFitResponse } from "../../shared/schemas/bore-fits.ts";
+import { boreFitKind } from "../calculations/bore-fit.ts";
+import { exampleAnswers, exampleRequests } from "../http/example-calls.ts";
+import { defineOperation } from "../http/operation.ts";
+import { runCalculation } from "../services/run-calculation.ts";
+import { computeErrors } from "./compute-errors.ts";
+
+const createBoreFit = defineOperation({
+  operationId: "createBoreFit",
+  method: "post",
+  path: "/v1/bore-fits",
+  tag: "Calculations",
+  summary: "Fit bore centres",
+  description:
+    "Turns readings of bore walls into centres, diameters and their uncertainties. All bores of a call are fitted, or none: a refusal names every fault of every bore. The answer is kept as a record.",
+  body: boreFitRequest,
+  faultsBesideSchema: boreFitKind.faultsBesideSchema,
+  requestExamples: () => exampleRequests("bore-fits"),
+  response: {
+    status: 201,
+    description: "The fits, as stored.",
+    schema: boreFitResponse,
+    examples: () => exampleAnswers("bore-fits", boreFitKind),
+  },
+  errors: [
+    ...computeErrors,
+    "too_few_points",
+    "points_collinear",
+    "points_coincident",
+    "arc_too_flat",
+    "uncertainty_incomplete",
+    "radius_not_positive",
+    "not_converged",
+  ],
+  handle: (call) => runCalculation(boreFitKind, call),
+});
+
+export const boreFitOperations = [createBoreFit];
