@@ -1,4 +1,4 @@
-import { Sequelize } from "sequelize";
+import { QueryTypes, Sequelize } from "sequelize";
 import { SequelizeStorage, Umzug } from "umzug";
 import { migrations } from "./migrations/index.ts";
 import { defineModels, type Models } from "./models/index.ts";
@@ -49,11 +49,17 @@ function migrator(sequelize: Sequelize) {
 /** Brings the tables up to date; two processes that start together wait for each other. Returns the names it ran. */
 export async function migrate({ sequelize }: Database): Promise<string[]> {
   return sequelize.transaction(async (transaction) => {
-    await sequelize.query("SELECT GET_LOCK('borewright-migrations', 60)", { transaction });
+    await sequelize.query("SELECT GET_LOCK('borewright-migrations', 60)", {
+      transaction,
+      type: QueryTypes.SELECT,
+    });
     try {
       return (await migrator(sequelize).up()).map((migration) => migration.name);
     } finally {
-      await sequelize.query("SELECT RELEASE_LOCK('borewright-migrations')", { transaction });
+      await sequelize.query("SELECT RELEASE_LOCK('borewright-migrations')", {
+        transaction,
+        type: QueryTypes.SELECT,
+      });
     }
   });
 }

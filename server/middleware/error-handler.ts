@@ -12,7 +12,7 @@ export function errorHandler({ log }: Pick<Deps, "log">): ErrorRequestHandler {
     const requestId = requestIdOf(response.locals);
     if (problem.status >= 500) log.error({ err: error, requestId }, "request failed");
     // Too late for an answer: the client sees the cut and can try again.
-    if (response.headersSent || request.destroyed) {
+    if (response.headersSent || request.socket.destroyed) {
       response.destroy();
       return;
     }

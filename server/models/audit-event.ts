@@ -23,15 +23,15 @@ export class AuditEvent extends Model<InferAttributes<AuditEvent>, InferCreation
 export function defineAuditEvent(sequelize: Sequelize): typeof AuditEvent {
   return class extends AuditEvent {}.init(
     {
-      createdAt: { ...columns.time, primaryKey: true },
-      id: columns.id,
-      organisationId: columns.organisationId,
-      memberId: columns.optionalReference,
-      keyId: columns.optionalReference,
-      action: columns.text,
-      subject: columns.reference,
+      createdAt: { ...columns.time(), primaryKey: true },
+      id: columns.id(),
+      organisationId: columns.organisationId(),
+      memberId: columns.optionalReference(),
+      keyId: columns.optionalReference(),
+      action: columns.text(),
+      subject: columns.reference(),
       details: { type: DataTypes.TEXT, allowNull: false },
-      requestId: columns.optionalText,
+      requestId: columns.optionalText(),
     },
     { sequelize, tableName: "audit_events", modelName: "auditEvent" },
   );

@@ -27,26 +27,26 @@ export class Calculation extends Model<InferAttributes<Calculation>, never> {
 }
 
 export function defineCalculation(sequelize: Sequelize): typeof Calculation {
-  const longText = { type: DataTypes.TEXT("long"), allowNull: false };
+  const longText = () => ({ type: DataTypes.TEXT("long"), allowNull: false });
   return class extends Calculation {}.init(
     {
-      createdAt: { ...columns.time, primaryKey: true },
-      id: columns.id,
-      organisationId: columns.organisationId,
-      kind: columns.text,
-      status: columns.text,
-      engineVersion: columns.text,
+      createdAt: { ...columns.time(), primaryKey: true },
+      id: columns.id(),
+      organisationId: columns.organisationId(),
+      kind: columns.text(),
+      status: columns.text(),
+      engineVersion: columns.text(),
       durationMs: { type: DataTypes.DOUBLE, allowNull: false },
-      requestText: longText,
-      requestCanonical: longText,
-      inputHash: columns.text,
-      answerText: longText,
-      resultHash: columns.optionalText,
-      memberId: columns.optionalReference,
-      keyId: columns.optionalReference,
-      requestId: columns.text,
+      requestText: longText(),
+      requestCanonical: longText(),
+      inputHash: columns.text(),
+      answerText: longText(),
+      resultHash: columns.optionalText(),
+      memberId: columns.optionalReference(),
+      keyId: columns.optionalReference(),
+      requestId: columns.text(),
       note: { type: DataTypes.TEXT, allowNull: true },
-      jobId: columns.optionalReference,
+      jobId: columns.optionalReference(),
     },
     { sequelize, tableName: "calculations", modelName: "calculation" },
   );

@@ -21,13 +21,13 @@ export class Invitation extends Model<InferAttributes<Invitation>, InferCreation
 export function defineInvitation(sequelize: Sequelize): typeof Invitation {
   return class extends Invitation {}.init(
     {
-      id: columns.id,
-      organisationId: columns.organisationId,
-      memberId: columns.reference,
-      tokenHash: columns.text,
-      createdAt: columns.time,
-      expiresAt: columns.time,
-      usedAt: columns.optionalTime,
+      id: columns.id(),
+      organisationId: columns.organisationId(),
+      memberId: columns.reference(),
+      tokenHash: columns.text(),
+      createdAt: columns.time(),
+      expiresAt: columns.time(),
+      usedAt: columns.optionalTime(),
     },
     { sequelize, tableName: "invitations", modelName: "invitation" },
   );

@@ -25,16 +25,16 @@ export class Member extends Model<InferAttributes<Member>, InferCreationAttribut
 export function defineMember(sequelize: Sequelize): typeof Member {
   return class extends Member {}.init(
     {
-      id: columns.id,
-      organisationId: columns.organisationId,
-      email: columns.text,
-      name: columns.text,
-      role: columns.text,
-      passwordHash: columns.optionalText,
-      disabledAt: columns.optionalTime,
-      lastSignedInAt: columns.optionalTime,
-      version: columns.version,
-      createdAt: columns.time,
+      id: columns.id(),
+      organisationId: columns.organisationId(),
+      email: columns.text(),
+      name: columns.text(),
+      role: columns.text(),
+      passwordHash: columns.optionalText(),
+      disabledAt: columns.optionalTime(),
+      lastSignedInAt: columns.optionalTime(),
+      version: columns.version(),
+      createdAt: columns.time(),
     },
     { sequelize, tableName: "members", modelName: "member", version: true },
   );

@@ -19,7 +19,7 @@ export class Organisation extends Model<
 
 export function defineOrganisation(sequelize: Sequelize): typeof Organisation {
   return class extends Organisation {}.init(
-    { id: columns.id, name: columns.text, createdAt: columns.time },
+    { id: columns.id(), name: columns.text(), createdAt: columns.time() },
     { sequelize, tableName: "organisations", modelName: "organisation" },
   );
 }

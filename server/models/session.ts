@@ -23,15 +23,15 @@ export class Session extends Model<InferAttributes<Session>, InferCreationAttrib
 export function defineSession(sequelize: Sequelize): typeof Session {
   return class extends Session {}.init(
     {
-      id: columns.id,
-      organisationId: columns.organisationId,
-      memberId: columns.reference,
-      refreshHash: columns.text,
-      previousHash: columns.optionalText,
-      rotatedAt: columns.time,
-      createdAt: columns.time,
-      expiresAt: columns.time,
-      endedAt: columns.optionalTime,
+      id: columns.id(),
+      organisationId: columns.organisationId(),
+      memberId: columns.reference(),
+      refreshHash: columns.text(),
+      previousHash: columns.optionalText(),
+      rotatedAt: columns.time(),
+      createdAt: columns.time(),
+      expiresAt: columns.time(),
+      endedAt: columns.optionalTime(),
     },
     { sequelize, tableName: "sessions", modelName: "session" },
   );
