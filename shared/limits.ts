@@ -32,6 +32,8 @@ export const bounds = {
   positiveLength: { min: 1e-6, max: 1e10 },
   offset: { min: -1e9, max: 1e9 },
   uncertainty: { min: 1e-12, max: 1e9 },
+  /** Where 0 states that a value is exact. */
+  uncertaintyOrExact: { min: 0, max: 1e9 },
   variance: { min: -1e18, max: 1e18 },
   thickness: { min: 0, max: 1e6 },
   clockDeg: { min: -360, max: 360 },

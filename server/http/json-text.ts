@@ -26,18 +26,19 @@ export function parseJsonText(text: string): ParsedJson {
   return { value, faults: new JsonScan(text).check() };
 }
 
-const enum Char {
-  quote = 34,
-  comma = 44,
-  minus = 45,
-  zero = 48,
-  nine = 57,
-  openBracket = 91,
-  backslash = 92,
-  closeBracket = 93,
-  openBrace = 123,
-  closeBrace = 125,
-}
+/** Code units that steer the scan. */
+const char = {
+  quote: 34,
+  comma: 44,
+  minus: 45,
+  zero: 48,
+  nine: 57,
+  openBracket: 91,
+  backslash: 92,
+  closeBracket: 93,
+  openBrace: 123,
+  closeBrace: 125,
+} as const;
 
 interface Frame {
   readonly names: Set<string> | null;
@@ -55,27 +56,27 @@ class JsonScan {
   check(): readonly Fault[] {
     let nameComes = false;
     while (this.at < this.text.length) {
-      const char = this.text.charCodeAt(this.at);
+      const unit = this.text.charCodeAt(this.at);
       const frame = this.frames.at(-1);
-      if (char === Char.quote) {
+      if (unit === char.quote) {
         const start = this.at;
         const content = this.readString();
         if (nameComes && frame?.names) {
           this.nameMember(frame, frame.names, content, start);
           nameComes = false;
         }
-      } else if (char === Char.openBrace || char === Char.openBracket) {
-        this.open(char === Char.openBrace);
-        nameComes = char === Char.openBrace;
-      } else if (char === Char.closeBrace || char === Char.closeBracket) {
+      } else if (unit === char.openBrace || unit === char.openBracket) {
+        this.open(unit === char.openBrace);
+        nameComes = unit === char.openBrace;
+      } else if (unit === char.closeBrace || unit === char.closeBracket) {
         this.frames.pop();
         nameComes = false;
         this.at += 1;
-      } else if (char === Char.comma) {
+      } else if (unit === char.comma) {
         if (frame && typeof frame.step === "number") frame.step += 1;
         nameComes = frame !== undefined && frame.names !== null;
         this.at += 1;
-      } else if (char === Char.minus || (char >= Char.zero && char <= Char.nine)) {
+      } else if (unit === char.minus || (unit >= char.zero && unit <= char.nine)) {
         this.readNumber();
       } else {
         this.at += 1;
@@ -110,11 +111,11 @@ class JsonScan {
     const start = this.at;
     let end = start + 1;
     let plain = true;
-    for (let char = this.text.charCodeAt(end); char !== Char.quote; char = this.text.charCodeAt(end)) {
-      if (char === Char.backslash) {
+    for (let unit = this.text.charCodeAt(end); unit !== char.quote; unit = this.text.charCodeAt(end)) {
+      if (unit === char.backslash) {
         plain = false;
         end += 1;
-      } else if (char >= 0xd800 && char <= 0xdfff) {
+      } else if (unit >= 0xd800 && unit <= 0xdfff) {
         plain = false;
       }
       end += 1;

@@ -109,7 +109,7 @@ function numberSchemas(schema: z.core.$ZodType, path: readonly PropertyKey[]): z
     return numberSchemas(schema.unwrap(), path);
   }
   if (schema instanceof z.ZodUnion) {
-    return (schema.options).flatMap((option) => numberSchemas(option, path));
+    return schema.options.flatMap((option) => numberSchemas(option, path));
   }
   const [step, ...rest] = path;
   if (step === undefined) return schema instanceof z.ZodNumber ? [schema] : [];

@@ -37,5 +37,5 @@ export const callerId = z
   .string()
   .min(1)
   .max(limits.idLength)
-  .regex(/^[^\p{Cc}\p{Cs}]+$/u, "An id holds no control characters.")
+  .regex(/^[ -~\u00a0-\uffff]+$/, "An id holds no control characters.")
   .meta({ description: "The caller's own name for it, unique in the call." });

@@ -21,7 +21,7 @@ describe("sessions", () => {
   const signIn = (body: object = { email: "ines@example.com", password }) =>
     app.call().post("/v1/sessions").send(body);
   const cookieOf = (headers: Record<string, unknown>): string =>
-    String((headers["set-cookie"] as unknown as string[] | undefined)?.[0] ?? "").split(";")[0] ?? "";
+    String((headers["set-cookie"] as string[] | undefined)?.[0] ?? "").split(";")[0] ?? "";
   const refresh = (cookie: string) => app.call().post("/v1/sessions/refresh").set("Cookie", cookie);
   const me = (token: string) => app.call().get("/v1/me").set("Authorization", `Bearer ${token}`);
 
@@ -54,10 +54,10 @@ describe("sessions", () => {
   });
 
   it("rotates the refresh secret, and lets a second tab use the one before within the grace", async () => {
-    const first = cookieOf((await signIn()).headers as Record<string, unknown>);
+    const first = cookieOf((await signIn()).headers);
     const rotated = await refresh(first);
     expect(rotated.status).toBe(200);
-    const second = cookieOf(rotated.headers as Record<string, unknown>);
+    const second = cookieOf(rotated.headers);
     expect(second).not.toBe(first);
     const otherTab = await refresh(first);
     expect(otherTab.status).toBe(200);
@@ -66,8 +66,8 @@ describe("sessions", () => {
   });
 
   it("ends the session for everyone when a refresh secret comes back after the grace", async () => {
-    const first = cookieOf((await signIn()).headers as Record<string, unknown>);
-    const second = cookieOf((await refresh(first)).headers as Record<string, unknown>);
+    const first = cookieOf((await signIn()).headers);
+    const second = cookieOf((await refresh(first)).headers);
     app.advance(31_000);
     expect((await refresh(first)).body).toMatchObject({ code: "session_expired" });
     expect((await refresh(second)).status).toBe(401);
@@ -78,7 +78,7 @@ describe("sessions", () => {
   });
 
   it("refuses to renew for a page of another origin", async () => {
-    const cookie = cookieOf((await signIn()).headers as Record<string, unknown>);
+    const cookie = cookieOf((await signIn()).headers);
     const { status, body } = await refresh(cookie).set("Origin", "https://elsewhere.example");
     expect(status).toBe(403);
     expect(body).toMatchObject({ code: "origin_refused" });

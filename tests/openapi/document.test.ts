@@ -1,7 +1,7 @@
 import { readFileSync } from "node:fs";
 import { execFile } from "node:child_process";
 import { promisify } from "node:util";
-import Ajv2020 from "ajv/dist/2020.js";
+import { Ajv2020 } from "ajv/dist/2020.js";
 import addFormats from "ajv-formats";
 import { describe, expect, it } from "vitest";
 import { buildDocument } from "../../openapi/build-document.ts";
@@ -128,7 +128,7 @@ describe("the OpenAPI document", () => {
 
 /** The schemas of the document refer to its components; they are validated with those at hand. */
 function compile(schema: object) {
-  const ajv = new Ajv2020.Ajv2020({ strict: false, allErrors: true });
+  const ajv = new Ajv2020({ strict: false, allErrors: true });
   addFormats.default(ajv);
   ajv.addSchema({ $id: "document", components: document.components }, "document");
   return ajv.compile(

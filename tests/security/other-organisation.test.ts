@@ -32,10 +32,11 @@ describe("another organisation", () => {
   const withId = operations.filter(({ path }) => path.includes("{id}"));
   const bodies: Record<string, object> = { updateMember: { name: "Mine now" } };
   const send = (operation: Operation, id: string, credential: string) => {
-    const sent = app
-      .call()
-      [operation.method](operation.path.replace("{id}", id))
-      .set("Authorization", `Bearer ${credential}`);
+    const agent = app.call();
+    const sent = agent[operation.method](operation.path.replace("{id}", id)).set(
+      "Authorization",
+      `Bearer ${credential}`,
+    );
     const conditional = operation.conditional ? sent.set("If-Match", '"1"') : sent;
     const body = bodies[operation.operationId];
     return body ? conditional.send(body) : conditional;
