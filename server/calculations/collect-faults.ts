@@ -1,11 +1,7 @@
 import type { Fault } from "../../shared/error-codes.ts";
+import { pointerOf } from "../../shared/pointer.ts";
 import { ComputeError } from "../compute/compute-error.ts";
 import { CalculationRefusal } from "./calculation-kind.ts";
-
-/** RFC 6901 pointer from property names and indices. */
-export function pointerOf(path: readonly PropertyKey[]): string {
-  return path.map((step) => `/${String(step).replaceAll("~", "~0").replaceAll("/", "~1")}`).join("");
-}
 
 /** A computation's refusal as a fault at its place of the body. */
 export function faultOf(error: ComputeError, base: readonly PropertyKey[]): Fault {
@@ -19,9 +15,38 @@ export function faultOf(error: ComputeError, base: readonly PropertyKey[]): Faul
   };
 }
 
+/** What an attempt at every item gave: the results of those that could be computed, the faults of the others. */
+export interface Attempt<Result> {
+  readonly results: Result[];
+  readonly faults: Fault[];
+}
+
 /**
- * Runs `compute` for each item and gathers what each refuses, so that one answer names every faulty item.
+ * Runs `compute` for each item and gathers what each refuses, so that one answer names every faulty item. An item
+ * refuses with a ComputeError, or with a CalculationRefusal where it has several faults to name.
  * The only place beside `runCalculation` and the error exit that catches.
+ */
+export function attemptEach<Item, Result>(
+  items: readonly Item[],
+  base: readonly PropertyKey[],
+  compute: (item: Item, index: number) => Result,
+): Attempt<Result> {
+  const faults: Fault[] = [];
+  const results = items.flatMap((item, index) => {
+    try {
+      return [compute(item, index)];
+    } catch (error) {
+      if (error instanceof CalculationRefusal) faults.push(...error.faults);
+      else if (error instanceof ComputeError) faults.push(faultOf(error, [...base, index]));
+      else throw error;
+      return [];
+    }
+  });
+  return { results, faults };
+}
+
+/**
+ * `attemptEach` where all must succeed.
  * @throws CalculationRefusal when any item was refused
  */
 export function computeEach<Item, Result>(
@@ -29,16 +54,7 @@ export function computeEach<Item, Result>(
   base: readonly PropertyKey[],
   compute: (item: Item, index: number) => Result,
 ): Result[] {
-  const faults: Fault[] = [];
-  const results = items.flatMap((item, index) => {
-    try {
-      return [compute(item, index)];
-    } catch (error) {
-      if (!(error instanceof ComputeError)) throw error;
-      faults.push(faultOf(error, [...base, index]));
-      return [];
-    }
-  });
+  const { results, faults } = attemptEach(items, base, compute);
   if (faults.length > 0) throw new CalculationRefusal(faults);
   return results;
 }

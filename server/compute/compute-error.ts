@@ -19,6 +19,7 @@ export type ComputeErrorCode =
   | "supports_insufficient"
   | "infeasible"
   | "too_many_choices"
+  | "combination_invalid"
   | "not_available";
 
 export interface ComputeErrorDetails {

@@ -1,0 +1,37 @@
+import type { CalculationSummary } from "../../../shared/schemas/calculations.ts";
+
+export type CalculationKind = CalculationSummary["kind"];
+
+/** Addresses of the console's own pages. */
+export const paths = {
+  signIn: "/sign-in",
+  invitation: "/invitation",
+  calculations: "/calculations",
+  calculation: (id: string): string => `/calculations/${encodeURIComponent(id)}`,
+  tryCall: "/try",
+  keys: "/keys",
+} as const;
+
+/** Pages that the server serves itself. */
+export const serverPaths = { docs: "/docs", document: "/openapi.json" } as const;
+
+/** Addresses of the API. */
+export const apiPaths = {
+  sessions: "/v1/sessions",
+  refresh: "/v1/sessions/refresh",
+  currentSession: "/v1/sessions/current",
+  acceptInvitation: "/v1/invitations/accept",
+  keys: "/v1/keys",
+  revokeKey: (id: string): string => `/v1/keys/${encodeURIComponent(id)}/revoke`,
+  calculations: "/v1/calculations",
+  calculation: (id: string): string => `/v1/calculations/${encodeURIComponent(id)}`,
+  replay: (id: string): string => `/v1/calculations/${encodeURIComponent(id)}/replay`,
+  meta: "/v1/meta",
+} as const;
+
+/** What can be computed: its name, its place in the address, and where it is posted. */
+export const computations: Record<CalculationKind, { name: string; resource: string; path: string }> = {
+  "bore-fit": { name: "Bore fit", resource: "bore-fits", path: "/v1/bore-fits" },
+  "axis-deviation": { name: "Axis and deviations", resource: "axis-deviations", path: "/v1/axis-deviations" },
+  "shim-move": { name: "Shim moves", resource: "shim-moves", path: "/v1/shim-moves" },
+};

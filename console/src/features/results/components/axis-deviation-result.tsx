@@ -1,0 +1,56 @@
+import { drawPlanElevation } from "../../../../../shared/figures/plan-elevation/draw-plan-elevation.ts";
+import { planElevationOf } from "../../../../../shared/figures/plan-elevation/plan-elevation-of.ts";
+import { tabulateAxis } from "../../../../../shared/figures/plan-elevation/tabulate-axis.ts";
+import { tabulatePlanElevation } from "../../../../../shared/figures/plan-elevation/tabulate-plan-elevation.ts";
+import type { AxisDeviationRequest, AxisDeviationResult as Result } from "../../../../../shared/schemas/axis-deviations.ts";
+import { FigureView } from "../../../components/ui/figure-view.tsx";
+import { NumberTable } from "../../../components/ui/number-table.tsx";
+import { VerdictWord } from "../../../components/ui/verdict-mark.tsx";
+import { Warnings, type PlacedWarning } from "./warnings.tsx";
+
+/** Figure 2, what became of the stations in one line, and the numbers. */
+export function AxisDeviationResult({ request, result }: { request: AxisDeviationRequest; result: Result }) {
+  const model = planElevationOf(request, result);
+  return (
+    <div className="grid gap-8">
+      <FigureView number={2} draw={(width) => drawPlanElevation(model, width)} />
+      <Summary summary={result.summary} />
+      {tabulatePlanElevation(model).map((table) => (
+        <NumberTable key={table.caption} table={table} />
+      ))}
+      <NumberTable table={tabulateAxis(result.axis, request.units)} />
+      <Warnings warnings={warningsOf(result)} />
+    </div>
+  );
+}
+
+function Summary({ summary }: { summary: Result["summary"] }) {
+  const judged = (["conforms", "undecided", "exceeds"] as const).filter((verdict) => summary[verdict] > 0);
+  return (
+    <dl className="flex flex-wrap gap-x-10 gap-y-3" aria-label="Verdicts">
+      {judged.map((verdict) => (
+        <div key={verdict}>
+          <dt>
+            <VerdictWord verdict={verdict} />
+          </dt>
+          <dd className="text-xl">{summary[verdict]}</dd>
+        </div>
+      ))}
+      {summary.worst !== null && (
+        <div>
+          <dt className="field-name">uses most of its tolerance</dt>
+          <dd className="text-xl">
+            {summary.worst.id} <span className="whitespace-nowrap">{(summary.worst.ratio * 100).toFixed(0)} %</span>
+          </dd>
+        </div>
+      )}
+    </dl>
+  );
+}
+
+function warningsOf(result: Result): PlacedWarning[] {
+  return [
+    ...result.axis.warnings.map((warning) => ({ where: "axis", ...warning })),
+    ...result.stations.flatMap((station) => station.warnings.map((warning) => ({ where: station.id, ...warning }))),
+  ];
+}

@@ -1,0 +1,32 @@
+import { useMemo } from "react";
+import { readCalculation } from "./read-calculation.ts";
+import type { CalculationKind } from "../../../config/paths.ts";
+import { AxisDeviationResult } from "./axis-deviation-result.tsx";
+import { BoreFitResult } from "./bore-fit-result.tsx";
+
+interface CalculationResultProps {
+  kind: CalculationKind;
+  request: unknown;
+  response: unknown;
+  /** Which bore's section is shown. */
+  chosen: string | null;
+  onChoose: (id: string) => void;
+}
+
+/** The answer of a calculation as figures and tables. */
+export function CalculationResult({ kind, request, response, chosen, onChoose }: CalculationResultProps) {
+  const read = useMemo(() => readCalculation(kind, request, response), [kind, request, response]);
+  if (read === null) {
+    return (
+      <p className="max-w-prose text-muted">
+        This answer was made by an engine version whose form the console does not draw. Its JSON below is whole.
+      </p>
+    );
+  }
+  switch (read.kind) {
+    case "bore-fit":
+      return <BoreFitResult request={read.request} fits={read.fits} chosen={chosen} onChoose={onChoose} />;
+    case "axis-deviation":
+      return <AxisDeviationResult request={read.request} result={read.result} />;
+  }
+}

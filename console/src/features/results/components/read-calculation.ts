@@ -1,0 +1,37 @@
+import {
+  axisDeviationRequest,
+  axisDeviationResponse,
+  type AxisDeviationRequest,
+  type AxisDeviationResult,
+} from "../../../../../shared/schemas/axis-deviations.ts";
+import {
+  boreFitRequest,
+  boreFitResponse,
+  type BoreFitRequest,
+  type BoreFitResult,
+} from "../../../../../shared/schemas/bore-fits.ts";
+import type { CalculationKind } from "../../../config/paths.ts";
+
+export type ReadCalculation =
+  | { readonly kind: "bore-fit"; readonly request: BoreFitRequest; readonly fits: readonly BoreFitResult[] }
+  | { readonly kind: "axis-deviation"; readonly request: AxisDeviationRequest; readonly result: AxisDeviationResult };
+
+/** A call and its answer in the forms of this version; null when a record of another version has other forms. */
+export function readCalculation(kind: CalculationKind, request: unknown, response: unknown): ReadCalculation | null {
+  switch (kind) {
+    case "bore-fit": {
+      const [sent, answered] = [boreFitRequest.safeParse(request), boreFitResponse.safeParse(response)];
+      return sent.success && answered.success
+        ? { kind, request: sent.data, fits: answered.data.result.bores }
+        : null;
+    }
+    case "axis-deviation": {
+      const [sent, answered] = [axisDeviationRequest.safeParse(request), axisDeviationResponse.safeParse(response)];
+      return sent.success && answered.success
+        ? { kind, request: sent.data, result: answered.data.result }
+        : null;
+    }
+    case "shim-move":
+      return null;
+  }
+}

@@ -1,0 +1,40 @@
+import { useMutation, useQueryClient } from "@tanstack/react-query";
+import { useNavigate } from "react-router-dom";
+import { Failure } from "../../../components/ui/failure.tsx";
+import { paths } from "../../../config/paths.ts";
+import { useMember } from "../../../lib/use-session.ts";
+import { signOut } from "../api/sign-out.ts";
+
+/** Who is signed in, for whom, as what; and the way out. */
+export function SessionStrip() {
+  const member = useMember();
+  const queryClient = useQueryClient();
+  const navigate = useNavigate();
+  const mutation = useMutation({
+    mutationFn: signOut,
+    onSuccess: async () => {
+      queryClient.clear();
+      await navigate(paths.signIn);
+    },
+  });
+  if (!member) return null;
+  return (
+    <div className="flex min-w-0 flex-wrap items-center gap-x-4 gap-y-1">
+      <p className="min-w-0">
+        <span className="field-name block break-words">{member.organisation.name}</span>
+        <span className="break-words">
+          {member.name}, {member.role}
+        </span>
+      </p>
+      <button
+        type="button"
+        className="link cursor-pointer py-1 disabled:opacity-50"
+        disabled={mutation.isPending}
+        onClick={() => mutation.mutate()}
+      >
+        Sign out
+      </button>
+      {mutation.isError && <Failure error={mutation.error} what="You are still signed in." />}
+    </div>
+  );
+}

@@ -1,0 +1,76 @@
+import { queryOptions, useQuery } from "@tanstack/react-query";
+import { z } from "zod";
+import { computations, serverPaths, type CalculationKind } from "../../../config/paths.ts";
+import { readAnswer } from "../../../lib/call-api.ts";
+import { sendRequest } from "../../../lib/send-request.ts";
+
+/** The parts of an OpenAPI document that a call is tried from. */
+const documentSchema = z.object({
+  paths: z.record(
+    z.string(),
+    z.object({
+      post: z
+        .object({
+          summary: z.string().optional(),
+          requestBody: z
+            .object({
+              content: z.record(
+                z.string(),
+                z.object({
+                  examples: z
+                    .record(z.string(), z.object({ summary: z.string().optional(), value: z.unknown() }))
+                    .optional(),
+                }),
+              ),
+            })
+            .optional(),
+        })
+        .optional(),
+    }),
+  ),
+});
+
+export interface Example {
+  readonly name: string;
+  readonly summary: string;
+  readonly text: string;
+}
+
+export interface Endpoint {
+  readonly summary: string;
+  readonly examples: readonly Example[];
+}
+
+/** The service's own document is where the examples come from, so that none here can be out of date. */
+export const examplesQuery = queryOptions({
+  queryKey: ["examples"],
+  staleTime: Infinity,
+  queryFn: async ({ signal }) => {
+    const answer = await sendRequest({ method: "GET", path: serverPaths.document, signal });
+    return endpointsOf(readAnswer(documentSchema, answer));
+  },
+});
+
+export function useExamples() {
+  return useQuery(examplesQuery);
+}
+
+function endpointsOf(document: z.infer<typeof documentSchema>): Record<CalculationKind, Endpoint> {
+  const endpoint = (kind: CalculationKind): Endpoint => {
+    const post = document.paths[computations[kind].path]?.post;
+    const examples = Object.entries(post?.requestBody?.content["application/json"]?.examples ?? {});
+    return {
+      summary: post?.summary ?? "",
+      examples: examples.map(([name, example]) => ({
+        name,
+        summary: example.summary ?? name,
+        text: JSON.stringify(example.value, null, 2),
+      })),
+    };
+  };
+  return {
+    "bore-fit": endpoint("bore-fit"),
+    "axis-deviation": endpoint("axis-deviation"),
+    "shim-move": endpoint("shim-move"),
+  };
+}

@@ -1,0 +1,17 @@
+import tailwindcss from "@tailwindcss/vite";
+import react from "@vitejs/plugin-react";
+import { defineConfig } from "vite";
+
+/** Files only, nothing inline: the server's content security policy takes scripts, styles and fonts from itself. */
+export default defineConfig({
+  root: import.meta.dirname,
+  base: "/",
+  plugins: [react(), tailwindcss()],
+  build: {
+    outDir: "dist",
+    emptyOutDir: true,
+    sourcemap: false,
+    assetsInlineLimit: 0,
+    modulePreload: { polyfill: false },
+  },
+});

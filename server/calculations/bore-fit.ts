@@ -1,0 +1,91 @@
+import type { Fault } from "../../shared/error-codes.ts";
+import { limits } from "../../shared/limits.ts";
+import {
+  boreFitRequest,
+  boreSchema,
+  type BoreFitRequest,
+  type BoreFitResult,
+  type BoreRequest,
+} from "../../shared/schemas/bore-fits.ts";
+import { seenSchema, unitsSchema } from "../../shared/schemas/common.ts";
+import { convertersFor, type Units } from "../../shared/units.ts";
+import { fitPreparedBore, prepareBore } from "../compute/bore/fit-bore.ts";
+import { boreAnswerOf } from "./bore-answer.ts";
+import { boresIn, duplicateFaults, memberFaults, readingsFault } from "./bore-faults.ts";
+import { boreInputOf, type CallSettings } from "./bore-input.ts";
+import { CalculationRefusal, type CalculationKind } from "./calculation-kind.ts";
+import { attemptEach, computeEach, faultOf } from "./collect-faults.ts";
+
+const defaultLevel = 0.95;
+
+export interface BoreFitAnswer {
+  readonly units: Units;
+  readonly seen: "downstream";
+  readonly level: number;
+  readonly result: { readonly bores: readonly BoreFitResult[] };
+}
+
+/** POST /v1/bore-fits: every bore of the call is fitted, or every fault of every bore is named. */
+export const boreFitKind: CalculationKind<BoreFitRequest, BoreFitAnswer> = {
+  kind: "bore-fit",
+  request: boreFitRequest,
+  answer: answerOf,
+  faultsBesideSchema,
+};
+
+function answerOf(request: BoreFitRequest): BoreFitAnswer {
+  const { units, seen, level = defaultLevel, bores } = request;
+  const tooLarge = readingsFault(request);
+  if (tooLarge) throw new CalculationRefusal([tooLarge]);
+  const duplicates = duplicateFaults(bores);
+  const fits = computeEach(bores, ["bores"], (bore, index) =>
+    fitOne(bore, index, duplicates.get(index), { seen, level }, units),
+  );
+  return { units, seen: "downstream", level, result: { bores: fits } };
+}
+
+/**
+ * @throws CalculationRefusal naming every fault of this bore that shows before the fit
+ * @throws ComputeError what the fit itself meets
+ */
+function fitOne(
+  bore: BoreRequest,
+  index: number,
+  duplicate: Fault | undefined,
+  call: CallSettings,
+  units: Units,
+): BoreFitResult {
+  const convert = convertersFor(units);
+  const prepared = prepareBore(boreInputOf(bore, call, convert));
+  const refusals = prepared.kind === "refused" ? prepared.refusals : [];
+  const faults = [
+    ...(duplicate ? [duplicate] : []),
+    ...memberFaults(bore, index),
+    ...refusals.map((refusal) => faultOf(refusal, ["bores", index])),
+  ];
+  if (faults.length > 0) throw new CalculationRefusal(faults);
+  return boreAnswerOf(bore, fitPreparedBore(prepared), convert);
+}
+
+/**
+ * Domain faults of the bores that are well formed, in a body that is not: fitted as if the others were not there.
+ * Without sound units only what needs no number can be judged.
+ */
+function faultsBesideSchema(body: unknown, schemaFaults: readonly Fault[]): Fault[] {
+  const bores = boresIn(body);
+  if (bores.length > limits.boresPerCall || readingsFault(body)) return [];
+  const duplicates = duplicateFaults(bores);
+  const sent = body as { readonly units?: unknown; readonly seen?: unknown };
+  const units = unitsSchema.safeParse(sent.units).data;
+  const seen = seenSchema.safeParse(sent.seen).data ?? "downstream";
+  return attemptEach(bores, ["bores"], (one, index) => {
+    const faulty = schemaFaults.some(({ pointer }) => `${pointer}/`.startsWith(`/bores/${index}/`));
+    const bore = faulty ? undefined : boreSchema.safeParse(one).data;
+    const duplicate = duplicates.get(index);
+    if (bore && units) return fitOne(bore, index, duplicate, { seen, level: defaultLevel }, units);
+    throw new CalculationRefusal([
+      ...(duplicate ? [duplicate] : []),
+      ...(bore ? memberFaults(bore, index) : []),
+    ]);
+  }).faults;
+}

@@ -1,0 +1,15 @@
+import type { z } from "zod";
+import type { CalculationKind, CalculationKindName } from "./calculation-kind.ts";
+import { axisDeviationKind } from "./axis-deviation.ts";
+import { boreFitKind } from "./bore-fit.ts";
+import { shimMoveKind } from "./shim-move.ts";
+
+/** A kind whose request type is known to itself alone: what its schema lets through is what it answers to. */
+export type AnyKind = Omit<CalculationKind<never, object>, "request"> & { readonly request: z.ZodType };
+
+/** Every kind of stored calculation, by name: what replays a record. */
+export const calculationKinds: Readonly<Record<CalculationKindName, AnyKind>> = {
+  "bore-fit": boreFitKind,
+  "axis-deviation": axisDeviationKind,
+  "shim-move": shimMoveKind,
+};

@@ -1,0 +1,87 @@
+import { ComputeError } from "../compute-error.ts";
+import type { BoreFit, SpotFit, WallFit } from "./bore-fit.ts";
+import type { BoreInput, RotatingTargetInput, Taper, WallInput } from "./bore-input.ts";
+import { describeWall } from "./describe-wall.ts";
+import { solveWithoutOutliers } from "./exclude-outliers.ts";
+import { fitRotatingTarget, gatherSpots, spotRefusal, type TargetReadings } from "./fit-rotating-target.ts";
+import { requireFiniteFit } from "./require-finite-fit.ts";
+import { modelFor, solveWall, type FittableWall } from "./solve-wall.ts";
+import { gatherWall, readingsMember, type WallReadings } from "./wall-readings.ts";
+
+/** A bore's readings in the downstream view, ready to fit; or everything that can be seen to forbid it. */
+export type PreparedBore =
+  | { readonly kind: "refused"; readonly refusals: readonly [ComputeError, ...ComputeError[]] }
+  | {
+      readonly kind: "wall";
+      readonly input: WallInput;
+      readonly readings: WallReadings;
+      readonly fittable: FittableWall;
+    }
+  | { readonly kind: "target"; readonly input: RotatingTargetInput; readonly readings: TargetReadings };
+
+/**
+ * Centre, size and covariance of one bore by orthogonal least squares, from any form of reading. Covariance
+ * (JᵀWJ)⁻¹·F with F as `varianceScale` states, expanded by the two-sided Student factor at `level`. Millimetres in and
+ * out; the answer is in the downstream view. Linear in the number of readings but for sorting their clock angles.
+ * @throws ComputeError too_few_points, points_coincident, points_collinear, angles_insufficient, combination_invalid,
+ * uncertainty_incomplete, radius_not_positive, rank_deficient, arc_too_flat, not_converged, result_overflow
+ */
+export function fitBore(input: WallInput): WallFit;
+export function fitBore(input: RotatingTargetInput): SpotFit;
+export function fitBore(input: BoreInput): BoreFit;
+export function fitBore(input: BoreInput): BoreFit {
+  return fitPreparedBore(prepareBore(input));
+}
+
+/** Reduces the readings and lists every refusal that needs no fit, so that a caller is told of all at once. */
+export function prepareBore(input: BoreInput): PreparedBore {
+  if (input.form === "rotating_target") {
+    const { readings, refusals } = gatherSpots(input);
+    return refused([...refusals, ...spotRefusal(readings)]) ?? { kind: "target", input, readings };
+  }
+  const { readings, refusals } = gatherWall(input);
+  const fittable = modelFor(readings, taperOf(input), null, readingsMember[input.form]);
+  if (fittable instanceof ComputeError) return { kind: "refused", refusals: [fittable, ...refusals] };
+  return refused(refusals) ?? { kind: "wall", input, readings, fittable };
+}
+
+/**
+ * The fit of `fitBore`, of readings prepared before.
+ * @throws ComputeError as `fitBore`
+ */
+export function fitPreparedBore(prepared: PreparedBore): BoreFit {
+  switch (prepared.kind) {
+    case "refused":
+      throw prepared.refusals[0];
+    case "target":
+      return requireFiniteFit(fitRotatingTarget(prepared.input, prepared.readings));
+    case "wall":
+      return requireFiniteFit(fitWall(prepared.input, prepared.readings, prepared.fittable));
+  }
+}
+
+function fitWall(input: WallInput, readings: WallReadings, fittable: FittableWall): WallFit {
+  const member = readingsMember[input.form];
+  if (input.form !== "wire" && input.outliers !== null) {
+    return describeWall(
+      input,
+      readings,
+      solveWithoutOutliers(readings, fittable, input.outliers, taperOf(input), member),
+    );
+  }
+  const used = new Array<boolean>(readings.hMm.length).fill(true);
+  return describeWall(input, readings, {
+    solution: solveWall(readings, fittable, member),
+    used,
+    exclusions: [],
+  });
+}
+
+function taperOf(input: WallInput): Taper | null {
+  return input.form === "points" ? input.taper : null;
+}
+
+function refused(refusals: readonly ComputeError[]): PreparedBore | null {
+  const [first, ...others] = refusals;
+  return first === undefined ? null : { kind: "refused", refusals: [first, ...others] };
+}

@@ -1,0 +1,90 @@
+import type { PlaneTolerance, Tolerance } from "../conformity/tolerance.ts";
+import type { PlaneCovariance, PlaneVector } from "../plane.ts";
+
+export type Plane = "h" | "v";
+export const planes = ["h", "v"] as const satisfies readonly Plane[];
+
+/** One measured bore: where it lies off its target, and what it may be off. */
+export interface MoveStation {
+  readonly id: string;
+  readonly zMm: number;
+  readonly deviation: PlaneVector;
+  /** Standard covariance of the deviation, mm²; null when not known: its verdict is then the simple one. */
+  readonly covariance: PlaneCovariance | null;
+  readonly dof: number | null;
+  /** Null: the station asks for nothing, it is carried along and predicted. */
+  readonly tolerance: Tolerance | null;
+}
+
+/** The shims at one place of a support. Unlimited limits are Infinity. */
+export interface ShimStack {
+  readonly thicknessMm: number;
+  readonly minMm: number;
+  readonly maxMm: number;
+  /** Pieces of the finished stack, all counted. */
+  readonly maxCount: number;
+  /** Null: not known. Such a stack is one piece, none when its thickness is 0. */
+  readonly piecesMm: readonly number[] | null;
+}
+
+export interface Pad {
+  readonly id: string;
+  readonly clockDeg: number;
+  readonly stack: ShimStack;
+}
+
+interface SupportPosition {
+  readonly id: string;
+  readonly zMm: number;
+  /** Least and most move from now, per plane. Unlimited is ±Infinity. */
+  readonly travel: Readonly<Record<Plane, PlaneTolerance>>;
+  readonly blocked: readonly Plane[];
+}
+
+export type FootPlace = "left" | "right" | "key-left" | "key-right";
+export type JointKeyPlace = "key-left" | "key-right" | "key-bottom";
+
+export type MoveSupport = SupportPosition &
+  (
+    | {
+        readonly form: "feet";
+        /** Where the side keys stand: beyond the feet, or between them. */
+        readonly keys: "outside" | "inside";
+        readonly stacks: Readonly<Partial<Record<FootPlace, ShimStack>>>;
+      }
+    | { readonly form: "joint_keys"; readonly stacks: Readonly<Partial<Record<JointKeyPlace, ShimStack>>> }
+    | { readonly form: "pads"; readonly pads: readonly Pad[] }
+  );
+
+/** One rigid part, the stations it carries and the supports it rests on. */
+export interface MoveComponent {
+  readonly id: string;
+  readonly kind: "casing" | "shroud" | "nozzle" | "bearing" | "other";
+  readonly stationIds: readonly string[];
+  readonly fixed: boolean;
+  readonly allowReferenceMove: boolean;
+  readonly supports: readonly MoveSupport[];
+}
+
+export interface MoveIndicator {
+  readonly id: string;
+  readonly componentId: string;
+  readonly zMm: number;
+  readonly clockDeg: number;
+  readonly contact: "outside" | "inside";
+}
+
+export interface MoveProblem {
+  readonly stations: readonly MoveStation[];
+  readonly referenceIds: readonly string[];
+  readonly components: readonly MoveComponent[];
+  /** Shims cut to any whole multiple of this thickness; null: none are chosen, every change is the ideal one. */
+  readonly cutIncrementMm: number | null;
+  /** Most that may be left between a chosen change and the rigid move, at any place. */
+  readonly maximumMisfitMm: number;
+  /** Largest part of a move made at once; null: a move is made in one. */
+  readonly maximumIncrementMm: number | null;
+  readonly indicators: readonly MoveIndicator[];
+  /** Coverage probability of the predicted verdicts. */
+  readonly level: number;
+}

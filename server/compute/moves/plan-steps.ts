@@ -1,0 +1,65 @@
+import { clockDirection } from "../bore/clock-direction.ts";
+import type { Increment, Step, SupportMove, Watch } from "./move-plan.ts";
+import type { MoveIndicator, MoveProblem } from "./move-problem.ts";
+import type { RigidMove } from "./rigid-freedom.ts";
+import type { SolvedComponent } from "./solve-component.ts";
+
+/**
+ * The moves in the order in which they are made (common practice, no source): casings, shrouds, nozzles and other parts
+ * to the axis first, bearings after, each in the order sent and locked before the next.
+ */
+export function planSteps(problem: MoveProblem, solved: readonly SolvedComponent[]): Step[] {
+  const moving = solved.filter(({ moved }) => moved);
+  const isBearing = ({ component }: SolvedComponent) => component.kind === "bearing";
+  return [...moving.filter((each) => !isBearing(each)), ...moving.filter(isBearing)].map((each, index) => ({
+    order: index + 1,
+    componentId: each.component.id,
+    increments: incrementsOf(problem, each),
+    watch: problem.referenceIds.flatMap((id) => watchOf(problem, each, id)),
+  }));
+}
+
+/** Equal parts so that none passes the largest allowed: n = ⌈L/maximum⌉, L the largest |h| or |v| at any support. */
+export function incrementCount(moves: readonly SupportMove[], maximumMm: number | null): number {
+  const largestMm = Math.max(0, ...moves.flatMap(({ hMm, vMm }) => [Math.abs(hMm), Math.abs(vMm)]));
+  return maximumMm === null ? 1 : Math.max(1, Math.ceil(largestMm / maximumMm - 1e-9));
+}
+
+function incrementsOf(problem: MoveProblem, { component, answer, realised }: SolvedComponent): Increment[] {
+  const indicators = problem.indicators.filter(({ componentId }) => componentId === component.id);
+  const count = incrementCount(answer.realised, problem.maximumIncrementMm);
+  return Array.from({ length: count }, (_, k) => {
+    const share = (k + 1) / count;
+    return {
+      moves: answer.realised.map(({ supportId, hMm, vMm }) => ({
+        supportId,
+        hMm: hMm * share,
+        vMm: vMm * share,
+      })),
+      readings: indicators.map((indicator) => ({
+        indicatorId: indicator.id,
+        readingMm: readingMm(indicator, realised) * share,
+      })),
+    };
+  });
+}
+
+/** Positive when the part moves toward the indicator along its clock direction; reversed for one inside the bore. */
+function readingMm({ zMm, clockDeg, contact }: MoveIndicator, move: RigidMove): number {
+  const { h, v } = clockDirection(clockDeg);
+  const { hMm, vMm } = move(zMm);
+  const toward = h * hMm + v * vMm;
+  return contact === "outside" ? toward : 0 - toward;
+}
+
+/** A reference station must not change while others move, unless its own part does. */
+function watchOf(problem: MoveProblem, { component, realised }: SolvedComponent, stationId: string): Watch[] {
+  const station = problem.stations.find(({ id }) => id === stationId);
+  if (!station) return [];
+  const change = component.stationIds.includes(stationId) ? realised(station.zMm) : { hMm: 0, vMm: 0 };
+  const about = (mm: number) => ({
+    minMm: mm - problem.maximumMisfitMm,
+    maxMm: mm + problem.maximumMisfitMm,
+  });
+  return [{ stationId, change, stopAt: { h: about(change.hMm), v: about(change.vMm) } }];
+}

@@ -1,0 +1,75 @@
+import canonicalize from "canonicalize";
+import type { z } from "zod";
+import { axisDeviationResponse } from "../../shared/schemas/axis-deviations.ts";
+import { boreFitResponse } from "../../shared/schemas/bore-fits.ts";
+import { shimMoveResponse } from "../../shared/schemas/shim-moves.ts";
+import { axisDeviationKind } from "../calculations/axis-deviation.ts";
+import { boreFitKind } from "../calculations/bore-fit.ts";
+import type { CalculationKind } from "../calculations/calculation-kind.ts";
+import { shimMoveKind } from "../calculations/shim-move.ts";
+import type { Deps } from "../deps.ts";
+import { HttpProblem } from "../http/http-problem.ts";
+import type { Caller } from "../services/caller.ts";
+import { runCalculation } from "../services/run-calculation.ts";
+import {
+  cutShortRequest,
+  deviationRequest,
+  foundCentres,
+  leftCentres,
+  moveRequest,
+  surveyRequest,
+} from "./outage-requests.ts";
+
+/**
+ * Stores the records of one invented outage, each call made from the answers before it, as a crew would: a survey cut
+ * short and refused, as found, deviations, moves, as left. Does nothing where anything was computed before.
+ */
+export async function recordOutage(deps: Deps, caller: Caller): Promise<void> {
+  const organisationId = caller.organisation.id;
+  if (await deps.database.models.calculations.findOne({ where: { organisationId } })) return;
+  const run = runnerOf(deps, caller);
+  const boreFits = { kind: boreFitKind, response: boreFitResponse, path: "/v1/bore-fits" };
+  const axisDeviations = {
+    kind: axisDeviationKind,
+    response: axisDeviationResponse,
+    path: "/v1/axis-deviations",
+  };
+  const shimMoves = { kind: shimMoveKind, response: shimMoveResponse, path: "/v1/shim-moves" };
+
+  const asFound = { centres: foundCentres(), seed: 1, withSlips: true };
+  const cutShort = cutShortRequest("Unit 2, brg-2: gauge slipped after two readings", "brg-2", 2, asFound);
+  await expectRefusal(run(boreFits, cutShort));
+
+  const found = await run(boreFits, surveyRequest("Unit 2, as found", asFound));
+  const before = await run(axisDeviations, deviationRequest("Unit 2, as found", found.result.bores));
+  const moves = await run(shimMoves, moveRequest("Unit 2, moves to the axis", before.result));
+
+  const asLeft = { centres: leftCentres(before.result, moves.result), seed: 2, withSlips: false };
+  const left = await run(boreFits, surveyRequest("Unit 2, as left", asLeft));
+  await run(axisDeviations, deviationRequest("Unit 2, as left", left.result.bores));
+}
+
+interface Target<Request, Response> {
+  readonly kind: CalculationKind<Request, object>;
+  readonly response: z.ZodType<Response>;
+  readonly path: string;
+}
+
+function runnerOf(deps: Deps, caller: Caller) {
+  return async <Request extends { readonly note?: string | null | undefined }, Response>(
+    { kind, response, path }: Target<Request, Response>,
+    body: Request,
+  ): Promise<Response> => {
+    const canonicalText = canonicalize(body);
+    if (canonicalText === undefined) throw new Error("A request is a JSON object.");
+    const text = JSON.stringify(body);
+    const call = { deps, caller, body, text, canonicalText, claim: null, requestId: "demo", path };
+    return response.parse((await runCalculation(kind, call)).body);
+  };
+}
+
+/** The demo shows a failed record too; one that did not fail would be a fault of ours. */
+async function expectRefusal(run: Promise<unknown>): Promise<void> {
+  const outcome = await run.catch((error: unknown) => error);
+  if (!(outcome instanceof HttpProblem)) throw new Error("The survey cut short was not refused.", { cause: outcome });
+}

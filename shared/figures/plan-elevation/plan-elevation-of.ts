@@ -1,0 +1,68 @@
+import type {
+  AxisDeviationRequest,
+  AxisDeviationResult,
+  AxisStationRequest,
+} from "../../schemas/axis-deviations.ts";
+import type { PlanElevationModel, PlannedStation, Survey } from "./plan-elevation-model.ts";
+
+const axisWords: Record<AxisDeviationResult["axis"]["method"], string> = {
+  two_station: "axis through two stations",
+  least_squares: "least-squares axis",
+  minimum_zone: "minimum-zone axis",
+  least_absolute: "least-absolute axis",
+  line_of_sight: "line of sight",
+};
+
+/** Plan and elevation of one survey: a call for deviations and its result. */
+export function planElevationOf(
+  request: AxisDeviationRequest,
+  result: AxisDeviationResult,
+): PlanElevationModel {
+  const { through, method } = result.axis;
+  return {
+    axialUnit: request.units.axial,
+    offsetUnit: request.units.offset,
+    axisWords: through.length === 0 ? axisWords[method] : `${axisWords[method]} (${through.join(", ")})`,
+    stations: request.stations.map((station) => plannedStation(station, new Set(through))),
+    surveys: [surveyOf("measured", result)],
+  };
+}
+
+/** Where each station of a result was found to lie. */
+export function surveyOf(name: string, result: AxisDeviationResult): Survey {
+  return {
+    name,
+    stations: result.stations.map(({ id, deviation, expandedUncertainty, verdict }) => ({
+      id,
+      deviation: { h: deviation.h, v: deviation.v },
+      radial: deviation.radial,
+      uncertainty: expandedUncertainty && { h: expandedUncertainty.h, v: expandedUncertainty.v },
+      verdict,
+    })),
+  };
+}
+
+function plannedStation(station: AxisStationRequest, through: ReadonlySet<string>): PlannedStation {
+  return {
+    id: station.id,
+    z: station.z,
+    reference: through.has(station.id),
+    target: station.target ?? { h: 0, v: 0 },
+    allowed: allowedBy(station.tolerance),
+  };
+}
+
+function allowedBy(tolerance: AxisStationRequest["tolerance"]): PlannedStation["allowed"] {
+  if (!tolerance) return null;
+  if ("radial" in tolerance) {
+    const side = [-tolerance.radial, tolerance.radial] as const;
+    return { h: side, v: side };
+  }
+  return { h: boundsOf(tolerance.h), v: boundsOf(tolerance.v) };
+}
+
+function boundsOf(side: number | number[]): readonly [number, number] {
+  if (typeof side === "number") return [-side, side];
+  const [least = 0, most = 0] = side;
+  return [least, most];
+}
