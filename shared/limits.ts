@@ -13,6 +13,11 @@ export const limits = {
   supportsPerComponent: 50,
   padsPerSupport: 12,
   stockPerCall: 200,
+  piecesPerStack: 50,
+  indicatorsPerCall: 200,
+  couplingsPerCall: 2_000,
+  /** Parts that one move may be split into. */
+  incrementsPerMove: 1_000,
   idLength: 64,
   noteLength: 2_000,
   nameLength: 120,
@@ -36,6 +41,8 @@ export const bounds = {
   uncertaintyOrExact: { min: 0, max: 1e9 },
   variance: { min: -1e18, max: 1e18 },
   thickness: { min: 0, max: 1e6 },
+  /** One piece, or a step in which pieces can be had. */
+  shim: { min: 1e-5, max: 1e6 },
   clockDeg: { min: -360, max: 360 },
   halfAngleDeg: { min: -89, max: 89 },
   level: { min: 0.5, max: 1 },

@@ -75,7 +75,7 @@ const casingWall: Wall = {
   everyDeg: 10,
   gapsDeg: [[150, 210]],
   oversize: 0.12,
-  outOfRound: 0.015,
+  outOfRound: 0.01,
   longAxisDeg: 8,
   readingUncertainty: 0.03,
 };
@@ -138,7 +138,7 @@ export const fellgateStations: readonly FellgateStation[] = [
   }),
   part("dif-1", 3720, 1300, { v: 0.19, u: 0.012 }, {
     tolerance: { radial: 0.2 },
-    wall: { ...casingWall, gapsDeg: [[60, 120]], outOfRound: 0.02 },
+    wall: { ...casingWall, gapsDeg: [[60, 120]], outOfRound: 0.012 },
     foundOff: { h: 0.19, v: -0.29 },
   }),
   part("noz-1", 4420, 1780, { v: 0.22, u: 0.012 }, {

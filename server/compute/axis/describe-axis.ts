@@ -8,7 +8,7 @@ import type { ErrorSource, Scatter } from "./error-source.ts";
 import type { PlaneFits } from "./fit-plane.ts";
 
 /** Above this quantile the residuals say that the stated uncertainties are too small, or that a station moved. */
-const chiSquareLevel = 0.949;
+const chiSquareLevel = 0.95;
 
 const noRedundancy: Warning = {
   code: "no_redundancy",

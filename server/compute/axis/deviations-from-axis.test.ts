@@ -192,10 +192,11 @@ describe("deviationsFromAxis: least_squares", () => {
   });
 
   it("lets one poor station give the slope where all good ones stand at one z", () => {
-    const good = Array.from({ length: 3 }, () => stationAt(100_000.1, 0.25, 0, u(1e-12)));
-    const { axis } = deviationsFromAxis(
-      axisInput("least_squares", [0, 1, 2, 3], [...good, stationAt(200_000.1, 0.35, 0, u(1e6))]),
-    );
+    const sizes = [0.51, 0.77, 0.93, 1.13, 1.29, 1.37, 1.49];
+    const good = sizes.map((size) => stationAt(95_604.1, 0.25, 0, u(size * 1e-12)));
+    const poor = stationAt(195_604.1, 0.35, 0, u(1e6));
+    const reference = [...good.keys(), good.length];
+    const { axis } = deviationsFromAxis(axisInput("least_squares", reference, [...good, poor]));
     near(axis.h.slope, 1e-6, 1e-16);
   });
 });
