@@ -24,6 +24,7 @@ export default defineConfig({
         test: {
           name: "unit",
           include: ["{server,shared,tests/support}/**/*.test.ts"],
+          setupFiles: ["tests/support/seeded-properties.ts"],
           testTimeout: seconds(20),
         },
       },
