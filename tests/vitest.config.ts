@@ -23,7 +23,7 @@ export default defineConfig({
         extends: true,
         test: {
           name: "unit",
-          include: ["{server,shared,tests/support}/**/*.test.ts"],
+          include: ["{server,shared,tests/support,tests/house}/**/*.test.ts"],
           setupFiles: ["tests/support/seeded-properties.ts"],
           testTimeout: seconds(20),
         },

@@ -5,7 +5,7 @@ import { asRoot, endLeftOver, programPath, startServer } from "./database-server
 import { findFreePort, isPortFree } from "./ports.mjs";
 import { makePrivateFolder, readPrivateFile, writePrivateFile } from "./private-files.mjs";
 import { Refusal } from "./say.mjs";
-import { awaitEnd, spawnTied } from "./tied-process.mjs";
+import { awaitEnd, requireSuccess, spawnTied } from "./tied-process.mjs";
 
 /** @typedef {import("./database-server.mjs").Access} Access */
 /** @typedef {import("./database-server.mjs").PrivateDatabase} PrivateDatabase */
@@ -58,6 +58,6 @@ async function makeDataFolder(/** @type {string} */ folder) {
       ...asRoot(),
     ]),
   );
-  if (ended.code !== 0) throw new Refusal(`MariaDB could not make its data folder:\n${ended.output}`);
+  requireSuccess(ended, `MariaDB could not make its data folder in ${folder}.`);
   renameSync(unfinished, join(folder, "database"));
 }
