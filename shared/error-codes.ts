@@ -173,7 +173,6 @@ export const problemKinds = {
     "The number of reference stations does not fit the method",
     "Name as many as the method takes.",
   ),
-  station_unknown: kind(422, "A station is not among those sent", "Correct the id."),
   tolerance_invalid: kind(
     422,
     "A tolerance cannot be used",
@@ -189,7 +188,6 @@ export const problemKinds = {
     "The supports cannot make the movement",
     "Add supports or free a direction.",
   ),
-  infeasible: kind(422, "No move satisfies all limits", "Loosen the limit that detail names."),
   too_many_choices: kind(
     422,
     "The choice of shims is too large to search",

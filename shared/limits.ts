@@ -16,8 +16,8 @@ export const limits = {
   piecesPerStack: 50,
   indicatorsPerCall: 200,
   couplingsPerCall: 2_000,
-  /** Parts that one move may be split into. */
-  incrementsPerMove: 1_000,
+  /** Parts that all moves of a call together may be split into. */
+  incrementsPerCall: 2_000,
   idLength: 64,
   noteLength: 2_000,
   nameLength: 120,

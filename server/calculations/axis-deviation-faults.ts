@@ -1,6 +1,5 @@
 import type { z } from "zod";
 import type { Fault } from "../../shared/error-codes.ts";
-import { pointerOf } from "../../shared/pointer.ts";
 import {
   axisSchema,
   axisStationSchema,
@@ -17,7 +16,7 @@ import {
 } from "../compute/axis/find-faults.ts";
 import { readAxisStation } from "./axis-deviation-input.ts";
 import { faultOf } from "./collect-faults.ts";
-import { isSymmetric } from "./read-covariance.ts";
+import { asymmetry, duplicates, idsOf, listOf, membersOf, unknownReference } from "./common-faults.ts";
 
 /** What could be read of a body: all of it when it passed the schema, the sound parts when it did not (null elsewhere). */
 interface Readable {
@@ -35,15 +34,12 @@ export function axisDeviationFaults({ units, axis, stations }: AxisDeviationRequ
 /** The faults of the domain in the sound parts of a body that failed its schema elsewhere. */
 export function axisDeviationFaultsBesideSchema(body: unknown): Fault[] {
   const { units, axis, stations } = membersOf(body);
-  const sent: unknown[] = Array.isArray(stations) ? stations : [];
+  const sent = listOf(stations);
   return faultsOf({
     // No fault of the domain depends on the unit: any will do where none was stated.
     units: unitsSchema.safeParse(units).data ?? { axial: "mm", bore: "mm", offset: "mm" },
     axis: axisSchema.safeParse(axis).data ?? null,
-    ids: sent.map((station) => {
-      const { id } = membersOf(station);
-      return typeof id === "string" ? id : null;
-    }),
+    ids: idsOf(sent),
     stations: sent.map((station) => axisStationSchema.safeParse(station).data ?? null),
   });
 }
@@ -58,10 +54,14 @@ function faultsOf({ units, axis, ids, stations }: Readable): Fault[] {
   );
   const faults = [
     ...duplicates(ids, (index) => ["stations", index, "id"]),
-    ...stations.flatMap((station, index) => asymmetry(station, index)),
+    ...stations.flatMap((station, index) =>
+      asymmetry(station?.covariance, ["stations", index, "covariance"]),
+    ),
     ...stationFaults,
     ...duplicates(through, (index) => ["axis", "through", index]),
-    ...named.flatMap((station, index) => (station < 0 ? unknownReference(index) : [])),
+    ...named.flatMap((station, index) =>
+      station < 0 ? unknownReference(["axis", "through", index], "station") : [],
+    ),
     ...(axis ? findMethodFaults(axis.method, through.length).map((error) => faultOf(error, [])) : []),
   ];
   const references = named
@@ -70,39 +70,4 @@ function faultsOf({ units, axis, ids, stations }: Readable): Fault[] {
   const sound = references.filter((one): one is ReferenceStation => one.station !== null);
   if (!axis || sound.length < references.length) return faults;
   return [...faults, ...findReferenceFaults(axis.method, sound).map((error) => faultOf(error, []))];
-}
-
-function duplicates(ids: readonly (string | null)[], at: (index: number) => PropertyKey[]): Fault[] {
-  return ids.flatMap((id, index) => {
-    const first = ids.indexOf(id);
-    if (id === null || first === index) return [];
-    return {
-      pointer: pointerOf(at(index)),
-      code: "duplicate_id" as const,
-      detail: `The same id stands at ${pointerOf(at(first))}.`,
-    };
-  });
-}
-
-function unknownReference(index: number): Fault {
-  return {
-    pointer: pointerOf(["axis", "through", index]),
-    code: "unknown_reference",
-    detail: "No station of this call has that id.",
-  };
-}
-
-function asymmetry(station: AxisStationRequest | null, index: number): Fault[] {
-  if (!station?.covariance || isSymmetric(station.covariance)) return [];
-  return [
-    {
-      pointer: pointerOf(["stations", index, "covariance"]),
-      code: "covariance_not_positive",
-      detail: "A covariance is symmetric: its two off-diagonal entries are the same number.",
-    },
-  ];
-}
-
-function membersOf(value: unknown): Record<string, unknown> {
-  return typeof value === "object" && value !== null ? (value as Record<string, unknown>) : {};
 }

@@ -6,10 +6,10 @@ import {
 import { convertersFor, type Converter, type Dimension, type Units } from "../../shared/units.ts";
 import type { Axis, AxisDeviations, Matrix2, StationDeviation } from "../compute/axis/axis-result.ts";
 import { deviationsFromAxis } from "../compute/axis/deviations-from-axis.ts";
-import { clockDegOf, radialMm } from "../compute/plane.ts";
 import { axisDeviationFaults, axisDeviationFaultsBesideSchema } from "./axis-deviation-faults.ts";
 import { readAxisStation } from "./axis-deviation-input.ts";
 import { CalculationRefusal, type CalculationKind } from "./calculation-kind.ts";
+import { writeDeviation } from "./write-deviation.ts";
 
 type Converters = Record<Dimension, Converter>;
 type AxisAnswer = AxisDeviationResult["axis"];
@@ -96,12 +96,7 @@ function answerStation(
   return {
     id,
     z,
-    deviation: {
-      h: offset.fromMm(deviation.hMm),
-      v: offset.fromMm(deviation.vMm),
-      radial: offset.fromMm(radialMm(deviation)),
-      clockDeg: clockDegOf(deviation),
-    },
+    deviation: writeDeviation(deviation, offset),
     expandedUncertainty: expandedUncertainty && {
       h: offset.fromMm(expandedUncertainty.hMm),
       v: offset.fromMm(expandedUncertainty.vMm),

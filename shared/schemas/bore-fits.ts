@@ -210,18 +210,14 @@ export const boreFitResult = z
       .nullable()
       .meta({ description: "In bore units, at z = 0; null where it is not known." }),
     roundness: z.number().nullable().meta({ description: "Peak to valley of the radial residuals in use." }),
-    residuals: z
-      .union([z.array(z.number()), z.array(clockPair("Of one spot"))])
-      .meta({
-        description:
-          "In the order sent: radial, outwards positive; {h, v} for a rotating target; left, right, bottom, top for a wire.",
-      }),
+    residuals: z.union([z.array(z.number()), z.array(clockPair("Of one spot"))]).meta({
+      description:
+        "In the order sent: radial, outwards positive; {h, v} for a rotating target; left, right, bottom, top for a wire.",
+    }),
     used: z.array(z.boolean()),
-    exclusions: z
-      .array(z.object({ index: z.int(), ratio: z.number() }))
-      .meta({
-        description: "Readings put aside, in that order, with |r|/u ÷ (1.4826 × median) at that moment.",
-      }),
+    exclusions: z.array(z.object({ index: z.int(), ratio: z.number() })).meta({
+      description: "Readings put aside, in that order, with |r|/u ÷ (1.4826 × median) at that moment.",
+    }),
     contacts: z
       .array(z.int())
       .nullable()

@@ -7,21 +7,16 @@ export const unitsSchema = z
   .strictObject({
     axial: z.enum(unitChoices.axial).meta({ description: "z and lengths along the machine." }),
     bore: z.enum(unitChoices.bore).meta({ description: "Coordinates of points on a wall, diameters." }),
-    offset: z
-      .enum(unitChoices.offset)
-      .meta({
-        description: "Readings from nominal, centres, targets, deviations, tolerances, shims, uncertainties.",
-      }),
+    offset: z.enum(unitChoices.offset).meta({
+      description: "Readings from nominal, centres, targets, deviations, tolerances, shims, uncertainties.",
+    }),
   })
   .meta({ id: "Units", description: "Always stated, never assumed." });
 
-export const seenSchema = z
-  .enum(["downstream", "upstream"])
-  .meta({
-    id: "Seen",
-    description:
-      "The way the reader looked. Answers are always in the downstream view: h to the right, v up.",
-  });
+export const seenSchema = z.enum(["downstream", "upstream"]).meta({
+  id: "Seen",
+  description: "The way the reader looked. Answers are always in the downstream view: h to the right, v up.",
+});
 
 export const levelSchema = z
   .number()

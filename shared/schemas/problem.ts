@@ -28,12 +28,9 @@ export const problemSchema = z
     fix: z.string().optional().meta({ description: "What to do about it, in one sentence." }),
     errors: z.array(faultSchema).optional(),
     more: z.number().int().optional().meta({ description: "How many faults are not listed." }),
-    id: z
-      .string()
-      .optional()
-      .meta({
-        description: "The stored record of a refused calculation, or the resource whose secret was shown.",
-      }),
+    id: z.string().optional().meta({
+      description: "The stored record of a refused calculation, or the resource whose secret was shown.",
+    }),
     scope: z.string().optional(),
     limit: z.number().optional(),
     retryAfterSeconds: z.number().int().optional(),

@@ -110,7 +110,7 @@ export const shimMoveRequest = z
     maximumIncrement: quantity(
       "offset",
       "shim",
-      "Largest part of a move made at once; absent: all at once.",
+      `Largest part of a move made at once; absent: all at once. The moves of a call split into ${limits.incrementsPerCall} parts at most.`,
     ).nullish(),
     maximumMisfit: quantity(
       "offset",
@@ -146,18 +146,19 @@ const stackChange = z
       .array(z.number())
       .meta({ description: "One thickness per piece. Empty where no shims were chosen." }),
     remove: z.array(z.number()).meta({ description: "One thickness per piece." }),
-    misfit: z
-      .number()
-      .meta({
-        description:
-          "Change chosen less the one that the realised move needs: what a rigid part cannot follow.",
-      }),
+    misfit: z.number().meta({
+      description:
+        "Change chosen less the one that the realised move needs: what a rigid part cannot follow.",
+    }),
   })
   .meta({ id: "StackChange" });
 
 const unreachable = z
   .object({
-    reason: z.string(),
+    cause: z
+      .enum(["fixed", "reference", "contradiction", "limit", "blocked", "rigid", "shims"])
+      .meta({ description: "The kind of reason, for a program." }),
+    reason: z.string().meta({ description: "In words, with the station that is left worst." }),
     limit: z
       .string()
       .nullable()

@@ -1,11 +1,9 @@
 import { ComputeError, type ComputeErrorCode } from "../compute-error.ts";
 import { findToleranceFaults } from "../conformity/find-tolerance-faults.ts";
-import type { PlaneCovariance } from "../plane.ts";
+import { isCovariance } from "../conformity/is-covariance.ts";
 import { variancesOf } from "./error-source.ts";
 import type { AxisInput, AxisMethod, AxisStation } from "./axis-input.ts";
 
-/** A covariance whose correlation passes 1 by no more than its decimals were rounded. */
-const correlationSlack = 1e-9;
 /** Reference stations nearer than this share of their distance from z = 0 differ in the last digits only. */
 const relativeSpanMin = 1e-12;
 /** A picometre: no station is placed to it. */
@@ -117,11 +115,6 @@ function hasSpan(references: readonly ReferenceStation[]): boolean {
   const z = references.map(({ station }) => station.zMm);
   const spanMm = Math.max(...z) - Math.min(...z);
   return spanMm > Math.max(spanMinMm, relativeSpanMin * Math.max(...z.map(Math.abs)));
-}
-
-function isCovariance({ hhMm2, hvMm2, vvMm2 }: PlaneCovariance): boolean {
-  const limit = Math.sqrt(hhMm2) * Math.sqrt(vvMm2) * (1 + correlationSlack);
-  return hhMm2 >= 0 && vvMm2 >= 0 && Math.abs(hvMm2) <= limit;
 }
 
 function hasZeroVariance(station: AxisStation): boolean {

@@ -29,6 +29,7 @@ export function tabulateSources(sources: readonly ErrorSource[]): SourceTable {
   return table;
 }
 
+/** Puts one source into its row: variances in mm²; a scatter's degrees of freedom also go where all scatters share them. */
 export function writeSource(table: SourceTable, row: number, source: ErrorSource): void {
   const { measured, target, isScatter } = source;
   const dof = source.dof ?? Infinity;

@@ -15,9 +15,11 @@ export interface Minimisers {
 /** A direction that changes a problem by less than this share of the problem's own size is not determined by it. */
 const rankTolerance = 1e-10;
 
+/** Σ aᵢ·bᵢ over the places of `a`. */
 export const dot = (a: readonly number[], b: readonly number[]): number =>
   a.reduce((sum, value, k) => sum + value * (b[k] ?? 0), 0);
 
+/** √Σ aᵢ². */
 export const lengthOf = (a: readonly number[]): number => Math.hypot(...a);
 
 /** `point` + Σ amounts[k]·directions[k]. */

@@ -84,6 +84,8 @@ export interface MoveProblem {
   readonly maximumMisfitMm: number;
   /** Largest part of a move made at once; null: a move is made in one. */
   readonly maximumIncrementMm: number | null;
+  /** Parts that all moves together may be split into. */
+  readonly incrementsMax: number;
   readonly indicators: readonly MoveIndicator[];
   /** Coverage probability of the predicted verdicts. */
   readonly level: number;

@@ -1,4 +1,5 @@
 import { clockDirection } from "../bore/clock-direction.ts";
+import { ComputeError } from "../compute-error.ts";
 import type { Increment, Step, SupportMove, Watch } from "./move-plan.ts";
 import type { MoveIndicator, MoveProblem } from "./move-problem.ts";
 import type { RigidMove } from "./rigid-freedom.ts";
@@ -7,9 +8,15 @@ import type { SolvedComponent } from "./solve-component.ts";
 /**
  * The moves in the order in which they are made (common practice, no source): casings, shrouds, nozzles and other parts
  * to the axis first, bearings after, each in the order sent and locked before the next.
+ * @throws ComputeError combination_invalid when the moves would be split into more parts than `incrementsMax`
  */
 export function planSteps(problem: MoveProblem, solved: readonly SolvedComponent[]): Step[] {
   const moving = solved.filter(({ moved }) => moved);
+  const parts = moving.reduce(
+    (sum, { answer }) => sum + incrementCount(answer.realised, problem.maximumIncrementMm),
+    0,
+  );
+  if (parts > problem.incrementsMax) throw tooManyParts(parts, problem.incrementsMax);
   const isBearing = ({ component }: SolvedComponent) => component.kind === "bearing";
   return [...moving.filter((each) => !isBearing(each)), ...moving.filter(isBearing)].map((each, index) => ({
     order: index + 1,
@@ -17,6 +24,11 @@ export function planSteps(problem: MoveProblem, solved: readonly SolvedComponent
     increments: incrementsOf(problem, each),
     watch: problem.referenceIds.flatMap((id) => watchOf(problem, each, id)),
   }));
+}
+
+function tooManyParts(reached: number, limit: number): ComputeError {
+  const detail = `The moves split into ${reached} parts; a call takes ${limit}.`;
+  return new ComputeError("combination_invalid", detail, { at: ["maximumIncrement"], reached, limit });
 }
 
 /** Equal parts so that none passes the largest allowed: n = ⌈L/maximum⌉, L the largest |h| or |v| at any support. */

@@ -62,6 +62,7 @@ export function rowAlong(
 /** A move of a rigid part, as a function of z. */
 export type RigidMove = (zMm: number) => PlaneVector;
 
+/** The move of a part that stays: 0 mm at every z. */
 export const noMove: RigidMove = () => ({ hMm: 0, vMm: 0 });
 
 /** Moves in different planes, taken together. */

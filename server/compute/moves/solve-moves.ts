@@ -19,7 +19,8 @@ export type ForEachComponent = (
  * where every station then lies; the steps in their order; what to measure again; what else to know.
  * Lengths in mm. Ids are unique, every reference exists and every station belongs to one component at most.
  * Work: per component linear in its stations and limits; the choice of shims is bounded by a budget.
- * @throws ComputeError supports_insufficient, too_many_choices, not_converged, tolerance_invalid, result_overflow
+ * @throws ComputeError supports_insufficient, too_many_choices, not_converged, tolerance_invalid, combination_invalid,
+ * result_overflow
  */
 export function solveMoves(
   problem: MoveProblem,

@@ -1,6 +1,13 @@
 import type { BoreFitResult } from "../../schemas/bore-fits.ts";
 import type { Units } from "../../units.ts";
-import { numberCell, numberColumn, signedCell, textCell, textColumn, type FigureTable } from "../figure-table.ts";
+import {
+  numberCell,
+  numberColumn,
+  signedCell,
+  textCell,
+  textColumn,
+  type FigureTable,
+} from "../figure-table.ts";
 import { decimalsAcross, decimalsFor } from "../write-number.ts";
 
 /** All bores of a fit, one row a bore in the order sent. */

@@ -25,6 +25,7 @@ function describeSurvey(model: PlanElevationModel, survey: Survey): string {
     survey.stations.map((station) => station.radial),
     decimalsAcross(model.offsetUnit),
   );
+  const judged = conforming.length + undecided.length + exceeding.length > 0;
   const counts = [
     `${conforming.length} conform`,
     `${undecided.length} undecided${undecided.length > 0 ? ` (${undecided.join(", ")})` : ""}`,
@@ -34,7 +35,7 @@ function describeSurvey(model: PlanElevationModel, survey: Survey): string {
     farthest === undefined
       ? ""
       : ` Largest deviation ${writeNumber(farthest.radial, decimals)} ${model.offsetUnit} at ${farthest.id}: h ${writeSigned(farthest.deviation.h, decimals)}, v ${writeSigned(farthest.deviation.v, decimals)}.`;
-  return `${capitalise(survey.name)}: ${counts.join(", ")}.${most}`;
+  return `${capitalise(survey.name)}: ${judged ? counts.join(", ") : "not judged"}.${most}`;
 }
 
 function capitalise(words: string): string {

@@ -1,5 +1,5 @@
 import { drawArrow } from "../draw-arrow.ts";
-import { drawVerdictMark } from "../draw-verdict-mark.ts";
+import { drawVerdictMark, type Verdict } from "../draw-verdict-mark.ts";
 import { flowKey, wrapWords, type KeyEntry } from "../flow-key.ts";
 import { stepAtMost, ticksBetween } from "../pick-step.ts";
 import { lettering, textWidth, type Figure, type Point, type Shape } from "../shape.ts";
@@ -140,8 +140,8 @@ function drawRule(model: PlanElevationModel, scale: PlanElevationScale): Shape[]
 }
 
 function entriesOf(model: PlanElevationModel): KeyEntry[] {
-  const verdicts = (["conforms", "undecided", "exceeds"] as const).map((verdict): KeyEntry => ({
-    words: verdict,
+  const verdicts = verdictsShown(model).map((verdict): KeyEntry => ({
+    words: verdict ?? "not judged",
     sampleWidth: 3,
     sample: (at) => drawVerdictMark(verdict, { x: at.x + 1.5, y: at.y }, 1.35),
   }));
@@ -192,9 +192,15 @@ function entriesOf(model: PlanElevationModel): KeyEntry[] {
   return [
     ...verdicts,
     ...surveys,
-    line("axis", "centre"),
+    line(model.zero, "centre"),
     gate,
     ...(known ? [bar] : []),
     ...(model.stations.some((station) => station.reference) ? [reference] : []),
   ];
+}
+
+/** The three verdicts, so that a reader learns what did not occur; the dot only where it is drawn. */
+function verdictsShown(model: PlanElevationModel): (Verdict | null)[] {
+  const unjudged = model.surveys.some(({ stations }) => stations.some(({ verdict }) => verdict === null));
+  return ["conforms", "undecided", "exceeds", ...(unjudged ? [null] : [])];
 }

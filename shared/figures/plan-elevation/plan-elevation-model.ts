@@ -42,6 +42,8 @@ export interface PlanElevationModel {
   readonly offsetUnit: LengthUnit;
   /** "least-squares axis through brg-1, brg-2" */
   readonly axisWords: string;
+  /** What the line at zero is: the axis, or every station's target where deviations alone are known. */
+  readonly zero: "axis" | "target";
   readonly stations: readonly PlannedStation[];
   readonly surveys: readonly Survey[];
 }

@@ -23,6 +23,7 @@ export function planElevationOf(
     axialUnit: request.units.axial,
     offsetUnit: request.units.offset,
     axisWords: through.length === 0 ? axisWords[method] : `${axisWords[method]} (${through.join(", ")})`,
+    zero: "axis",
     stations: request.stations.map((station) => plannedStation(station, new Set(through))),
     surveys: [surveyOf("measured", result)],
   };
@@ -52,7 +53,8 @@ function plannedStation(station: AxisStationRequest, through: ReadonlySet<string
   };
 }
 
-function allowedBy(tolerance: AxisStationRequest["tolerance"]): PlannedStation["allowed"] {
+/** Least and most deviation that a tolerance allows, per plane. */
+export function allowedBy(tolerance: AxisStationRequest["tolerance"]): PlannedStation["allowed"] {
   if (!tolerance) return null;
   if ("radial" in tolerance) {
     const side = [-tolerance.radial, tolerance.radial] as const;

@@ -1,6 +1,13 @@
 import type { AxisDeviationResult } from "../../schemas/axis-deviations.ts";
 import type { Units } from "../../units.ts";
-import { numberCell, numberColumn, signedCell, textCell, textColumn, type FigureTable } from "../figure-table.ts";
+import {
+  numberCell,
+  numberColumn,
+  signedCell,
+  textCell,
+  textColumn,
+  type FigureTable,
+} from "../figure-table.ts";
 import { decimalsAcross, decimalsFor } from "../write-number.ts";
 
 /** The reference axis, one row a plane. */

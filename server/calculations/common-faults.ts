@@ -1,0 +1,69 @@
+import type { Fault } from "../../shared/error-codes.ts";
+import { pointerOf } from "../../shared/pointer.ts";
+import { isCovariance } from "../compute/conformity/is-covariance.ts";
+import type { PlaneCovariance } from "../compute/plane.ts";
+import { isSymmetric } from "./read-covariance.ts";
+
+type Place = readonly PropertyKey[];
+
+/** A fault at every id that stands earlier in the list too; what is no id (null) is passed over. */
+export function duplicates(ids: readonly (string | null)[], at: (index: number) => Place): Fault[] {
+  const first = new Map<string, number>();
+  return ids.flatMap((id, index) => {
+    if (id === null) return [];
+    const earlier = first.get(id);
+    if (earlier === undefined) {
+      first.set(id, index);
+      return [];
+    }
+    const detail = `The same id stands at ${pointerOf(at(earlier))}.`;
+    return [{ pointer: pointerOf(at(index)), code: "duplicate_id" as const, detail }];
+  });
+}
+
+export function unknownReference(at: Place, what: string): Fault {
+  return {
+    pointer: pointerOf(at),
+    code: "unknown_reference",
+    detail: `No ${what} of this call has that id.`,
+  };
+}
+
+export function notAvailable(at: Place, detail: string): Fault {
+  return { pointer: pointerOf(at), code: "not_available", detail };
+}
+
+export function combinationInvalid(at: Place, detail: string): Fault {
+  return { pointer: pointerOf(at), code: "combination_invalid", detail };
+}
+
+/** A covariance whose two equal places differ. */
+export function asymmetry(matrix: readonly (readonly number[])[] | null | undefined, at: Place): Fault[] {
+  if (!matrix || isSymmetric(matrix)) return [];
+  const detail = "A covariance is symmetric: its two off-diagonal entries are the same number.";
+  return [{ pointer: pointerOf(at), code: "covariance_not_positive", detail }];
+}
+
+/** A covariance of negative variance, or of correlation beyond plus or minus 1. */
+export function notPositive(covariance: PlaneCovariance | null, at: Place): Fault[] {
+  if (!covariance || isCovariance(covariance)) return [];
+  const detail = "A covariance has variances of 0 or more, and a correlation within plus or minus 1.";
+  return [{ pointer: pointerOf(at), code: "covariance_not_positive", detail }];
+}
+
+/** The members of a value that may be anything; none when it is no object. */
+export function membersOf(value: unknown): Record<string, unknown> {
+  return typeof value === "object" && value !== null ? (value as Record<string, unknown>) : {};
+}
+
+export function listOf(value: unknown): readonly unknown[] {
+  return Array.isArray(value) ? value : [];
+}
+
+/** The `id` of each item of a body that may be anything; null where there is none. */
+export function idsOf(items: readonly unknown[]): (string | null)[] {
+  return items.map((item) => {
+    const { id } = membersOf(item);
+    return typeof id === "string" ? id : null;
+  });
+}

@@ -1,0 +1,157 @@
+import type { z } from "zod";
+import type { Fault } from "../../shared/error-codes.ts";
+import { unitsSchema } from "../../shared/schemas/common.ts";
+import { componentSchema, type ComponentRequest } from "../../shared/schemas/move-components.ts";
+import {
+  indicatorSchema,
+  moveStationSchema,
+  shimMoveRequest,
+  type IndicatorRequest,
+  type MoveStationRequest,
+  type ShimMoveRequest,
+} from "../../shared/schemas/shim-moves.ts";
+import { convertersFor, type Converter, type Dimension, type Units } from "../../shared/units.ts";
+import { findToleranceFaults } from "../compute/conformity/find-tolerance-faults.ts";
+import { faultOf } from "./collect-faults.ts";
+import {
+  asymmetry,
+  duplicates,
+  idsOf,
+  listOf,
+  membersOf,
+  notAvailable,
+  notPositive,
+  unknownReference,
+} from "./common-faults.ts";
+import { componentFaults, stationsSharedFaults } from "./component-faults.ts";
+import { readMoveStation } from "./shim-move-input.ts";
+
+const wholeCall = shimMoveRequest.shape;
+
+/** What could be read of a body: all of it when it passed the schema, the sound parts when it did not (null elsewhere). */
+interface Readable {
+  readonly units: Units;
+  readonly stationIds: readonly (string | null)[];
+  readonly stations: readonly (MoveStationRequest | null)[];
+  readonly componentIds: readonly (string | null)[];
+  readonly components: readonly (ComponentRequest | null)[];
+  readonly indicatorIds: readonly (string | null)[];
+  readonly indicators: readonly (IndicatorRequest | null)[];
+  readonly reference: readonly string[];
+  readonly call: Pick<ShimMoveRequest, "shims" | "objective" | "couplings">;
+}
+
+/** Every fault of the domain in a request that passed its schema. */
+export function shimMoveFaults(request: ShimMoveRequest): Fault[] {
+  const { units, stations, components, indicators = [], reference = [] } = request;
+  return faultsOf({
+    units,
+    stationIds: stations.map(({ id }) => id),
+    stations,
+    componentIds: components.map(({ id }) => id),
+    components,
+    indicatorIds: indicators.map(({ id }) => id),
+    indicators,
+    reference,
+    call: request,
+  });
+}
+
+/** The faults of the domain in the sound parts of a body that failed its schema elsewhere. */
+export function shimMoveFaultsBesideSchema(body: unknown): Fault[] {
+  const sent = membersOf(body);
+  const lists = {
+    stations: listOf(sent["stations"]),
+    components: listOf(sent["components"]),
+    indicators: listOf(sent["indicators"]),
+  };
+  const sound = <T>(schema: z.ZodType<T>, items: readonly unknown[]): (T | null)[] =>
+    items.map((item) => schema.safeParse(item).data ?? null);
+  return faultsOf({
+    // No fault of the domain depends on the unit: any will do where none was stated.
+    units: unitsSchema.safeParse(sent["units"]).data ?? { axial: "mm", bore: "mm", offset: "mm" },
+    stationIds: idsOf(lists.stations),
+    stations: sound(moveStationSchema, lists.stations),
+    componentIds: idsOf(lists.components),
+    components: sound(componentSchema, lists.components),
+    indicatorIds: idsOf(lists.indicators),
+    indicators: sound(indicatorSchema, lists.indicators),
+    reference: wholeCall.reference.safeParse(sent["reference"]).data ?? [],
+    call: {
+      shims: wholeCall.shims.safeParse(sent["shims"]).data,
+      objective: wholeCall.objective.safeParse(sent["objective"]).data,
+      couplings: wholeCall.couplings.safeParse(sent["couplings"]).data,
+    },
+  });
+}
+
+function faultsOf(read: Readable): Fault[] {
+  const { stationIds, stations, componentIds, components, indicatorIds, indicators, reference } = read;
+  const convert = convertersFor(read.units);
+  const known = { stations: new Set(stationIds), components: new Set(componentIds) };
+  return [
+    ...duplicates(stationIds, (index) => ["stations", index, "id"]),
+    ...stations.flatMap((station, index) => (station ? stationFaults(station, index, convert) : [])),
+    ...duplicates(reference, (index) => ["reference", index]),
+    ...reference.flatMap((id, index) =>
+      known.stations.has(id) ? [] : [unknownReference(["reference", index], "station")],
+    ),
+    ...duplicates(componentIds, (index) => ["components", index, "id"]),
+    ...components.flatMap((component, index) =>
+      component ? componentFaults(component, index, { stationIds: known.stations, reference }, convert) : [],
+    ),
+    ...stationsSharedFaults(components),
+    ...duplicates(indicatorIds, (index) => ["indicators", index, "id"]),
+    ...indicators.flatMap((indicator, index) =>
+      !indicator || known.components.has(indicator.component)
+        ? []
+        : [unknownReference(["indicators", index, "component"], "component")],
+    ),
+    ...callFaults(read.call),
+  ];
+}
+
+function stationFaults(
+  station: MoveStationRequest,
+  index: number,
+  convert: Record<Dimension, Converter>,
+): Fault[] {
+  const at = ["stations", index];
+  const { covariance, tolerance } = readMoveStation(station, convert);
+  return [
+    ...asymmetry(station.covariance, [...at, "covariance"]),
+    ...notPositive(covariance, [...at, "covariance"]),
+    ...(tolerance ? findToleranceFaults(tolerance).map((error) => faultOf(error, at)) : []),
+  ];
+}
+
+/** What of the call as a whole this engine version does not compute. */
+function callFaults({ shims, objective, couplings }: Readable["call"]): Fault[] {
+  const { stock, cutToSize, reuse } = shims ?? {};
+  // An empty stock beside shims cut to size takes nothing away; alone it would mean that there are no shims at all.
+  const stockCounts = stock !== undefined && (stock.length > 0 || !cutToSize);
+  return [
+    ...(stockCounts
+      ? [
+          notAvailable(
+            ["shims", "stock"],
+            "Shims are chosen cut to size; a stock of them is not chosen from.",
+          ),
+        ]
+      : []),
+    ...(reuse === true
+      ? [
+          notAvailable(
+            ["shims", "reuse"],
+            "Pieces taken out are not chosen again; send false, or leave it out.",
+          ),
+        ]
+      : []),
+    ...(objective === "minimax"
+      ? [notAvailable(["objective"], "minimax is not computed by this engine version; use least_squares.")]
+      : []),
+    ...(couplings !== undefined && couplings.length > 0
+      ? [notAvailable(["couplings"], "Couplings are not computed by this engine version.")]
+      : []),
+  ];
+}
