@@ -3,6 +3,7 @@ import type { Config } from "./config.ts";
 import type { Database } from "./database.ts";
 import type { Metrics } from "./http/metrics.ts";
 import type { Shutdown } from "./http/shutdown.ts";
+import type { ComputePool } from "./services/compute-pool.ts";
 import type { Credentials } from "./services/credentials.ts";
 import type { Secrets } from "./services/secrets.ts";
 
@@ -11,6 +12,7 @@ export interface Deps {
   readonly config: Config;
   readonly database: Database;
   readonly secrets: Secrets;
+  readonly compute: ComputePool;
   readonly credentials: Credentials;
   readonly log: Logger;
   readonly metrics: Metrics;

@@ -11,6 +11,7 @@ import { createMetrics } from "./http/metrics.ts";
 import { createLog } from "./http/request-log.ts";
 import { Shutdown } from "./http/shutdown.ts";
 import { stopServer } from "./http/stop-server.ts";
+import { ComputePool } from "./services/compute-pool.ts";
 import { Credentials } from "./services/credentials.ts";
 import { ensureFirstAdmin } from "./services/first-admin.ts";
 import { newId } from "./services/ids.ts";
@@ -40,6 +41,7 @@ export function buildDeps(config: Config): Deps {
     secrets,
     now,
     newId,
+    compute: new ComputePool(),
     credentials: new Credentials(database, secrets, now),
     log: createLog(config.logLevel),
     metrics: createMetrics(),
@@ -68,10 +70,12 @@ export async function startServer({ environment, announce }: StartOptions): Prom
         deps.shutdown.begin();
         stopPurge();
         await stopServer(server, config.drainSeconds * 1000);
+        await deps.compute.close();
         await deps.database.sequelize.close();
       },
     };
   } catch (error) {
+    await deps.compute.close();
     await deps.database.sequelize.close();
     throw error;
   }

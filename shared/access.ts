@@ -41,6 +41,7 @@ export const operationAccess = {
   createBoreFit: compute,
   createAxisDeviation: compute,
   createShimMove: compute,
+  createAlignment: compute,
   replayCalculation: compute,
   listCalculations: readRecords,
   readCalculation: readRecords,

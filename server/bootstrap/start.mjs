@@ -34,6 +34,7 @@ export async function start(life, root) {
   say("Starting the service");
   const url = await serveIn(life, ready);
   claim?.announce(url);
+  say(`\nConsole  ${url}/\nDocs     ${url}/docs\n`);
   say(`Ready after ${((Date.now() - started) / 1000).toFixed(1)} s. Ctrl-C stops everything.`);
 }
 

@@ -21,6 +21,8 @@ interface AxisDeviationAnswer {
   readonly result: AxisDeviationResult;
 }
 
+/** Reference stations whose covariances are carried through in less time than a thread takes to be worth it. */
+const referencesInPlace = 200;
 const levelDefault = 0.95;
 
 /** POST /v1/axis-deviations: a reference axis, every station's deviation from it, and verdicts. */
@@ -53,6 +55,7 @@ export const axisDeviationKind: CalculationKind<AxisDeviationRequest, AxisDeviat
     return { units, level, result };
   },
 
+  isLong: ({ axis }) => (axis.through ?? []).length > referencesInPlace,
   faultsBesideSchema: axisDeviationFaultsBesideSchema,
 };
 

@@ -11,11 +11,13 @@ import { seenSchema, unitsSchema } from "../../shared/schemas/common.ts";
 import { convertersFor, type Units } from "../../shared/units.ts";
 import { fitPreparedBore, prepareBore } from "../compute/bore/fit-bore.ts";
 import { boreAnswerOf } from "./bore-answer.ts";
-import { boresIn, duplicateFaults, memberFaults, readingsFault } from "./bore-faults.ts";
+import { boresIn, duplicateFaults, memberFaults, readingsFault, readingsInCall } from "./bore-faults.ts";
 import { boreInputOf, type CallSettings } from "./bore-input.ts";
 import { CalculationRefusal, type CalculationKind } from "./calculation-kind.ts";
 import { attemptEach, computeEach, faultOf } from "./collect-faults.ts";
 
+/** Readings fitted in less time than a thread takes to be worth it. */
+const readingsInPlace = 5_000;
 const defaultLevel = 0.95;
 
 export interface BoreFitAnswer {
@@ -30,6 +32,7 @@ export const boreFitKind: CalculationKind<BoreFitRequest, BoreFitAnswer> = {
   kind: "bore-fit",
   request: boreFitRequest,
   answer: answerOf,
+  isLong: (request) => readingsInCall(request) > readingsInPlace,
   faultsBesideSchema,
 };
 
@@ -71,9 +74,9 @@ function fitOne(
  * Domain faults of the bores that are well formed, in a body that is not: fitted as if the others were not there.
  * Without sound units only what needs no number can be judged.
  */
-function faultsBesideSchema(body: unknown, schemaFaults: readonly Fault[]): Fault[] {
+function faultsBesideSchema(body: unknown, schemaFaults: readonly Fault[]): readonly Fault[] {
   const bores = boresIn(body);
-  if (bores.length > limits.boresPerCall || readingsFault(body)) return [];
+  if (bores.length === 0 || bores.length > limits.boresPerCall || readingsFault(body)) return [];
   const duplicates = duplicateFaults(bores);
   const sent = body as { readonly units?: unknown; readonly seen?: unknown };
   const units = unitsSchema.safeParse(sent.units).data;

@@ -16,11 +16,13 @@ export interface CalculationKind<Request, Answer extends object> {
    * @throws CalculationRefusal naming every fault of the domain, or a ComputeError
    */
   readonly answer: (request: Request) => Answer;
+  /** Whether computing takes long enough to be done in a thread of its own; never when absent. */
+  readonly isLong?: (request: Request) => boolean;
   /**
    * Domain faults of the parts of a body that failed the schema elsewhere, so that a misspelt member of one bore
    * does not hide that another cannot be fitted. `schemaFaults` are the pointers already known to be wrong.
    */
-  readonly faultsBesideSchema?: (body: unknown, schemaFaults: readonly Fault[]) => Fault[];
+  readonly faultsBesideSchema?: (body: unknown, schemaFaults: readonly Fault[]) => readonly Fault[];
 }
 
 /** A request that is well formed but cannot be computed; it names every place at fault. Stored as a failed record. */

@@ -17,32 +17,35 @@ export function faultOf(error: ComputeError, base: readonly PropertyKey[]): Faul
 
 /** What an attempt at every item gave: the results of those that could be computed, the faults of the others. */
 export interface Attempt<Result> {
-  readonly results: Result[];
-  readonly faults: Fault[];
+  readonly results: readonly Result[];
+  readonly faults: readonly Fault[];
 }
 
 /**
  * Runs `compute` for each item and gathers what each refuses, so that one answer names every faulty item. An item
  * refuses with a ComputeError, or with a CalculationRefusal where it has several faults to name.
- * The only place beside `runCalculation` and the error exit that catches.
  */
 export function attemptEach<Item, Result>(
   items: readonly Item[],
   base: readonly PropertyKey[],
   compute: (item: Item, index: number) => Result,
 ): Attempt<Result> {
-  const faults: Fault[] = [];
-  const results = items.flatMap((item, index) => {
-    try {
-      return [compute(item, index)];
-    } catch (error) {
-      if (error instanceof CalculationRefusal) faults.push(...error.faults);
-      else if (error instanceof ComputeError) faults.push(faultOf(error, [...base, index]));
-      else throw error;
-      return [];
-    }
-  });
-  return { results, faults };
+  const attempts = items.map((item, index) => attempt([...base, index], () => compute(item, index)));
+  return {
+    results: attempts.flatMap(({ results }) => results),
+    faults: attempts.flatMap(({ faults }) => faults),
+  };
+}
+
+/** Runs `compute` for the part of the body at `at`: its one result, or the faults for which it refuses. */
+export function attempt<Result>(at: readonly PropertyKey[], compute: () => Result): Attempt<Result> {
+  try {
+    return { results: [compute()], faults: [] };
+  } catch (error) {
+    if (error instanceof CalculationRefusal) return { results: [], faults: [...error.faults] };
+    if (error instanceof ComputeError) return { results: [], faults: [faultOf(error, at)] };
+    throw error;
+  }
 }
 
 /**
@@ -56,5 +59,5 @@ export function computeEach<Item, Result>(
 ): Result[] {
   const { results, faults } = attemptEach(items, base, compute);
   if (faults.length > 0) throw new CalculationRefusal(faults);
-  return results;
+  return [...results];
 }

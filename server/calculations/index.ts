@@ -1,5 +1,6 @@
 import type { z } from "zod";
 import type { CalculationKind, CalculationKindName } from "./calculation-kind.ts";
+import { alignmentKind } from "./alignment.ts";
 import { axisDeviationKind } from "./axis-deviation.ts";
 import { boreFitKind } from "./bore-fit.ts";
 import { shimMoveKind } from "./shim-move.ts";
@@ -12,4 +13,5 @@ export const calculationKinds: Readonly<Record<CalculationKindName, AnyKind>> = 
   "bore-fit": boreFitKind,
   "axis-deviation": axisDeviationKind,
   "shim-move": shimMoveKind,
+  alignment: alignmentKind,
 };

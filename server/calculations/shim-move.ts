@@ -35,6 +35,7 @@ export const shimMoveKind: CalculationKind<ShimMoveRequest, ShimMoveAnswer> = {
     const result = writePlan(plan, wordingFor(request, convert.offset), convert.offset);
     return { units: request.units, level: problem.level, result, cautions };
   },
+  isLong: ({ shims }) => Boolean(shims?.cutToSize ?? shims?.stock),
   faultsBesideSchema: shimMoveFaultsBesideSchema,
 };
 

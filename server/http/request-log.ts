@@ -28,6 +28,8 @@ export function requestLog(log: Logger): RequestHandler {
     quietReqLogger: true,
     serializers: { req: () => undefined, res: () => undefined, err: () => undefined },
     customProps: (request, response) => {
+      // Asked when a request arrives, too: what is said then is written a second time into the line of its answer.
+      if (!response.headersSent) return {};
       const caller = response.locals.caller as Caller | null | undefined;
       return {
         requestId: requestIdOf(response.locals),

@@ -1,9 +1,20 @@
+import type { ProblemCode } from "../../shared/error-codes.ts";
 import { axisDeviationRequest, axisDeviationResponse } from "../../shared/schemas/axis-deviations.ts";
 import { axisDeviationKind } from "../calculations/axis-deviation.ts";
 import { exampleAnswers, exampleRequests } from "../http/example-calls.ts";
 import { defineOperation } from "../http/operation.ts";
 import { runCalculation } from "../services/run-calculation.ts";
 import { computeErrors } from "./compute-errors.ts";
+
+export const axisDeviationErrors: readonly ProblemCode[] = [
+  ...computeErrors,
+  "reference_count",
+  "stations_coincident",
+  "unknown_reference",
+  "covariance_not_positive",
+  "tolerance_invalid",
+  "weights_incomplete",
+];
 
 const createAxisDeviation = defineOperation({
   operationId: "createAxisDeviation",
@@ -22,15 +33,7 @@ const createAxisDeviation = defineOperation({
     schema: axisDeviationResponse,
     examples: () => exampleAnswers("axis-deviations", axisDeviationKind),
   },
-  errors: [
-    ...computeErrors,
-    "reference_count",
-    "stations_coincident",
-    "unknown_reference",
-    "covariance_not_positive",
-    "tolerance_invalid",
-    "weights_incomplete",
-  ],
+  errors: axisDeviationErrors,
   handle: (call) => runCalculation(axisDeviationKind, call),
 });
 

@@ -1,9 +1,22 @@
+import type { ProblemCode } from "../../shared/error-codes.ts";
 import { boreFitRequest, boreFitResponse } from "../../shared/schemas/bore-fits.ts";
 import { boreFitKind } from "../calculations/bore-fit.ts";
 import { exampleAnswers, exampleRequests } from "../http/example-calls.ts";
 import { defineOperation } from "../http/operation.ts";
 import { runCalculation } from "../services/run-calculation.ts";
 import { computeErrors } from "./compute-errors.ts";
+
+export const boreFitErrors: readonly ProblemCode[] = [
+  ...computeErrors,
+  "too_few_points",
+  "points_collinear",
+  "points_coincident",
+  "arc_too_flat",
+  "angles_insufficient",
+  "uncertainty_incomplete",
+  "radius_not_positive",
+  "combination_invalid",
+];
 
 const createBoreFit = defineOperation({
   operationId: "createBoreFit",
@@ -22,16 +35,7 @@ const createBoreFit = defineOperation({
     schema: boreFitResponse,
     examples: () => exampleAnswers("bore-fits", boreFitKind),
   },
-  errors: [
-    ...computeErrors,
-    "too_few_points",
-    "points_collinear",
-    "points_coincident",
-    "arc_too_flat",
-    "uncertainty_incomplete",
-    "radius_not_positive",
-    "not_converged",
-  ],
+  errors: boreFitErrors,
   handle: (call) => runCalculation(boreFitKind, call),
 });
 

@@ -78,7 +78,7 @@ const replayCalculationOperation = defineOperation({
   errors: [],
   handle: async (call) => {
     const row = await findCalculation(call.deps, callerOf(call).organisation.id, call.params.id ?? "");
-    return reply(200, await replayCalculation(row));
+    return reply(200, await replayCalculation(call.deps, row));
   },
 });
 

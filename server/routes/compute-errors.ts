@@ -6,6 +6,7 @@ export const computeErrors: readonly ProblemCode[] = [
   "duplicate_id",
   "number_not_finite",
   "rank_deficient",
+  "not_converged",
   "result_overflow",
   "not_available",
 ];

@@ -1,4 +1,5 @@
 import type { Operation } from "../http/operation.ts";
+import { alignmentOperations } from "./alignments.ts";
 import { axisDeviationOperations } from "./axis-deviations.ts";
 import { boreFitOperations } from "./bore-fits.ts";
 import { calculationOperations } from "./calculations.ts";
@@ -16,6 +17,7 @@ export const operations: readonly Operation[] = [
   ...boreFitOperations,
   ...axisDeviationOperations,
   ...shimMoveOperations,
+  ...alignmentOperations,
   ...calculationOperations,
   ...keyOperations,
   ...memberOperations,

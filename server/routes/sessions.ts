@@ -59,7 +59,6 @@ const refreshSessionOperation = defineOperation({
     "Takes the cookie of the sign-in and sets a new one. Two tabs that renew at the same moment both stay signed in.",
   response: { status: 200, description: "A fresh access token.", schema: sessionSchema },
   errors: ["session_expired", "origin_refused"],
-  limit: "sign-in",
   handle: async (call) => {
     const { config } = call.deps;
     const refresh = readRefreshCookie(config, call.request);

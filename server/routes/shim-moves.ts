@@ -1,9 +1,20 @@
+import type { ProblemCode } from "../../shared/error-codes.ts";
 import { shimMoveRequest, shimMoveResponse } from "../../shared/schemas/shim-moves.ts";
 import { shimMoveKind } from "../calculations/shim-move.ts";
 import { exampleAnswers, exampleRequests } from "../http/example-calls.ts";
 import { defineOperation } from "../http/operation.ts";
 import { runCalculation } from "../services/run-calculation.ts";
 import { computeErrors } from "./compute-errors.ts";
+
+export const shimMoveErrors: readonly ProblemCode[] = [
+  ...computeErrors,
+  "unknown_reference",
+  "combination_invalid",
+  "covariance_not_positive",
+  "tolerance_invalid",
+  "supports_insufficient",
+  "too_many_choices",
+];
 
 const createShimMove = defineOperation({
   operationId: "createShimMove",
@@ -22,16 +33,7 @@ const createShimMove = defineOperation({
     schema: shimMoveResponse,
     examples: () => exampleAnswers("shim-moves", shimMoveKind),
   },
-  errors: [
-    ...computeErrors,
-    "unknown_reference",
-    "combination_invalid",
-    "covariance_not_positive",
-    "tolerance_invalid",
-    "supports_insufficient",
-    "infeasible",
-    "too_many_choices",
-  ],
+  errors: shimMoveErrors,
   handle: (call) => runCalculation(shimMoveKind, call),
 });
 

@@ -11,18 +11,15 @@ export type ComputeOutcome =
   | { readonly status: "failed"; readonly faults: readonly Fault[] };
 
 /**
- * Runs the engine on a valid request: the one place where it is awaited, so that a pool of workers can take it. The
- * answer is what the wire will carry: a number that JSON cannot hold is a refusal, never a silent null.
+ * Runs the engine on a valid request in this thread. The answer is what the wire will carry: a number that JSON cannot
+ * hold is a refusal, never a silent null.
  */
-// Asynchronous in its shape alone until the pool comes.
-export function computeOutcome<Request>(
-  kind: Engine<Request>,
-  request: Request,
-): Promise<ComputeOutcome> {
+export function computeOutcome<Request>(kind: Engine<Request>, request: Request): Promise<ComputeOutcome> {
   return Promise.resolve().then(() => outcomeOf(kind, request));
 }
 
-function outcomeOf<Request>(kind: Engine<Request>, request: Request): ComputeOutcome {
+/** The outcome of a request, here and now. */
+export function outcomeOf<Request>(kind: Engine<Request>, request: Request): ComputeOutcome {
   try {
     const answer = kind.answer(request);
     const overflow = pathOfNonFinite(answer);

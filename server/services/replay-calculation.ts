@@ -1,21 +1,24 @@
+import type { CalculationKind } from "../calculations/calculation-kind.ts";
 import { calculationKinds } from "../calculations/index.ts";
 import { engineVersion } from "../compute/version.ts";
 import type { Replay } from "../../shared/schemas/calculations.ts";
 import { pointerOf } from "../../shared/pointer.ts";
+import type { Deps } from "../deps.ts";
 import type { Calculation } from "../models/calculation.ts";
-import { computeOutcome } from "./compute-outcome.ts";
 
 const DIFFERENCES_LISTED = 200;
 /** What identifies one call and so differs from every other. */
 const ENVELOPE = new Set(["id", "kind", "engineVersion", "inputHash", "createdAt"]);
 
 /** Computes a stored request anew, stores nothing, and tells every place where the answer is not what it was. */
-export async function replayCalculation(record: Calculation): Promise<Replay> {
+export async function replayCalculation({ compute }: Deps, record: Calculation): Promise<Replay> {
   const kind = calculationKinds[record.kind];
   const request = kind.request.safeParse(JSON.parse(record.requestText));
   const stored = JSON.parse(record.answerText) as Record<string, unknown>;
   const then = record.status === "succeeded" ? withoutEnvelope(stored) : { errors: stored.errors };
-  const outcome = request.success ? await computeOutcome(kind, request.data as never) : null;
+  const outcome = request.success
+    ? await compute.run(kind as CalculationKind<never, object>, request.data as never)
+    : null;
   const now =
     outcome === null
       ? { request: "no longer passes the schema" }

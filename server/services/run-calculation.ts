@@ -4,7 +4,7 @@ import type { CalculationKind } from "../calculations/calculation-kind.ts";
 import { engineVersion } from "../compute/version.ts";
 import { problemBody, problemOfFaults, type HttpProblem } from "../http/http-problem.ts";
 import { callerOf, reply, type Call, type Reply } from "../http/operation.ts";
-import { computeOutcome, type ComputeOutcome } from "./compute-outcome.ts";
+import type { ComputeOutcome } from "./compute-outcome.ts";
 import { timeOfId } from "./ids.ts";
 import { writeRecords } from "./write-records.ts";
 
@@ -31,7 +31,7 @@ export async function runCalculation<Request extends Noted>(
   const { deps, claim, requestId } = call;
   const caller = callerOf(call);
   const started = performance.now();
-  const outcome = await computeOutcome(kind, call.body);
+  const outcome = await deps.compute.run(kind, call.body);
   const durationMs = performance.now() - started;
 
   const id = deps.newId();

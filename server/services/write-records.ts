@@ -30,13 +30,35 @@ export interface RecordEntry {
 }
 
 const CALCULATION_COLUMNS = [
-  "createdAt", "id", "organisationId", "kind", "status", "engineVersion", "durationMs", "requestText", "requestCanonical",
-  "inputHash", "answerText", "resultHash", "memberId", "keyId", "requestId", "note", "jobId",
-] as const satisfies readonly (keyof RecordEntry)[]; // prettier-ignore
+  "createdAt",
+  "id",
+  "organisationId",
+  "kind",
+  "status",
+  "engineVersion",
+  "durationMs",
+  "requestText",
+  "requestCanonical",
+  "inputHash",
+  "answerText",
+  "resultHash",
+  "memberId",
+  "keyId",
+  "requestId",
+  "note",
+  "jobId",
+] as const satisfies readonly (keyof RecordEntry)[];
 
 const USAGE_COLUMNS = [
-  "createdAt", "id", "organisationId", "memberId", "keyId", "endpoint", "status", "durationMs",
-] as const satisfies readonly (keyof RecordEntry)[]; // prettier-ignore
+  "createdAt",
+  "id",
+  "organisationId",
+  "memberId",
+  "keyId",
+  "endpoint",
+  "status",
+  "durationMs",
+] as const satisfies readonly (keyof RecordEntry)[];
 
 /**
  * Stores calculations with their usage events and settles their idempotency claims: all of it or nothing, in one short

@@ -51,6 +51,7 @@ export async function openTestApp(
     },
     call: () => request(app),
     close: async () => {
+      await deps.compute.close();
       await deps.database.sequelize.close();
       await database.drop();
     },

@@ -34,4 +34,5 @@ export const computations: Record<CalculationKind, { name: string; resource: str
   "bore-fit": { name: "Bore fit", resource: "bore-fits", path: "/v1/bore-fits" },
   "axis-deviation": { name: "Axis and deviations", resource: "axis-deviations", path: "/v1/axis-deviations" },
   "shim-move": { name: "Shim moves", resource: "shim-moves", path: "/v1/shim-moves" },
+  alignment: { name: "Alignment", resource: "alignments", path: "/v1/alignments" },
 };

@@ -1,0 +1,8 @@
+// The thread of a long calculation. Plain JavaScript, so that it can load the TypeScript that it runs.
+import { register } from "tsx/esm/api";
+
+register();
+const { outcomeOfKind } = await import("./compute-outcome-of-kind.ts");
+
+/** @param {{ kind: import("../calculations/calculation-kind.ts").CalculationKindName, request: unknown }} task */
+export const compute = ({ kind, request }) => outcomeOfKind(kind, request);
