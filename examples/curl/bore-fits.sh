@@ -2,7 +2,7 @@
 # Bore centres from wall readings: sh examples/curl/bore-fits.sh [request.json]
 . "$(dirname "$0")/client.sh"
 
-post_calculation /v1/bore-fits "${1:-$here/../requests/bore-fits/REQUEST.json}"
+post_calculation /v1/bore-fits "${1:-$here/../requests/bore-fits/points-with-uncertainty.json}"
 python3 -c '
 import json, sys
 answer = json.load(sys.stdin)

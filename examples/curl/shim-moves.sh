@@ -2,7 +2,7 @@
 # Shim moves from deviations: sh examples/curl/shim-moves.sh [request.json]
 . "$(dirname "$0")/client.sh"
 
-post_calculation /v1/shim-moves "${1:-$here/../requests/shim-moves/REQUEST.json}"
+post_calculation /v1/shim-moves "${1:-$here/../requests/shim-moves/casing-and-bearing.json}"
 python3 -c '
 import json, sys
 answer = json.load(sys.stdin)

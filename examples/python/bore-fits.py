@@ -2,7 +2,7 @@
 
 from client import post_calculation, read_request
 
-answer = post_calculation("/v1/bore-fits", read_request("bore-fits/REQUEST"))
+answer = post_calculation("/v1/bore-fits", read_request("bore-fits/points-with-uncertainty"))
 offset, bore_unit = answer["units"]["offset"], answer["units"]["bore"]
 print(f"Record {answer['id']}")
 for bore in answer["result"]["bores"]:

@@ -2,7 +2,7 @@
 
 from client import post_calculation, read_request
 
-answer = post_calculation("/v1/shim-moves", read_request("shim-moves/REQUEST"))
+answer = post_calculation("/v1/shim-moves", read_request("shim-moves/casing-and-bearing"))
 unit = answer["units"]["offset"]
 print(f"Record {answer['id']}")
 for caution in answer["cautions"]:

@@ -16,7 +16,7 @@ interface BoreFits {
 
 const { id, units, result } = await postCalculation<BoreFits>(
   "/v1/bore-fits",
-  readRequest("bore-fits/REQUEST"),
+  readRequest("bore-fits/points-with-uncertainty"),
 );
 console.log(`Record ${id}`);
 for (const { id: bore, centre, diameter, warnings } of result.bores) {

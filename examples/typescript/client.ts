@@ -27,7 +27,8 @@ export async function postCalculation<Answer>(path: string, request: unknown): P
     "Idempotency-Key": randomUUID(),
   };
   const response = await sendPatiently(path, { method: "POST", headers, body: JSON.stringify(request) });
-  if (response.status !== 201) return fail(describeProblem(response.status, (await response.json()) as Problem));
+  if (response.status !== 201)
+    return fail(describeProblem(response.status, (await response.json()) as Problem));
   return (await response.json()) as Answer;
 }
 
@@ -38,7 +39,9 @@ async function sendPatiently(path: string, init: RequestInit): Promise<Response>
     const answered = outcome instanceof Response && outcome.status !== 503;
     if (answered) return outcome;
     if (attempt === attempts)
-      return outcome instanceof Response ? outcome : fail(`${BOREWRIGHT_URL} does not answer: ${outcome.message}`);
+      return outcome instanceof Response
+        ? outcome
+        : fail(`${BOREWRIGHT_URL} does not answer: ${outcome.message}`);
     await wait(1000 * attempt);
   }
 }

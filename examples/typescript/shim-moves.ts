@@ -22,7 +22,7 @@ interface ShimMoves {
 
 const { id, units, cautions, result } = await postCalculation<ShimMoves>(
   "/v1/shim-moves",
-  readRequest("shim-moves/REQUEST"),
+  readRequest("shim-moves/casing-and-bearing"),
 );
 const length = (value: number) => `${value.toFixed(4)} ${units.offset}`;
 console.log(`Record ${id}`);

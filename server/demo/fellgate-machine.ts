@@ -95,7 +95,13 @@ function part(id: string, z: number, nominalDiameter: number, growth: Growth, re
 }
 
 /** A bearing: its target is the line less its growth; its journal runs off it by its own oil film. */
-function bearing(id: string, z: number, nominalDiameter: number, growth: Growth, rest: Rest): FellgateStation {
+function bearing(
+  id: string,
+  z: number,
+  nominalDiameter: number,
+  growth: Growth,
+  rest: Rest,
+): FellgateStation {
   return { id, z, nominalDiameter, ...targetAt(0, growth), ...rest };
 }
 
@@ -106,74 +112,184 @@ const targetAt = (rotorV: number, growth: Growth) => ({
 
 /** Unit 2 of an invented works, toward the generator: the row of bores of a single-shaft gas turbine. */
 export const fellgateStations: readonly FellgateStation[] = [
-  bearing("brg-1", 0, 360, { v: 0.14, u: 0.006 }, {
-    tolerance: bearingTolerance,
-    wall: bearingWall,
-    foundOff: { h: 0.01, v: 0.015 },
-  }),
-  part("cas-1", 620, 1480, { v: 0.09, u: 0.008 }, {
-    tolerance: { radial: 0.12 },
-    wall: casingWall,
-    foundOff: { h: 0.07, v: -0.13 },
-  }),
-  part("cas-2", 1240, 1440, { v: 0.1, u: 0.008 }, {
-    tolerance: { radial: 0.12 },
-    wall: { ...casingWall, gapsDeg: [[20, 60], [300, 340]] },
-    foundOff: { h: 0.11, v: -0.17 },
-  }),
-  part("cas-3", 1860, 1390, { v: 0.12, u: 0.008 }, {
-    tolerance: { radial: 0.12 },
-    wall: { ...casingWall, gapsDeg: [[100, 130], [230, 260]] },
-    foundOff: { h: 0.1, v: -0.21 },
-  }),
-  part("cas-4", 2480, 1350, { v: 0.14, u: 0.01 }, {
-    tolerance: { radial: 0.12 },
-    wall: { ...casingWall, gapsDeg: [[200, 290]], slip: { index: 17, by: 0.6 } },
-    foundOff: { h: 0.15, v: -0.22 },
-  }),
-  part("cas-5", 3100, 1320, { v: 0.17, u: 0.01 }, {
-    tolerance: { radial: 0.12 },
-    wall: casingWall,
-    foundOff: { h: 0.15, v: -0.27 },
-  }),
-  part("dif-1", 3720, 1300, { v: 0.19, u: 0.012 }, {
-    tolerance: { radial: 0.2 },
-    wall: { ...casingWall, gapsDeg: [[60, 120]], outOfRound: 0.012 },
-    foundOff: { h: 0.19, v: -0.29 },
-  }),
-  part("noz-1", 4420, 1780, { v: 0.22, u: 0.012 }, {
-    tolerance: { radial: 0.15 },
-    wall: { ...ringWall, instrument: "turned_gauge" },
-    foundOff: { h: 0.06, v: -0.24 },
-  }),
-  part("shr-1", 4650, 1820, { v: 0.22, u: 0.012 }, {
-    tolerance: { radial: 0.12 },
-    wall: { ...ringWall, gapsDeg: [[0, 30], [330, 360]] },
-    foundOff: { h: -0.05, v: -0.19 },
-  }),
-  part("noz-2", 4920, 1920, { v: 0.21, u: 0.012 }, {
-    tolerance: { radial: 0.15 },
-    wall: { ...ringWall, instrument: "turned_gauge", gapsDeg: [[120, 160]] },
-    foundOff: { h: 0.09, v: -0.16 },
-  }),
-  part("shr-2", 5150, 1960, { v: 0.21, u: 0.012 }, {
-    tolerance: { radial: 0.12 },
-    wall: ringWall,
-    foundOff: { h: -0.07, v: -0.13 },
-  }),
-  part("shr-3", 5680, 2110, { v: 0.2, u: 0.008 }, {
-    tolerance: { radial: 0.12 },
-    wall: { ...ringWall, seen: "upstream" },
-    foundOff: { h: 0, v: 0.02 },
-  }),
-  part("exh-1", 6240, 980, { v: 0.16, u: 0.015 }, {
-    tolerance: { h: 0.3, v: 0.3 },
-    wall: { ...casingWall, seen: "upstream", gapsDeg: [[30, 70], [150, 190], [270, 310]] },
-    foundOff: { h: -0.12, v: -0.41 },
-  }),
-  bearing("brg-2", 6900, 400, { v: 0.19, u: 0.006 }, {
-    tolerance: bearingTolerance,
-    wall: { ...bearingWall, seen: "upstream" },
-    foundOff: { h: 0.05, v: -0.11 },
-  }),
+  bearing(
+    "brg-1",
+    0,
+    360,
+    { v: 0.14, u: 0.006 },
+    {
+      tolerance: bearingTolerance,
+      wall: bearingWall,
+      foundOff: { h: 0.01, v: 0.015 },
+    },
+  ),
+  part(
+    "cas-1",
+    620,
+    1480,
+    { v: 0.09, u: 0.008 },
+    {
+      tolerance: { radial: 0.12 },
+      wall: casingWall,
+      foundOff: { h: 0.07, v: -0.13 },
+    },
+  ),
+  part(
+    "cas-2",
+    1240,
+    1440,
+    { v: 0.1, u: 0.008 },
+    {
+      tolerance: { radial: 0.12 },
+      wall: {
+        ...casingWall,
+        gapsDeg: [
+          [20, 60],
+          [300, 340],
+        ],
+      },
+      foundOff: { h: 0.11, v: -0.17 },
+    },
+  ),
+  part(
+    "cas-3",
+    1860,
+    1390,
+    { v: 0.12, u: 0.008 },
+    {
+      tolerance: { radial: 0.12 },
+      wall: {
+        ...casingWall,
+        gapsDeg: [
+          [100, 130],
+          [230, 260],
+        ],
+      },
+      foundOff: { h: 0.1, v: -0.21 },
+    },
+  ),
+  part(
+    "cas-4",
+    2480,
+    1350,
+    { v: 0.14, u: 0.01 },
+    {
+      tolerance: { radial: 0.12 },
+      wall: { ...casingWall, gapsDeg: [[200, 290]], slip: { index: 17, by: 0.6 } },
+      foundOff: { h: 0.15, v: -0.22 },
+    },
+  ),
+  part(
+    "cas-5",
+    3100,
+    1320,
+    { v: 0.17, u: 0.01 },
+    {
+      tolerance: { radial: 0.12 },
+      wall: casingWall,
+      foundOff: { h: 0.15, v: -0.27 },
+    },
+  ),
+  part(
+    "dif-1",
+    3720,
+    1300,
+    { v: 0.19, u: 0.012 },
+    {
+      tolerance: { radial: 0.2 },
+      wall: { ...casingWall, gapsDeg: [[60, 120]], outOfRound: 0.012 },
+      foundOff: { h: 0.19, v: -0.29 },
+    },
+  ),
+  part(
+    "noz-1",
+    4420,
+    1780,
+    { v: 0.22, u: 0.012 },
+    {
+      tolerance: { radial: 0.15 },
+      wall: { ...ringWall, instrument: "turned_gauge" },
+      foundOff: { h: 0.06, v: -0.24 },
+    },
+  ),
+  part(
+    "shr-1",
+    4650,
+    1820,
+    { v: 0.22, u: 0.012 },
+    {
+      tolerance: { radial: 0.12 },
+      wall: {
+        ...ringWall,
+        gapsDeg: [
+          [0, 30],
+          [330, 360],
+        ],
+      },
+      foundOff: { h: -0.05, v: -0.19 },
+    },
+  ),
+  part(
+    "noz-2",
+    4920,
+    1920,
+    { v: 0.21, u: 0.012 },
+    {
+      tolerance: { radial: 0.15 },
+      wall: { ...ringWall, instrument: "turned_gauge", gapsDeg: [[120, 160]] },
+      foundOff: { h: 0.09, v: -0.16 },
+    },
+  ),
+  part(
+    "shr-2",
+    5150,
+    1960,
+    { v: 0.21, u: 0.012 },
+    {
+      tolerance: { radial: 0.12 },
+      wall: ringWall,
+      foundOff: { h: -0.07, v: -0.13 },
+    },
+  ),
+  part(
+    "shr-3",
+    5680,
+    2110,
+    { v: 0.2, u: 0.008 },
+    {
+      tolerance: { radial: 0.12 },
+      wall: { ...ringWall, seen: "upstream" },
+      foundOff: { h: 0, v: 0.02 },
+    },
+  ),
+  part(
+    "exh-1",
+    6240,
+    980,
+    { v: 0.16, u: 0.015 },
+    {
+      tolerance: { h: 0.3, v: 0.3 },
+      wall: {
+        ...casingWall,
+        seen: "upstream",
+        gapsDeg: [
+          [30, 70],
+          [150, 190],
+          [270, 310],
+        ],
+      },
+      foundOff: { h: -0.12, v: -0.41 },
+    },
+  ),
+  bearing(
+    "brg-2",
+    6900,
+    400,
+    { v: 0.19, u: 0.006 },
+    {
+      tolerance: bearingTolerance,
+      wall: { ...bearingWall, seen: "upstream" },
+      foundOff: { h: 0.05, v: -0.11 },
+    },
+  ),
 ];

@@ -1,7 +1,4 @@
-import type {
-  AxisDeviationRequest,
-  AxisDeviationResult,
-} from "../../shared/schemas/axis-deviations.ts";
+import type { AxisDeviationRequest, AxisDeviationResult } from "../../shared/schemas/axis-deviations.ts";
 import type { BoreFitRequest, BoreFitResult } from "../../shared/schemas/bore-fits.ts";
 import type { ShimMoveRequest, ShimMoveResult } from "../../shared/schemas/shim-moves.ts";
 import {

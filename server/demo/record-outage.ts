@@ -44,7 +44,7 @@ export async function recordOutage(deps: Deps, caller: Caller): Promise<void> {
   const before = await run(axisDeviations, deviationRequest("Unit 2, as found", found.result.bores));
   const moves = await run(shimMoves, moveRequest("Unit 2, moves to the axis", before.result));
 
-  const asLeft = { centres: leftCentres(before.result, moves.result), seed: 2, withSlips: false };
+  const asLeft = { centres: leftCentres(before.result, moves.result), seed: 4, withSlips: false };
   const left = await run(boreFits, surveyRequest("Unit 2, as left", asLeft));
   await run(axisDeviations, deviationRequest("Unit 2, as left", left.result.bores));
 }
@@ -71,5 +71,6 @@ function runnerOf(deps: Deps, caller: Caller) {
 /** The demo shows a failed record too; one that did not fail would be a fault of ours. */
 async function expectRefusal(run: Promise<unknown>): Promise<void> {
   const outcome = await run.catch((error: unknown) => error);
-  if (!(outcome instanceof HttpProblem)) throw new Error("The survey cut short was not refused.", { cause: outcome });
+  if (!(outcome instanceof HttpProblem))
+    throw new Error("The survey cut short was not refused.", { cause: outcome });
 }

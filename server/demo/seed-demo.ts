@@ -1,4 +1,4 @@
-import { writeFileSync } from "node:fs";
+import { appendFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { scopes, type Role } from "../../shared/access.ts";
 import type { Deps } from "../deps.ts";
@@ -18,44 +18,50 @@ const PEOPLE: readonly { name: string; email: string; role: Role }[] = [
 ];
 
 /**
- * Makes the demo once: an organisation with a member of each role, a key, and the records of an outage. Passwords are
- * made up anew for each installation, told at this start and kept in DATA_DIR for its owner alone.
+ * Makes the demo: an organisation with a member of each role, a key, and the records of an outage. What is there already
+ * stays, so that a start that was cut short is completed by the next. Passwords are made up anew for each installation,
+ * told at the first start and kept in DATA_DIR for its owner alone.
  */
 export async function seedDemo(deps: Deps, url: string, announce: (line: string) => void): Promise<void> {
-  const { organisations, members } = deps.database.models;
-  const existing = await organisations.findOne({ where: { name: ORGANISATION } });
-  if (existing) {
-    const engineer = await members.findOne({
-      where: { organisationId: existing.id, role: "engineer" },
-      order: ["createdAt"],
-    });
-    if (engineer) await recordOutage(deps, memberCaller(engineer, existing));
-    announce(`The demo's sign-ins are in ${signInsFile(deps)}.`);
-    return;
-  }
+  const { organisations, members, apiKeys } = deps.database.models;
+  const signIns = (await organisations.findOne({ where: { name: ORGANISATION } }))
+    ? []
+    : await makePeople(deps);
+  const organisation = await organisations.findOne({ where: { name: ORGANISATION }, rejectOnEmpty: true });
+  const memberOf = (role: Role) =>
+    members.findOne({ where: { organisationId: organisation.id, role }, order: ["createdAt", "id"] });
+
+  const admin = await memberOf("admin");
+  const hasKey = (await apiKeys.count({ where: { organisationId: organisation.id } })) > 0;
+  const call = hasKey || !admin ? [] : await makeKey(deps, memberCaller(admin, organisation), url);
+  const engineer = await memberOf("engineer");
+  if (engineer) await recordOutage(deps, memberCaller(engineer, organisation));
+
+  if (signIns.length === 0) announce(`The demo's sign-ins are in ${signInsFile(deps)}.`);
+  for (const line of [...signIns, ...call]) announce(line);
+}
+
+/** The sign-ins are on disk before anybody can use them: a password that was told to nobody would be lost. */
+async function makePeople(deps: Deps): Promise<string[]> {
   const people = PEOPLE.map((person) => ({ ...person, password: randomText(16) }));
-  const made = await createMembers(deps, { name: ORGANISATION }, people);
-  const organisation = { id: made.organisationId, name: ORGANISATION };
-  const [admin, engineer] = made.members;
-  if (!admin || !engineer) throw new Error("The demo has an administrator and an engineer.");
-  const { secret } = await issueKey(
-    deps,
-    {
-      name: "Demo",
-      scopes: scopes.filter((scope) => scope.startsWith("calculations:") || scope === "usage:read"),
-    },
-    { caller: memberCaller(admin, organisation), claim: null, requestId: "demo" },
-  );
-  await recordOutage(deps, memberCaller(engineer, organisation));
   const lines = [
     "Demo sign-ins:",
     ...people.map(({ role, email, password }) => `  ${role.padEnd(9)}  ${email}  ${password}`),
-    "",
-    "One bore, fitted (the key is the demo's):",
-    ...curl(url, secret).map((line) => `  ${line}`),
   ];
   writeFileSync(signInsFile(deps), `${lines.join("\n")}\n`, { mode: 0o600 });
-  for (const line of lines) announce(line);
+  await createMembers(deps, { name: ORGANISATION }, people);
+  return lines;
+}
+
+async function makeKey(deps: Deps, caller: Caller, url: string): Promise<string[]> {
+  const order = {
+    name: "Demo",
+    scopes: scopes.filter((scope) => scope.startsWith("calculations:") || scope === "usage:read"),
+  };
+  const { secret } = await issueKey(deps, order, { caller, claim: null, requestId: "demo" });
+  const lines = ["", "One bore, fitted (the key is the demo's):", `  ${curl(url, secret)}`];
+  appendFileSync(signInsFile(deps), `${lines.join("\n")}\n`, { mode: 0o600 });
+  return lines;
 }
 
 function signInsFile({ config }: Deps): string {
@@ -74,7 +80,7 @@ function memberCaller(
   };
 }
 
-function curl(url: string, secret: string): string[] {
+function curl(url: string, secret: string): string {
   const body = JSON.stringify({
     units: { axial: "mm", bore: "mm", offset: "mm" },
     seen: "downstream",
@@ -91,7 +97,5 @@ function curl(url: string, secret: string): string[] {
       },
     ],
   });
-  return [
-    `curl -s ${url}/v1/bore-fits -H 'Authorization: Bearer ${secret}' -H 'Content-Type: application/json' -d '${body}'`,
-  ];
+  return `curl -s ${url}/v1/bore-fits -H 'Authorization: Bearer ${secret}' -H 'Content-Type: application/json' -d '${body}'`;
 }
