@@ -5,6 +5,7 @@ import type { Metrics } from "./http/metrics.ts";
 import type { Shutdown } from "./http/shutdown.ts";
 import type { ComputePool } from "./services/compute-pool.ts";
 import type { Credentials } from "./services/credentials.ts";
+import type { EngineSelfTest } from "./services/self-test.ts";
 import type { Secrets } from "./services/secrets.ts";
 
 /** What the service is built from. Time and ids come in, so that a test can hold them still. */
@@ -13,6 +14,7 @@ export interface Deps {
   readonly database: Database;
   readonly secrets: Secrets;
   readonly compute: ComputePool;
+  readonly selfTest: EngineSelfTest;
   readonly credentials: Credentials;
   readonly log: Logger;
   readonly metrics: Metrics;

@@ -16,6 +16,7 @@ import { Credentials } from "./services/credentials.ts";
 import { ensureFirstAdmin } from "./services/first-admin.ts";
 import { newId } from "./services/ids.ts";
 import { startPurge } from "./services/purge-expired.ts";
+import { EngineSelfTest } from "./services/self-test.ts";
 import { deriveSecrets } from "./services/secrets.ts";
 
 export interface StartOptions {
@@ -42,6 +43,7 @@ export function buildDeps(config: Config): Deps {
     now,
     newId,
     compute: new ComputePool(),
+    selfTest: new EngineSelfTest(now),
     credentials: new Credentials(database, secrets, now),
     log: createLog(config.logLevel),
     metrics: createMetrics(),

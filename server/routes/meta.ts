@@ -1,15 +1,19 @@
+import { readFileSync } from "node:fs";
 import { z } from "zod";
 import { cautions } from "../../shared/cautions.ts";
 import { problemCodes, problemKinds, type ProblemCode } from "../../shared/error-codes.ts";
 import { limits } from "../../shared/limits.ts";
 import { metaSchema } from "../../shared/schemas/meta.ts";
 import { problemKindSchema, problemListSchema } from "../../shared/schemas/problem.ts";
-import { unitChoices } from "../../shared/units.ts";
+import { furtherUnitChoices, unitChoices } from "../../shared/units.ts";
 import { engineVersion } from "../compute/version.ts";
 import { apiVersion } from "../http/api-version.ts";
 import { HttpProblem } from "../http/http-problem.ts";
 import { defineOperation, reply } from "../http/operation.ts";
 import { problemPage } from "../http/problem-page.ts";
+
+/** Shipped with the engine; read once. */
+const engineChangelog = readFileSync(new URL("../compute/CHANGELOG.md", import.meta.url), "utf8");
 
 const readMeta = defineOperation({
   operationId: "readMeta",
@@ -20,8 +24,20 @@ const readMeta = defineOperation({
   description: "Versions, limits, units and the cautions that every reader of an answer must see.",
   response: { status: 200, description: "What it is.", schema: metaSchema },
   errors: [],
-  handle: () =>
-    reply(200, { service: "Borewright", apiVersion, engineVersion, limits, units: unitChoices, cautions }),
+  handle: ({ deps }) => {
+    const selfTest = deps.selfTest.last;
+    const units = { ...unitChoices, ...furtherUnitChoices };
+    return reply(200, {
+      service: "Borewright",
+      apiVersion,
+      engineVersion,
+      engineChangelog,
+      selfTest,
+      limits,
+      units,
+      cautions,
+    });
+  },
 });
 
 const listProblems = defineOperation({

@@ -1,0 +1,99 @@
+import { spawnSync } from "node:child_process";
+import { fileURLToPath } from "node:url";
+import { levenbergMarquardt } from "ml-levenberg-marquardt";
+import { Matrix, QrDecomposition } from "ml-matrix";
+import { fitBore } from "../../server/compute/bore/fit-bore.ts";
+import type { PointsInput } from "../../server/compute/bore/bore-input.ts";
+import { microsecondsOf } from "./time-it.ts";
+import { ring, type WallPoint } from "./ring.ts";
+
+interface ByScipy {
+  readonly microseconds: number;
+  readonly centre: readonly [number, number];
+}
+
+/** Least squares circles: the engine, and general-purpose libraries on the same points in the same run. */
+export function timeCircleFits(): void {
+  const sizes = [24, 360, 1_000, 10_000];
+  const rings = sizes.map((size) => ring(size));
+  const scipy = byScipy(rings);
+  console.log("\nLeast squares circle with covariance, residuals and arc coverage");
+  console.log("points   engine µs   ÷ scipy LM   ÷ ml-matrix QR   ÷ ml-levenberg-marquardt   same centre to");
+  for (const [k, points] of rings.entries()) {
+    const input = inputOf(points);
+    const { centre } = fitBore(input);
+    const engine = microsecondsOf(() => fitBore(input));
+    const other = scipy?.[k];
+    const ratio = (microseconds: number | undefined) =>
+      microseconds === undefined ? "not installed" : (microseconds / engine).toFixed(1);
+    const apart = other ? Math.hypot(centre.hMm - other.centre[0], centre.vMm - other.centre[1]) : null;
+    console.log(
+      [
+        String(points.length).padStart(6),
+        engine.toFixed(2).padStart(11),
+        ratio(other?.microseconds).padStart(12),
+        ratio(microsecondsOf(() => circleByQr(points))).padStart(16),
+        ratio(
+          points.length > 1_000 ? undefined : microsecondsOf(() => circleByLevenbergMarquardt(points)),
+        ).padStart(26),
+        (apart === null ? "-" : `${apart.toExponential(1)} mm`).padStart(16),
+      ].join(" "),
+    );
+  }
+}
+
+export function inputOf(points: readonly WallPoint[]): PointsInput {
+  return {
+    form: "points",
+    points: points.map(({ h, v }) => ({ hMm: h, vMm: v, zMm: null, uMm: null })),
+    readingUncertaintyMm: 0.004,
+    nominalDiameterMm: null,
+    taper: null,
+    outliers: null,
+    seen: "downstream",
+    level: 0.95,
+  };
+}
+
+function byScipy(rings: readonly (readonly WallPoint[])[]): readonly ByScipy[] | null {
+  const script = fileURLToPath(new URL("circle_by_scipy.py", import.meta.url));
+  const input = JSON.stringify(rings.map((points) => points.map(({ h, v }) => [h, v])));
+  // Debian's own interpreter is the one that Debian's python3-scipy belongs to.
+  const { status, stdout } = spawnSync("/usr/bin/python3", [script], { input, encoding: "utf8" });
+  return status === 0 ? (JSON.parse(stdout) as ByScipy[]) : null;
+}
+
+/** Gauss–Newton with the QR decomposition of ml-matrix, to the same tolerance as the engine. */
+function circleByQr(points: readonly WallPoint[]): readonly number[] {
+  const mean = (of: (point: WallPoint) => number) =>
+    points.reduce((sum, point) => sum + of(point), 0) / points.length;
+  let unknowns = [mean(({ h }) => h), mean(({ v }) => v), 200];
+  for (let iteration = 0; iteration < 20; iteration++) {
+    const [h0 = 0, v0 = 0, radius = 0] = unknowns;
+    const jacobian = new Matrix(points.length, 3);
+    const residuals = new Matrix(points.length, 1);
+    for (const [k, { h, v }] of points.entries()) {
+      const distance = Math.hypot(h - h0, v - v0);
+      jacobian.setRow(k, [(h - h0) / distance, (v - v0) / distance, 1]);
+      residuals.set(k, 0, distance - radius);
+    }
+    const step = new QrDecomposition(jacobian).solve(residuals).to1DArray();
+    unknowns = unknowns.map((value, k) => value + (step[k] ?? 0));
+    if (Math.hypot(...step) < 1e-10) break;
+  }
+  return unknowns;
+}
+
+/** The library fits y = f(x): here 0 = distance from the circle, at the index of each point. */
+function circleByLevenbergMarquardt(points: readonly WallPoint[]): readonly number[] {
+  const { parameterValues } = levenbergMarquardt(
+    { x: points.map((_, k) => k), y: points.map(() => 0) },
+    ([h0 = 0, v0 = 0, radius = 0]) =>
+      (k) => {
+        const { h, v } = points[k] ?? { h: 0, v: 0 };
+        return Math.hypot(h - h0, v - v0) - radius;
+      },
+    { initialValues: [0, 0, 200], gradientDifference: 1e-6, errorTolerance: 1e-12, maxIterations: 50 },
+  );
+  return parameterValues;
+}
