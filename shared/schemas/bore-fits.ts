@@ -2,7 +2,7 @@ import { z } from "zod";
 import { limits } from "../limits.ts";
 import {
   calculationEnvelope,
-  covarianceSchema,
+  covarianceAnswer,
   jobIdSchema,
   levelSchema,
   noteSchema,
@@ -222,7 +222,7 @@ export const boreFitResult = z
       .array(z.int())
       .nullable()
       .meta({ description: "Readings on the limiting circle; null for least squares, which has none." }),
-    covariance: covarianceSchema.nullable().meta({
+    covariance: covarianceAnswer.nullable().meta({
       description: "Of the centre (h, v), in the square of the offset unit; null where nothing tells it.",
     }),
     expandedUncertainty: z

@@ -43,6 +43,12 @@ export const covarianceSchema = z
   .max(2)
   .meta({ id: "Covariance", description: "2 × 2 covariance of (h, v), in the square of the offset unit." });
 
+/** As `covarianceSchema`, answered: as large as it comes out. */
+export const covarianceAnswer = z.array(z.array(z.number()).min(2).max(2)).min(2).max(2).meta({
+  id: "AnsweredCovariance",
+  description: "2 × 2 covariance of (h, v), in the square of the offset unit.",
+});
+
 export const dofSchema = z
   .number()
   .positive()

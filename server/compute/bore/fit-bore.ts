@@ -40,7 +40,9 @@ export function prepareBore(input: BoreInput): PreparedBore {
     return refused([...refusals, ...spotRefusal(readings)]) ?? { kind: "target", input, readings };
   }
   const { readings, refusals } = gatherWall(input);
-  const fittable = modelFor(readings, taperOf(input), null, readingsMember[input.form]);
+  // A taper without every z is refused already: what else is wrong shows as if there were none.
+  const taper = readings.zMm === null ? null : taperOf(input);
+  const fittable = modelFor(readings, taper, null, readingsMember[input.form]);
   if (fittable instanceof ComputeError) return { kind: "refused", refusals: [fittable, ...refusals] };
   return refused(refusals) ?? { kind: "wall", input, readings, fittable };
 }

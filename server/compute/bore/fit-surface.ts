@@ -18,8 +18,9 @@ const rankTolerance = 1e-13;
 const settledChange = 1e-13;
 /** A last step longer than this, relative to the radius, settles nothing. */
 const settledStep = 1e-6;
-/** A predicted gain below this share of the objective is inside its rounding: the step is taken unseen. */
+/** Rounding of the objective as a share of it, and of a residual relative to the points' extent. */
 const roundingShare = 1e-13;
+const residualRounding = 4 * Number.EPSILON;
 /** Centre this far off, relative to the points' extent: no circle fits better than the straight line. */
 const lineDistance = 1e8;
 const dampingFirst = 1e-3;
@@ -38,7 +39,8 @@ export interface SurfaceFit extends Evaluation {
  * Orthogonal least squares: minimises Σ w(|p − c − z·s| − z·t − R)² by Newton's method with the full second
  * derivative, damped (Levenberg–Marquardt) where that is not positive definite or a step does not descend. The full
  * derivative is what converges quadratically on thin arcs with large residuals, where Gauss–Newton creeps or cycles.
- * Stops when a step changes the residuals by rounding only and no longer shrinks. Linear in the number of points.
+ * Stops when a step changes the residuals, or the objective, by rounding only and no longer shrinks. Linear in the
+ * number of points.
  * @throws ComputeError rank_deficient, arc_too_flat, not_converged
  */
 export function fitSurface(frame: LocalFrame, model: SurfaceModel, member: string): SurfaceFit {
@@ -68,14 +70,18 @@ export function fitSurface(frame: LocalFrame, model: SurfaceModel, member: strin
     }
     const length = lengthOf(step, frame) / radiusOf(theta, now);
     const settled = damping === 0 && gain <= settledChange * settledChange * now.weightSum;
+    const rounding = roundingOf(now);
+    // On a thin arc the objective is so flat that its rounding alone makes steps; when they no longer shrink, all is won.
+    const unseen = damping === 0 && gain <= rounding;
     const next = evaluateSurface(frame, model, trial, work);
-    if (settled || next.objective <= now.objective + roundingShare * now.objective) {
+    if (settled || next.objective <= now.objective + rounding) {
       theta.set(trial);
-      if (settled && (length > lastLength / 2 || length <= Number.EPSILON)) {
-        if (length > settledStep) break;
+      const shrinks = length <= lastLength / 2 && length > Number.EPSILON;
+      if (settled && !shrinks && length > settledStep) break;
+      if ((settled || unseen) && !shrinks && length <= settledStep) {
         return { ...next, theta, work, iterations };
       }
-      damping = eased(damping, now.objective - next.objective, gain);
+      damping = gain <= rounding ? 0 : eased(damping, now.objective - next.objective, gain);
       lastLength = length;
       now = next;
       if (Math.hypot(theta[0]!, theta[1]!) > lineDistance) throw flatRefusal(member);
@@ -99,6 +105,11 @@ function startOf(frame: LocalFrame, size: number): Float64Array {
   theta[0] = a * nearer;
   theta[1] = b * nearer;
   return theta;
+}
+
+/** What Σ w·r² cannot resolve: small residuals of large coordinates are themselves differences of rounded numbers. */
+function roundingOf({ objective, weightSum }: Evaluation): number {
+  return roundingShare * objective + 2 * residualRounding * Math.sqrt(objective * weightSum);
 }
 
 function radiusOf(theta: Float64Array, { meanExcess }: Evaluation): number {

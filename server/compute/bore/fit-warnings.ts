@@ -35,8 +35,8 @@ export function warnRedundancy(redundancy: number): FitWarning[] {
 
 /** The readings scatter more than their stated uncertainties let expect. */
 export function warnScatter(chiSquare: number | null, redundancy: number): FitWarning[] {
-  // The quantile lies above the mean, which is the redundancy.
-  if (chiSquare === null || chiSquare <= redundancy) return [];
+  // The quantile lies above the mean, which is the redundancy. With none left over χ² is rounding and has no quantile.
+  if (chiSquare === null || redundancy === 0 || chiSquare <= redundancy) return [];
   const limit = chiSquareQuantile(scatterLevel, redundancy);
   if (chiSquare <= limit) return [];
   const detail = `Chi-square ${chiSquare.toPrecision(4)} passes ${limit.toPrecision(4)}, its ${scatterLevel} quantile for ${redundancy} degrees of freedom: readings or stated uncertainties are in doubt; the covariance is enlarged.`;

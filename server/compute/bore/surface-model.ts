@@ -15,6 +15,7 @@ export function unknownsOf({ free }: SurfaceModel): number {
   return { nothing: 2, taper: 3, tilt: 4 }[free];
 }
 
+/** Number of parameters of the model: its unknowns and the radius. */
 export function parametersOf(model: SurfaceModel): number {
   return unknownsOf(model) + 1;
 }
@@ -39,6 +40,7 @@ export interface Workspace {
   readonly hessian: Float64Array;
 }
 
+/** A workspace for `count` points: of one number each, and of a few numbers a parameter. */
 export function workspaceFor(count: number, model: SurfaceModel): Workspace {
   const unknowns = unknownsOf(model);
   const bending = model.free === "tilt" ? 4 : 2;

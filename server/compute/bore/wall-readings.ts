@@ -8,7 +8,7 @@ import { statedUncertainties } from "./stated-uncertainties.ts";
 export interface WallReadings {
   readonly hMm: Float64Array;
   readonly vMm: Float64Array;
-  /** From the station's plane; null where the points state none. */
+  /** From the station's plane; null where not every point states it. */
   readonly zMm: Float64Array | null;
   /** Null where no uncertainty is stated. */
   readonly uMm: Float64Array | null;
@@ -81,7 +81,7 @@ function fromPoints(input: PointsInput): GatheredWall {
     );
   }
   const uMm = statedUncertainties(points, input.readingUncertaintyMm, "points", refusals);
-  return { readings: { hMm, vMm, zMm: withZ > 0 ? zMm : null, uMm }, refusals };
+  return { readings: { hMm, vMm, zMm: n > 0 && withZ === n ? zMm : null, uMm }, refusals };
 }
 
 function fromGauge(input: TurnedGaugeInput): GatheredWall {
