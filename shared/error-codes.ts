@@ -136,6 +136,16 @@ export const problemKinds = {
   points_collinear: kind(422, "The points lie in a line", "Take readings round the bore."),
   points_coincident: kind(422, "The points are all at one place", "Check the readings."),
   arc_too_flat: kind(422, "The arc is too flat for a circle", "Take readings over a longer arc."),
+  no_inscribed_circle: kind(
+    422,
+    "No inscribed circle lies between the readings",
+    "Take readings over more than half of the bore, or choose another criterion.",
+  ),
+  coverage_insufficient: kind(
+    422,
+    "The readings do not cover enough of the bore",
+    "Take readings over a longer arc, or choose another method.",
+  ),
   angles_insufficient: kind(
     422,
     "The clock angles do not determine the fit",
@@ -187,6 +197,11 @@ export const problemKinds = {
     422,
     "The supports cannot make the movement",
     "Add supports or free a direction.",
+  ),
+  shaft_unsupported: kind(
+    422,
+    "The shaft is not held by its supports",
+    "Give two or more supports apart from each other on the shaft.",
   ),
   too_many_choices: kind(
     422,

@@ -16,8 +16,18 @@ export const limits = {
   piecesPerStack: 50,
   indicatorsPerCall: 200,
   couplingsPerCall: 2_000,
+  /** Cells of a crossed study, and readings in each: together no more than readingsPerCall. */
+  cellsPerStudy: 2_000,
+  repeatsPerCell: 25,
+  /** Planned moves, and events, of a confirmation. */
+  movesPerCall: 2_000,
+  eventsPerCall: 10_000,
   /** Parts that all moves of a call together may be split into. */
   incrementsPerCall: 2_000,
+  sectionsPerRotor: 500,
+  massesPerRotor: 500,
+  supportsPerRotor: 500,
+  growthsPerStation: 50,
   idLength: 64,
   noteLength: 2_000,
   nameLength: 120,
@@ -46,5 +56,19 @@ export const bounds = {
   clockDeg: { min: -360, max: 360 },
   halfAngleDeg: { min: -89, max: 89 },
   level: { min: 0.5, max: 1 },
+  /** A slope, offset units per axial unit. */
+  tilt: { min: 1e-12, max: 1e9 },
+  /** Beyond it a turn is no longer small. */
+  rollRadians: { min: -0.05, max: 0.05 },
   weight: { min: 1e-12, max: 1e12 },
+  diameterInside: { min: 0, max: 1e10 },
+  temperature: { min: -460, max: 1e5 },
+  /** Of expansion per degree: 12e-6 sent as 12 is refused. */
+  expansion: { min: -1e-3, max: 1e-3 },
+  mass: { min: 0, max: 1e9 },
+  massAbove0: { min: 1e-9, max: 1e9 },
+  force: { min: 1e-9, max: 1e9 },
+  /** 0 is a shaft without weight of its own. */
+  density: { min: 0, max: 1e6 },
+  modulus: { min: 1e-6, max: 1e10 },
 } as const;

@@ -58,3 +58,69 @@ function converter(unit: LengthUnit): Converter {
     squareFromMm2: (valueMm2) => valueMm2 / factor / factor,
   };
 }
+
+/** Units of what is no length, stated by the calls that use it. */
+export const furtherUnitChoices = {
+  temperature: ["C", "F"],
+  mass: ["kg", "lb"],
+  force: ["N", "lbf"],
+  density: ["kg/m3", "lb/in3"],
+  modulus: ["GPa", "psi"],
+} as const;
+
+export type FurtherDimension = keyof typeof furtherUnitChoices;
+export type FurtherUnit<D extends FurtherDimension> = (typeof furtherUnitChoices)[D][number];
+export type FurtherUnits = { readonly [D in FurtherDimension]?: FurtherUnit<D> | undefined };
+
+/** International pound of 1959, exact. */
+const kilogramsPerPound = 0.45359237;
+/** The pound under standard gravity, 9.80665 m/s² (3rd CGPM, 1901): exact. */
+const newtonsPerPoundForce = 4.4482216152605;
+
+/**
+ * The units used inside, in each of those stated: kelvin (of a difference of temperature), kilogram, newton, kilogram per
+ * cubic millimetre, newton per square millimetre. Exact by definition, but for the last place of a quotient.
+ */
+export const insidePer = {
+  temperature: { C: 1, F: 5 / 9 },
+  mass: { kg: 1, lb: kilogramsPerPound },
+  force: { N: 1, lbf: newtonsPerPoundForce },
+  density: { "kg/m3": 1e-9, "lb/in3": kilogramsPerPound / 25.4 ** 3 },
+  modulus: { GPa: 1000, psi: newtonsPerPoundForce / 25.4 ** 2 },
+} as const satisfies { readonly [D in FurtherDimension]: Readonly<Record<FurtherUnit<D>, number>> };
+
+/** Absolute zero in each unit of temperature, exact by definition. */
+export const absoluteZero = { C: -273.15, F: -459.67 } as const;
+
+/** The two directions of what is no length. */
+export interface FurtherConverter {
+  readonly unit: string;
+  readonly toInside: (value: number) => number;
+  readonly fromInside: (value: number) => number;
+}
+
+/** @throws RangeError where no unit is stated: a call is refused for that before anything of it is converted. */
+export function furtherConverter<D extends FurtherDimension>(
+  dimension: D,
+  unit: FurtherUnit<D> | undefined,
+): FurtherConverter {
+  if (unit === undefined) throw new RangeError(`units.${dimension} is not stated.`);
+  return byFactor(unit, (insidePer[dimension] as Readonly<Record<string, number>>)[unit]!);
+}
+
+/** Mass per length, kg/mm inside: with kg goes the metre, with lb the foot. @throws RangeError as `furtherConverter` */
+export function massPerLengthConverter(massUnit: FurtherUnits["mass"]): FurtherConverter {
+  const length = massUnit === "lb" ? "ft" : "m";
+  const { unit, toInside } = furtherConverter("mass", massUnit);
+  return byFactor(`${unit}/${length}`, toInside(1) / millimetresPer[length]);
+}
+
+/** Expansion per degree of the stated unit, 1/K inside. @throws RangeError as `furtherConverter` */
+export function expansionConverter(temperatureUnit: FurtherUnits["temperature"]): FurtherConverter {
+  const { unit, toInside, fromInside } = furtherConverter("temperature", temperatureUnit);
+  return { unit: `1/${unit}`, toInside: fromInside, fromInside: toInside };
+}
+
+function byFactor(unit: string, factor: number): FurtherConverter {
+  return { unit, toInside: (value) => value * factor, fromInside: (value) => value / factor };
+}

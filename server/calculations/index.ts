@@ -3,6 +3,9 @@ import type { CalculationKind, CalculationKindName } from "./calculation-kind.ts
 import { alignmentKind } from "./alignment.ts";
 import { axisDeviationKind } from "./axis-deviation.ts";
 import { boreFitKind } from "./bore-fit.ts";
+import { coldTargetKind } from "./cold-target.ts";
+import { confirmationKind } from "./confirmation.ts";
+import { repeatabilityStudyKind } from "./repeatability-study.ts";
 import { shimMoveKind } from "./shim-move.ts";
 
 /** A kind whose request type is known to itself alone: what its schema lets through is what it answers to. */
@@ -14,4 +17,7 @@ export const calculationKinds: Readonly<Record<CalculationKindName, AnyKind>> = 
   "axis-deviation": axisDeviationKind,
   "shim-move": shimMoveKind,
   alignment: alignmentKind,
+  "cold-target": coldTargetKind,
+  confirmation: confirmationKind,
+  "repeatability-study": repeatabilityStudyKind,
 };

@@ -3,7 +3,12 @@ import type { Fault, ProblemCode } from "../../shared/error-codes.ts";
 import { limits } from "../../shared/limits.ts";
 import { pointerOf } from "../../shared/pointer.ts";
 import type { QuantityMeta } from "../../shared/schemas/quantity.ts";
-import { unitChoices, type Dimension } from "../../shared/units.ts";
+import {
+  furtherUnitChoices,
+  unitChoices,
+  type Dimension,
+  type FurtherDimension,
+} from "../../shared/units.ts";
 
 type Issue = z.core.$ZodIssue;
 
@@ -24,12 +29,19 @@ function faultsOfIssue(issue: Issue, base: PropertyKey[], schema: z.ZodType, bod
     }));
   }
   if (issue.code === "invalid_union" && issue.errors.length > 0) {
-    // The branch that comes nearest is the one the caller meant: the fewest faults, the deepest first.
-    const branch = [...issue.errors].sort((a, b) => a.length - b.length || depth(b) - depth(a))[0] ?? [];
+    // The branch that comes nearest is the one the caller meant: of the kind sent, the fewest faults, the deepest first.
+    const branch =
+      [...issue.errors].sort(
+        (a, b) => ofOtherKind(a) - ofOtherKind(b) || a.length - b.length || depth(b) - depth(a),
+      )[0] ?? [];
     return branch.flatMap((inner) => faultsOfIssue(inner, path, schema, body));
   }
   return [faultAt(issue, path, schema, body)];
 }
+
+/** 1 where a branch wants an object, a list or a number, and something else was sent. */
+const ofOtherKind = (issues: readonly Issue[]): number =>
+  issues.some(({ code, path }) => code === "invalid_type" && path.length === 0) ? 1 : 0;
 
 const depth = (issues: readonly Issue[]): number => Math.max(0, ...issues.map((issue) => issue.path.length));
 
@@ -98,9 +110,10 @@ function quantityAt(
   return { ...(unit ? { unit } : {}), allowed };
 }
 
-function statedUnit(body: unknown, dimension: Dimension): string | undefined {
+function statedUnit(body: unknown, dimension: Dimension | FurtherDimension): string | undefined {
   const unit = valueAt(body, ["units", dimension]);
-  return (unitChoices[dimension] as readonly unknown[]).includes(unit) ? (unit as string) : undefined;
+  const choices: readonly unknown[] = { ...unitChoices, ...furtherUnitChoices }[dimension];
+  return choices.includes(unit) ? (unit as string) : undefined;
 }
 
 /** Every number schema that may stand at `path`: more than one behind a union. */

@@ -12,6 +12,8 @@ export const boreFitErrors: readonly ProblemCode[] = [
   "points_collinear",
   "points_coincident",
   "arc_too_flat",
+  "no_inscribed_circle",
+  "coverage_insufficient",
   "angles_insufficient",
   "uncertainty_incomplete",
   "radius_not_positive",

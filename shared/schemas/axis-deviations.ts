@@ -2,6 +2,7 @@ import { z } from "zod";
 import { bounds, limits } from "../limits.ts";
 import {
   calculationEnvelope,
+  covarianceAnswer,
   covarianceSchema,
   deviationAnswer,
   dofSchema,
@@ -26,7 +27,9 @@ export const axisMethods = [
 const axisMethod = z.enum(axisMethods).meta({
   description:
     "two_station: through exactly two. least_squares: two or more. line_of_sight: the beam itself, through none. " +
-    "minimum_zone and least_absolute (three or more) are not computed yet.",
+    "minimum_zone (three or more): the largest distance of a reference station from the axis is least. " +
+    "least_absolute (three or more): the sum of their distances is least. Both by distance in each plane for itself, " +
+    "or by radial distance (zone cylinder); covariances weigh nothing in them.",
 });
 
 export const axisSchema = z
@@ -78,7 +81,10 @@ export const axisStationSchema = z
       .number()
       .min(bounds.weight.min)
       .max(bounds.weight.max)
-      .meta({ description: "Of minimum_zone and least_absolute: multiplies the station's |d|." })
+      .meta({
+        description:
+          "Of minimum_zone and least_absolute: multiplies the station's |d|. For every reference station or for none (then 1); elsewhere it is not used.",
+      })
       .optional(),
   })
   .meta({ id: "AxisStation" });
@@ -120,6 +126,41 @@ const lineCovariance = z
 
 const perPlane = z.object({ h: z.number(), v: z.number() });
 
+const objective = z.number().meta({
+  description:
+    "What was least: the largest weight × |d| of a reference station, or the sum of them; offset unit.",
+});
+const lowerBound = z.number().meta({
+  description: "No axis has a smaller objective. Within 1e-9 of it, or of the rounding of the numbers sent.",
+});
+
+const planeOptimality = z
+  .object({
+    objective,
+    lowerBound,
+    multipliers: z.array(z.object({ id: z.string(), multiplier: z.number() })),
+  })
+  .meta({
+    id: "PlaneOptimality",
+    description:
+      "Proof that the axis is the best. Numbers q with Σ q = 0 and Σ q·z = 0 give Σ q·(centre − target) the same value for every axis: lowerBound. " +
+      "minimum_zone: Σ |q|/weight = 1, and q is 0 but at the contacts listed; their signs alternate along z. " +
+      "least_absolute: |q| ≤ weight; q is weight × sign of d, and at the contacts, where d is 0, as listed.",
+  });
+
+const cylinderOptimality = z
+  .object({
+    objective,
+    lowerBound,
+    multipliers: z.array(z.object({ id: z.string(), h: z.number(), v: z.number() })),
+  })
+  .meta({
+    id: "CylinderOptimality",
+    description:
+      "As in one plane, with vectors q = (h, v) and their lengths: the lower bound is Σ (q.h·h + q.v·v) over centre − target. " +
+      "least_absolute: q is weight × direction of d, and at the contacts as listed.",
+  });
+
 const axisAnswer = z
   .object({
     method: axisMethod,
@@ -139,6 +180,31 @@ const axisAnswer = z
       })
       .optional(),
     dof: z.number().meta({ description: "n − 2: of chiSquare or of scatter." }).optional(),
+    zoneWidth: z
+      .union([perPlane, z.number()])
+      .meta({
+        description:
+          "Of minimum_zone: twice the largest |d| of a reference station in each plane, or the cylinder's diameter. The distances themselves, whatever the weights.",
+      })
+      .optional(),
+    sumAbsolute: z
+      .union([perPlane, z.number()])
+      .meta({
+        description:
+          "Of least_absolute: the sum of |d| of the reference stations in each plane, or of their radial distances. The distances themselves, whatever the weights.",
+      })
+      .optional(),
+    contacts: z
+      .union([z.object({ h: z.array(z.string()), v: z.array(z.string()) }), z.array(z.string())])
+      .meta({
+        description:
+          "Ids of the reference stations that touch the zone (within 1e-9 of its width), or that the axis passes through; one list for a cylinder. The covariance is that of an axis that keeps these contacts.",
+      })
+      .optional(),
+    optimality: z
+      .union([z.object({ h: planeOptimality, v: planeOptimality }), cylinderOptimality])
+      .meta({ description: "Of minimum_zone and least_absolute: the proof that no axis is better." })
+      .optional(),
     warnings: z.array(warningSchema),
   })
   .meta({ id: "Axis" });
@@ -160,7 +226,7 @@ const stationAnswer = z
     z: z.number(),
     deviation: deviationAnswer,
     expandedUncertainty: expandedUncertainty.nullable(),
-    covariance: covarianceSchema.nullable(),
+    covariance: covarianceAnswer.nullable(),
     verdict: verdictSchema.nullable().meta({ description: "Null without a tolerance." }),
     ratio: z
       .number()

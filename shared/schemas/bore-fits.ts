@@ -23,7 +23,7 @@ export const methodSchema = z
   .meta({
     id: "CircleMethod",
     description:
-      "Criterion of the circle, with the names of ISO 12181-1; least_squares when absent. This engine version computes least_squares; the others are refused as not_available.",
+      "Criterion of the circle, with the names of ISO 12181-1; least_squares (LSCI, orthogonal) when absent. minimum_zone (MZCI): the two concentric circles that hold all readings between them and are closest together; the diameter answered is their mean, the roundness their distance. maximum_inscribed (MICI): the largest circle with no reading inside and its centre between the readings. minimum_circumscribed (MCCI): the smallest round all readings. These three are exact, the best of all centres, and return their contacts; they take no weights, and a known taper only. ellipse: orthogonal least squares. points and turned_gauge only.",
   });
 
 const taperSchema = z
@@ -54,7 +54,11 @@ const outliersSchema = z
           "Puts aside, one by one, the reading whose |r|/u passes threshold × 1.4826 × the median of |r|/u in use, and fits again.",
       }),
   ])
-  .meta({ id: "Outliers", description: "Nothing is put aside when absent." });
+  .meta({
+    id: "Outliers",
+    description:
+      "Nothing is put aside when absent. Before minimum_zone, maximum_inscribed and minimum_circumscribed readings are judged by the least-squares circle.",
+  });
 
 const common = {
   id: callerId,
@@ -212,7 +216,7 @@ export const boreFitResult = z
     roundness: z.number().nullable().meta({ description: "Peak to valley of the radial residuals in use." }),
     residuals: z.union([z.array(z.number()), z.array(clockPair("Of one spot"))]).meta({
       description:
-        "In the order sent: radial, outwards positive; {h, v} for a rotating target; left, right, bottom, top for a wire.",
+        "In the order sent: radial, from an ellipse orthogonal, outwards positive; {h, v} for a rotating target; left, right, bottom, top for a wire.",
     }),
     used: z.array(z.boolean()),
     exclusions: z.array(z.object({ index: z.int(), ratio: z.number() })).meta({
@@ -221,7 +225,10 @@ export const boreFitResult = z
     contacts: z
       .array(z.int())
       .nullable()
-      .meta({ description: "Readings on the limiting circle; null for least squares, which has none." }),
+      .meta({
+        description:
+          "Readings within 1e-9 radius of a limiting circle, counted from 0 and rising: the outer and the inner one for minimum_zone. Null for least_squares and ellipse, which have none.",
+      }),
     covariance: covarianceAnswer.nullable().meta({
       description: "Of the centre (h, v), in the square of the offset unit; null where nothing tells it.",
     }),
@@ -250,12 +257,23 @@ export const boreFitResult = z
       .meta({ description: "Slopes of a tilted cylinder's centre line, offset units per axial unit." }),
     ellipse: z
       .object({
-        major: z.number(),
-        minor: z.number(),
-        ovality: z.number(),
-        majorClockDeg: z.number().nullable(),
+        major: z.number().nullable().meta({
+          description: "Diameter, in bore units; null where the gauge's zero does not tell it.",
+        }),
+        minor: z.number().nullable(),
+        ovality: z.number().meta({ description: "Major − minor diameter, in offset units." }),
+        ovalityExpandedUncertainty: z.number().nullable().meta({
+          description: "By the two-dimensional factor at `level`; null where nothing tells it.",
+        }),
+        majorClockDeg: z.number().nullable().meta({
+          description: "Of the major axis, [0, 180); null where the ovality is within its own uncertainty.",
+        }),
       })
-      .nullable(),
+      .nullable()
+      .meta({
+        id: "EllipseAxes",
+        description: "For method ellipse; the diameter is then the mean of major and minor.",
+      }),
     statistics: z
       .object({
         readingsUsed: z.int(),
@@ -264,16 +282,18 @@ export const boreFitResult = z
         chiSquare: z
           .number()
           .nullable()
-          .meta({ description: "Σ(r/u)²; null where no uncertainty is stated." }),
+          .meta({
+            description: "Σ(r/u)²; null where no uncertainty is stated, and for the limiting circles.",
+          }),
         varianceInflation: z.number().nullable().meta({
           description:
             "max(1, χ²/(n − p)), by which the stated variances were enlarged; null where none are stated.",
         }),
         dilution: z.number().meta({
           description:
-            "The centre's worst standard uncertainty ÷ that of as many readings evenly round; over 3 warns.",
+            "The centre's worst standard uncertainty ÷ that of as many readings, or contacts, evenly round; over 3 warns.",
         }),
-        iterations: z.int(),
+        iterations: z.int().meta({ description: "Of a limiting circle: regions of centres compared." }),
       })
       .meta({ id: "BoreFitStatistics" }),
     warnings: z.array(warningSchema),

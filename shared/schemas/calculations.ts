@@ -2,7 +2,15 @@ import { z } from "zod";
 import { pageOf, pageQuery } from "./paging.ts";
 import { problemSchema } from "./problem.ts";
 
-export const calculationKinds = ["bore-fit", "axis-deviation", "shim-move", "alignment"] as const;
+export const calculationKinds = [
+  "bore-fit",
+  "axis-deviation",
+  "shim-move",
+  "alignment",
+  "cold-target",
+  "confirmation",
+  "repeatability-study",
+] as const;
 export const calculationKindSchema = z.enum(calculationKinds).meta({ id: "CalculationKind" });
 
 export const calculationSummary = z

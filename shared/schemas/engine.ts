@@ -11,11 +11,9 @@ const checkedFigure = z
       .number()
       .nullable()
       .meta({ description: "What the engine gives now; null when it gives no finite number." }),
-    tolerance: z
-      .number()
-      .meta({
-        description: "Largest difference: a little over half of the last printed digit, or as stated.",
-      }),
+    tolerance: z.number().meta({
+      description: "Largest difference: a little over half of the last printed digit, or as stated.",
+    }),
     passed: z.boolean(),
   })
   .meta({ id: "CheckedFigure" });

@@ -1,9 +1,6 @@
 import { z } from "zod";
-import { limits } from "../limits.ts";
-import { offsetPair } from "./common.ts";
+import { bounds, limits } from "../limits.ts";
 import { callerId, clockDeg, quantity } from "./quantity.ts";
-
-const notYet = "Refused as not_available by this engine version.";
 
 const thickness = (description: string) => quantity("offset", "thickness", description);
 
@@ -119,6 +116,14 @@ export const supportSchema = z
   .discriminatedUnion("form", [feetSupport, padsSupport, jointKeysSupport])
   .meta({ id: "Support" });
 
+const tiltTolerance = z
+  .strictObject({ h: tiltSide(), v: tiltSide() })
+  .meta({ id: "TiltTolerance", description: "Half-widths." });
+
+function tiltSide() {
+  return z.number().min(bounds.tilt.min).max(bounds.tilt.max);
+}
+
 export const componentSchema = z
   .strictObject({
     id: callerId,
@@ -143,16 +148,26 @@ export const componentSchema = z
       .optional(),
     carriedBy: callerId
       .nullable()
-      .meta({ description: `The component that carries this one. ${notYet}` })
+      .meta({
+        description:
+          "Id of the component that this one rests in: its stations follow that one's move before its own.",
+      })
       .optional(),
     tilt: z
-      .strictObject({ tolerance: offsetPair })
+      .strictObject({ tolerance: tiltTolerance })
       .nullable()
-      .meta({ description: `Tolerance of a bearing's tilt, offset units per axial unit. ${notYet}` })
+      .meta({
+        description:
+          "Tolerance of the slope of the line through the part's end stations, offset units per axial unit; a tilt beyond it counts like a station beyond its own.",
+      })
       .optional(),
     roll: z
       .strictObject({
-        radians: z.number().min(-1).max(1),
+        radians: z
+          .number()
+          .min(bounds.rollRadians.min)
+          .max(bounds.rollRadians.max)
+          .meta({ description: "Measured; clockwise positive, seen downstream." }),
         feet: z
           .array(
             z.strictObject({
@@ -162,10 +177,15 @@ export const componentSchema = z
               v: quantity("offset", "offset", "From the bore's centre, up."),
             }),
           )
-          .max(limits.supportsPerComponent * 2),
+          .min(2)
+          .max(limits.supportsPerComponent * 2)
+          .meta({ description: "The feet, or the keys at the joint, that carry the part's height." }),
       })
       .nullable()
-      .meta({ description: `A measured roll to be taken out. ${notYet}` })
+      .meta({
+        description:
+          "A measured roll, taken out by unlike changes of the feet: the bore then moves by roll × height.",
+      })
       .optional(),
   })
   .meta({ id: "MoveComponent", description: "One rigid part." });

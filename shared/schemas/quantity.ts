@@ -1,14 +1,14 @@
 import { z } from "zod";
 import { bounds, limits } from "../limits.ts";
-import type { Dimension } from "../units.ts";
+import type { Dimension, FurtherDimension } from "../units.ts";
 
 /** What a number measures: the fault mapper reads it to quote a limit in the caller's own unit. */
-export type QuantityMeta = { "x-dimension"?: Dimension; "x-unit"?: string };
+export type QuantityMeta = { "x-dimension"?: Dimension | FurtherDimension; "x-unit"?: string };
 
 type Bound = keyof typeof bounds;
 
 /** A number in the unit that the call states for `dimension`. */
-export function quantity(dimension: Dimension, bound: Bound, description: string) {
+export function quantity(dimension: Dimension | FurtherDimension, bound: Bound, description: string) {
   return z
     .number()
     .min(bounds[bound].min)

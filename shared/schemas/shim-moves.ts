@@ -52,7 +52,11 @@ const couplingSchema = z
     h: z.number().min(-1_000).max(1_000),
     v: z.number().min(-1_000).max(1_000),
   })
-  .meta({ id: "Coupling", description: "Shift of a station per unit of that support's move." });
+  .meta({
+    id: "Coupling",
+    description:
+      "Shift of a station of another component: h times the support's move in h, v times its move in v.",
+  });
 
 const shimSupplySchema = z
   .strictObject({
@@ -121,7 +125,7 @@ export const shimMoveRequest = z
     couplings: z
       .array(couplingSchema)
       .max(limits.couplingsPerCall)
-      .meta({ description: `How moving one component shifts another's station. ${notYet}` })
+      .meta({ description: "How moving one component shifts another's station." })
       .optional(),
     note: noteSchema.optional(),
     jobId: jobIdSchema.optional(),
@@ -156,7 +160,7 @@ const stackChange = z
 const unreachable = z
   .object({
     cause: z
-      .enum(["fixed", "reference", "contradiction", "limit", "blocked", "rigid", "shims"])
+      .enum(["fixed", "reference", "contradiction", "limit", "blocked", "rigid", "shims", "tilt"])
       .meta({ description: "The kind of reason, for a program." }),
     reason: z.string().meta({ description: "In words, with the station that is left worst." }),
     limit: z
@@ -166,6 +170,10 @@ const unreachable = z
   })
   .meta({ id: "Unreachable", description: "Why not every station of the part comes inside its tolerance." });
 
+const slopes = z
+  .object({ h: z.number(), v: z.number() })
+  .meta({ id: "Slopes", description: "Offset units per axial unit." });
+
 const componentAnswer = z
   .object({
     id: z.string(),
@@ -173,6 +181,24 @@ const componentAnswer = z
     moves: z.array(supportMove).meta({ description: "The ideal move." }),
     realised: z.array(supportMove).meta({ description: "The move that the shims chosen make." }),
     stacks: z.array(stackChange),
+    tilt: z
+      .object({ found: slopes, predicted: slopes })
+      .meta({
+        id: "TiltAnswer",
+        description:
+          "Slope of the line through the part's end stations, before its own move and after; where a tolerance of it was sent.",
+      })
+      .optional(),
+    roll: z
+      .object({
+        found: z.number().meta({ description: "Radians, clockwise positive." }),
+        predicted: z.number().meta({ description: "What the shims chosen leave of it." }),
+        boreShift: z.object({ h: z.number(), v: z.number() }).meta({
+          description: "How far the bores move while the roll is taken out: part of predicted, not of moves.",
+        }),
+      })
+      .meta({ id: "RollAnswer" })
+      .optional(),
     unreachable: unreachable.optional(),
   })
   .meta({ id: "ComponentMove" });

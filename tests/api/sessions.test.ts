@@ -123,3 +123,17 @@ describe("sessions", () => {
     }
   });
 });
+
+describe("the limit of sign-ins", () => {
+  it("refuses who guesses, and lets everyone behind the same network renew their sessions", async () => {
+    const app = await openTestApp({ SIGN_IN_LIMIT_PER_MINUTE: "2" });
+    const guess = () =>
+      app.call().post("/v1/sessions").send({ email: "ines@example.com", password: "a guess" });
+    expect((await guess()).status).toBe(401);
+    expect((await guess()).status).toBe(401);
+    expect((await guess()).body).toMatchObject({ status: 429, code: "rate_limited", limit: 2 });
+    // Each page that is opened asks for the session of its cookie; a secret of 43 characters cannot be guessed.
+    expect((await app.call().post("/v1/sessions/refresh")).body).toMatchObject({ code: "session_expired" });
+    await app.close();
+  });
+});

@@ -9,6 +9,9 @@ import { operationAccess, type Access } from "../../shared/access.ts";
 import type { alignmentResponse } from "../../shared/schemas/alignments.ts";
 import type { axisDeviationResponse } from "../../shared/schemas/axis-deviations.ts";
 import type { boreFitResponse } from "../../shared/schemas/bore-fits.ts";
+import type { coldTargetResponse } from "../../shared/schemas/cold-targets.ts";
+import type { confirmationResponse } from "../../shared/schemas/confirmations.ts";
+import type { repeatabilityStudyResponse } from "../../shared/schemas/repeatability-studies.ts";
 import type { shimMoveResponse } from "../../shared/schemas/shim-moves.ts";
 import type { z } from "zod";
 import { makeOrganisation } from "../support/factories.ts";
@@ -68,12 +71,58 @@ function alignmentLines({ units, cautions, result }: z.infer<typeof alignmentRes
   ];
 }
 
+function coldTargetLines({ units, result }: z.infer<typeof coldTargetResponse>): string[] {
+  return [
+    ...result.stations.flatMap(({ id, target: { h, v }, warnings }) => [
+      `${id}: target h ${fixed(h, units.offset)}, v ${fixed(v, units.offset)}`,
+      ...warnings.map(({ code, detail }) => `  ${code}: ${detail}`),
+    ]),
+    ...(result.rotor?.warnings ?? []).map(({ code, detail }) => `${code}: ${detail}`),
+  ];
+}
+
+function confirmationLines({ units, cautions, result }: z.infer<typeof confirmationResponse>): string[] {
+  const vector = ({ h, v }: { h: number; v: number }) =>
+    `h ${fixed(h, units.offset)}, v ${fixed(v, units.offset)}`;
+  const { repeats } = result.reference;
+  return [
+    ...cautions.map(({ text }) => `Caution: ${text}`),
+    `Reference stations ${repeats === null ? "are not shown to repeat" : repeats ? "repeat" : "do not repeat"}`,
+    ...result.moved.map(
+      ({ id, planned, achieved }) =>
+        `${id}: planned ${planned ? vector(planned) : "nothing"}; achieved ${achieved ? vector(achieved) : "not known"}`,
+    ),
+    `Unexpected: ${result.unexpected.join(", ") || "none"}`,
+    `Outstanding: ${result.outstanding.join(", ") || "none"}`,
+    ...result.warnings.map(({ code, detail }) => `  ${code}: ${detail}`),
+  ];
+}
+
+function repeatabilityStudyLines({ units, result }: z.infer<typeof repeatabilityStudyResponse>): string[] {
+  const vector = ({ h, v }: { h: number; v: number }) =>
+    `h ${fixed(h, units.offset)}, v ${fixed(v, units.offset)}`;
+  const found =
+    result.form === "one_station"
+      ? [
+          `${result.station}: mean ${vector(result.mean)}`,
+          `standard deviation ${vector(result.standardDeviation)}`,
+          `uncertainty of the mean ${vector(result.uncertainty)}`,
+        ]
+      : Object.entries(result.components).map(
+          ([source, component]) => `${source}: standard deviation ${vector(component)}`,
+        );
+  return [...found, ...result.warnings.map(({ code, detail }) => `  ${code}: ${detail}`)];
+}
+
 /** What a script must print of a stored answer, beside the record's id. */
 const linesOf: Readonly<Record<string, (answer: never) => string[]>> = {
   "bore-fits": boreFitLines,
   "axis-deviations": axisDeviationLines,
   "shim-moves": shimMoveLines,
   alignments: alignmentLines,
+  "cold-targets": coldTargetLines,
+  confirmations: confirmationLines,
+  "repeatability-studies": repeatabilityStudyLines,
 };
 
 const resources = Object.keys(linesOf);

@@ -1,7 +1,7 @@
-import { describe, expect, it } from "vitest";
+import { expect } from "vitest";
 import { deviationsFromAxis } from "../../server/compute/axis/deviations-from-axis.ts";
 import { axisInput, stationAt, stationsOnLine } from "../support/axis-stations.ts";
-import { describeCases, mismatches, readCases, referenceFound } from "./read-cases.ts";
+import { describeCases, mismatches } from "./read-cases.ts";
 
 /** The least-squares line of y over x in the h plane, with what the answer says of it. */
 function fitted(x: readonly number[], y: readonly number[], u: readonly number[] | null) {
@@ -103,25 +103,18 @@ interface Regression {
   readonly y: number[];
 }
 
-describe("axis deviations: linear-regression, straight lines with an intercept", () => {
+describeCases<Regression, object>(
+  "axis deviations: linear-regression, straight lines with an intercept (Norris of the NIST data sets)",
+  ["linear-regression"],
+  (reference) => {
+    const line = fitted(reference.input.x, reference.input.y, null);
+    const got = {
+      coefficients: [line.intercept, line.slope],
+      sd: [line.u_intercept, line.u_slope],
+      residual_sd: line.scatter,
+    };
+    expect(mismatches(reference, got)).toEqual([]);
+  },
   // Polynomials and lines through the origin are no axis.
-  const lines = readCases<Regression, object>("linear-regression").filter(
-    ({ input }) => input.powers.join() === "0,1",
-  );
-
-  it.skipIf(!referenceFound)("finds Norris among the NIST data sets", () => {
-    expect(lines.map(({ id }) => id)).toContain("nist-strd-norris");
-  });
-
-  for (const reference of lines) {
-    it(reference.id, () => {
-      const line = fitted(reference.input.x, reference.input.y, null);
-      const got = {
-        coefficients: [line.intercept, line.slope],
-        sd: [line.u_intercept, line.u_slope],
-        residual_sd: line.scatter,
-      };
-      expect(mismatches(reference, got)).toEqual([]);
-    });
-  }
-});
+  ({ input }) => input.powers.join() === "0,1",
+);

@@ -17,6 +17,7 @@ export function stationAt(
     target: exact,
     targetUncertainty: exact,
     tolerance: null,
+    weight: null,
     ...rest,
   };
 }
@@ -30,7 +31,7 @@ export function axisInput(
   stations: readonly AxisStation[],
   rest: Partial<AxisInput> = {},
 ): AxisInput {
-  return { method, reference, stations, level: 0.95, rule: "guarded", ...rest };
+  return { method, zone: "planes", reference, stations, level: 0.95, rule: "guarded", ...rest };
 }
 
 /** A published line y over x as stations, y in h and −y in v, all of them reference. */

@@ -121,8 +121,8 @@ export const faultyBores: readonly BoreRequest[] = [
 export const faultsOfThose = [
   "/bores/0/points too_few_points",
   "/bores/1/id duplicate_id",
-  "/bores/2/method not_available",
   "/bores/2/points combination_invalid",
+  "/bores/2/taper combination_invalid",
   "/bores/3/readings/2/reading radius_not_positive",
   "/bores/3/readings/5/reading radius_not_positive",
   "/bores/4/spots angles_insufficient",

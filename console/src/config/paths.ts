@@ -35,4 +35,11 @@ export const computations: Record<CalculationKind, { name: string; resource: str
   "axis-deviation": { name: "Axis and deviations", resource: "axis-deviations", path: "/v1/axis-deviations" },
   "shim-move": { name: "Shim moves", resource: "shim-moves", path: "/v1/shim-moves" },
   alignment: { name: "Alignment", resource: "alignments", path: "/v1/alignments" },
+  "cold-target": { name: "Cold targets", resource: "cold-targets", path: "/v1/cold-targets" },
+  confirmation: { name: "Confirmation", resource: "confirmations", path: "/v1/confirmations" },
+  "repeatability-study": {
+    name: "Repeatability study",
+    resource: "repeatability-studies",
+    path: "/v1/repeatability-studies",
+  },
 };

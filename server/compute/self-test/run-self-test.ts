@@ -2,6 +2,7 @@ import { circleCases } from "./circle-cases.ts";
 import { factorCases } from "./factor-cases.ts";
 import { lineCases } from "./line-cases.ts";
 import type { SelfCase } from "./self-case.ts";
+import { targetCases } from "./target-cases.ts";
 
 export interface CheckedFigure {
   readonly id: string;
@@ -15,7 +16,7 @@ export interface CheckedFigure {
   readonly passed: boolean;
 }
 
-export const selfCases: readonly SelfCase[] = [...circleCases, ...lineCases, ...factorCases];
+export const selfCases: readonly SelfCase[] = [...circleCases, ...lineCases, ...factorCases, ...targetCases];
 
 /** Computes every shipped published case anew and holds each printed figure against what comes out. */
 export function runSelfTest(cases: readonly SelfCase[] = selfCases): CheckedFigure[] {

@@ -2,6 +2,7 @@
 declare module "jstat" {
   interface Distribution {
     inv(probability: number, ...parameters: number[]): number;
+    cdf(value: number, ...parameters: number[]): number;
   }
   const jstat: {
     readonly studentt: Distribution;

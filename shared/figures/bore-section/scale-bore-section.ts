@@ -31,8 +31,10 @@ export function scaleBoreSection(model: BoreSectionModel, side: number): BoreSec
   const largest = model.points
     .filter((point) => point.used)
     .reduce((most, point) => Math.max(most, Math.abs(point.residual)), 0);
+  // Less than a nanometre is arithmetic, and nothing that a drawing should magnify.
+  const nanometre = convertLength(1e-6, "mm", model.offsetUnit);
   // With no scatter at all any scale is true: one micrometre fills the band.
-  const span = largest > 0 ? largest : convertLength(0.001, "mm", model.offsetUnit);
+  const span = largest > nanometre ? largest : convertLength(0.001, "mm", model.offsetUnit);
   const residualScale = reach / span;
   const ringStep = stepAtMost(span * 0.75);
   const ringCount = Math.floor((reach * 1.02) / (ringStep * residualScale));
@@ -47,7 +49,7 @@ export function scaleBoreSection(model: BoreSectionModel, side: number): BoreSec
     residualScale,
     ringStep,
     rings: rings.filter((ring) => ring !== 0),
-    centreScale: way > 0 ? stepAtMost((side * 0.17) / way) : null,
+    centreScale: way > nanometre ? stepAtMost((side * 0.17) / way) : null,
     exaggeration: diameterInOffset === null ? null : residualScale / (circleRadius / (diameterInOffset / 2)),
   };
 }

@@ -1,4 +1,5 @@
-import type { ShimMoveRequest, ShimMoveResult } from "../../schemas/shim-moves.ts";
+import type { ShimMoveResult } from "../../schemas/shim-moves.ts";
+import type { MoveCall } from "../plan-elevation/plan-elevation-of-moves.ts";
 import {
   numberCell,
   numberColumn,
@@ -10,9 +11,9 @@ import {
 import { decimalsAcross, decimalsAlong, decimalsFor } from "../write-number.ts";
 
 /** Every station before and after: as found, and as the shims chosen are predicted to leave it. */
-export function tabulatePredicted(request: ShimMoveRequest, result: ShimMoveResult): FigureTable {
-  const { units, stations } = request;
-  const references = new Set(request.reference ?? []);
+export function tabulatePredicted(call: MoveCall, result: ShimMoveResult): FigureTable {
+  const { units, stations } = call;
+  const references = new Set(call.reference ?? []);
   const decimals = decimalsFor(
     [...stations, ...result.predicted].flatMap(({ deviation }) => [deviation.h, deviation.v]),
     decimalsAcross(units.offset),
@@ -22,6 +23,7 @@ export function tabulatePredicted(request: ShimMoveRequest, result: ShimMoveResu
     caption: "Deviations as found, and as left by prediction",
     columns: [
       textColumn("station"),
+      textColumn("predicted"),
       numberColumn("z", units.axial),
       numberColumn("found h", units.offset),
       numberColumn("found v", units.offset),
@@ -29,12 +31,12 @@ export function tabulatePredicted(request: ShimMoveRequest, result: ShimMoveResu
       numberColumn("left h", units.offset),
       numberColumn("left v", units.offset),
       numberColumn("radial", units.offset),
-      textColumn("predicted verdict"),
     ],
     rows: stations.map(({ id, z, deviation: { h, v } }) => {
       const left = predicted.get(id);
       return [
         textCell(references.has(id) ? `${id} (ref.)` : id),
+        left?.verdict ? { kind: "verdict", verdict: left.verdict } : textCell("not judged"),
         numberCell(z, decimalsAlong(units.axial)),
         signedCell(h, decimals),
         signedCell(v, decimals),
@@ -42,7 +44,6 @@ export function tabulatePredicted(request: ShimMoveRequest, result: ShimMoveResu
         signedCell(left?.deviation.h, decimals),
         signedCell(left?.deviation.v, decimals),
         numberCell(left?.deviation.radial, decimals),
-        left?.verdict ? { kind: "verdict", verdict: left.verdict } : textCell("not judged"),
       ];
     }),
   };

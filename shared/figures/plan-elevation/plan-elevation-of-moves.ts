@@ -2,11 +2,21 @@ import type { ShimMoveRequest, ShimMoveResult } from "../../schemas/shim-moves.t
 import { allowedBy } from "./plan-elevation-of.ts";
 import type { PlanElevationModel, Survey } from "./plan-elevation-model.ts";
 
+/** What of a call for moves is drawn and tabulated. */
+export interface MoveCall {
+  readonly units: ShimMoveRequest["units"];
+  readonly reference?: readonly string[] | undefined;
+  readonly stations: readonly Pick<
+    ShimMoveRequest["stations"][number],
+    "id" | "z" | "deviation" | "tolerance"
+  >[];
+}
+
 /**
  * Plan and elevation of a call for moves and its result: every station as found, and as the realised moves are
  * predicted to leave it. A call for moves knows deviations, not targets, so zero is each station's own target.
  */
-export function planElevationOfMoves(request: ShimMoveRequest, result: ShimMoveResult): PlanElevationModel {
+export function planElevationOfMoves(request: MoveCall, result: ShimMoveResult): PlanElevationModel {
   const references = new Set(request.reference ?? []);
   return {
     axialUnit: request.units.axial,
@@ -24,7 +34,7 @@ export function planElevationOfMoves(request: ShimMoveRequest, result: ShimMoveR
   };
 }
 
-function foundOf(request: ShimMoveRequest): Survey {
+function foundOf(request: MoveCall): Survey {
   return {
     name: "as found",
     stations: request.stations.map(({ id, deviation: { h, v } }) => ({
@@ -37,7 +47,8 @@ function foundOf(request: ShimMoveRequest): Survey {
   };
 }
 
-function predictedOf(result: ShimMoveResult): Survey {
+/** Where the realised moves are predicted to leave each station. */
+export function predictedOf(result: ShimMoveResult): Survey {
   return {
     name: "as left, predicted",
     stations: result.predicted.map(({ id, deviation, verdict }) => ({

@@ -13,19 +13,26 @@ const axisWords: Record<AxisDeviationResult["axis"]["method"], string> = {
   line_of_sight: "line of sight",
 };
 
-/** Plan and elevation of one survey: a call for deviations and its result. */
+/** What of a call plan and elevation need: where each station stands, its target and its tolerance. */
+export interface PlannedCall {
+  readonly units: AxisDeviationRequest["units"];
+  readonly stations: readonly Pick<AxisStationRequest, "id" | "z" | "target" | "tolerance">[];
+}
+
+/** Plan and elevation of one survey, or of one and the prediction that replaces it. */
 export function planElevationOf(
-  request: AxisDeviationRequest,
+  call: PlannedCall,
   result: AxisDeviationResult,
+  predicted: Survey | null = null,
 ): PlanElevationModel {
   const { through, method } = result.axis;
   return {
-    axialUnit: request.units.axial,
-    offsetUnit: request.units.offset,
+    axialUnit: call.units.axial,
+    offsetUnit: call.units.offset,
     axisWords: through.length === 0 ? axisWords[method] : `${axisWords[method]} (${through.join(", ")})`,
     zero: "axis",
-    stations: request.stations.map((station) => plannedStation(station, new Set(through))),
-    surveys: [surveyOf("measured", result)],
+    stations: call.stations.map((station) => plannedStation(station, new Set(through))),
+    surveys: predicted ? [surveyOf("as found", result), predicted] : [surveyOf("measured", result)],
   };
 }
 
@@ -43,7 +50,10 @@ export function surveyOf(name: string, result: AxisDeviationResult): Survey {
   };
 }
 
-function plannedStation(station: AxisStationRequest, through: ReadonlySet<string>): PlannedStation {
+function plannedStation(
+  station: PlannedCall["stations"][number],
+  through: ReadonlySet<string>,
+): PlannedStation {
   return {
     id: station.id,
     z: station.z,

@@ -25,6 +25,7 @@ function tabulateSurvey(model: PlanElevationModel, survey: Survey): FigureTable 
     caption: `Deviations ${survey.name}`,
     columns: [
       textColumn("station"),
+      textColumn("verdict"),
       numberColumn("z", model.axialUnit),
       numberColumn("target h", unit),
       numberColumn("target v", unit),
@@ -33,12 +34,12 @@ function tabulateSurvey(model: PlanElevationModel, survey: Survey): FigureTable 
       numberColumn("radial", unit),
       numberColumn("U of h", unit),
       numberColumn("U of v", unit),
-      textColumn("verdict"),
     ],
     rows: survey.stations.map((station) => {
       const plan = planned.get(station.id);
       return [
         textCell(plan?.reference ? `${station.id} (ref.)` : station.id),
+        station.verdict === null ? textCell("not judged") : { kind: "verdict", verdict: station.verdict },
         numberCell(plan?.z, decimalsAlong(model.axialUnit)),
         signedCell(plan?.target.h, decimals),
         signedCell(plan?.target.v, decimals),
@@ -47,7 +48,6 @@ function tabulateSurvey(model: PlanElevationModel, survey: Survey): FigureTable 
         numberCell(station.radial, decimals),
         numberCell(station.uncertainty?.h, decimals),
         numberCell(station.uncertainty?.v, decimals),
-        station.verdict === null ? textCell("not judged") : { kind: "verdict", verdict: station.verdict },
       ];
     }),
   };
