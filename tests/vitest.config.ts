@@ -23,7 +23,7 @@ export default defineConfig({
         extends: true,
         test: {
           name: "unit",
-          include: ["{server,shared,tests/support,tests/house}/**/*.test.ts"],
+          include: ["{server,shared,tests/support,tests/house,tests/golden}/**/*.test.ts"],
           setupFiles: ["tests/support/seeded-properties.ts"],
           testTimeout: seconds(20),
         },
@@ -45,7 +45,11 @@ export default defineConfig({
           name: "console",
           include: ["console/src/**/*.test.{ts,tsx}", "tests/console/**/*.test.{ts,tsx}"],
           environment: "jsdom",
-          setupFiles: ["tests/support/console-setup.ts"],
+          setupFiles: [
+            "tests/support/console-setup.ts",
+            "tests/support/seeded-properties.ts",
+            "console/src/testing/prepare-page.ts",
+          ],
           testTimeout: seconds(20),
         },
       },
@@ -54,7 +58,7 @@ export default defineConfig({
         test: {
           name: "browser",
           include: ["tests/browser/**/*.test.ts"],
-          globalSetup: database,
+          globalSetup: [...database, "tests/support/built-console.ts"],
           testTimeout: seconds(60),
           hookTimeout: seconds(60),
           ...serial(1),

@@ -11,7 +11,7 @@ const IPV6_SUBNET = 56;
 export interface RateLimits {
   /** Per credential, or per network where there is none. */
   readonly standard: RequestHandler;
-  /** Sign-in, refresh and invitations, per network. */
+  /** Where a password or an invitation could be guessed, per network. A refresh secret cannot, and every page asks with it. */
   readonly signIn: RequestHandler;
 }
 

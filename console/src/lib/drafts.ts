@@ -1,5 +1,6 @@
 /** Unsent work, kept for this tab until it is sent, put back or the member signs out. */
 const prefix = "borewright.draft.";
+const ownerKey = "borewright.drafts-of";
 
 export function readDraft(name: string): string | null {
   try {
@@ -22,6 +23,16 @@ export function writeDraft(name: string, text: string | null): void {
 export function forgetDrafts(): void {
   try {
     for (const key of Object.keys(sessionStorage)) if (key.startsWith(prefix)) sessionStorage.removeItem(key);
+  } catch {
+    // Storage is barred: nothing was kept.
+  }
+}
+
+/** Drafts left in this tab by another member are forgotten; those of `memberId` stay. */
+export function claimDrafts(memberId: string): void {
+  try {
+    if (sessionStorage.getItem(ownerKey) !== memberId) forgetDrafts();
+    sessionStorage.setItem(ownerKey, memberId);
   } catch {
     // Storage is barred: nothing was kept.
   }

@@ -124,7 +124,8 @@ class JsonReader {
     const scalar = /-?(?:0|[1-9]\d*)(?:\.\d+)?(?:[eE][+-]?\d+)?(?![\w.+-])|(?:true|false|null)\b/y;
     scalar.lastIndex = this.at;
     const found = scalar.exec(this.text)?.[0];
-    if (found === undefined) this.fail("A value should stand here: a number is written 0.5, a text in double quotes");
+    if (found === undefined)
+      this.fail("A value should stand here: a number is written 0.5, a text in double quotes");
     this.at += found.length;
     return JSON.parse(found) as unknown;
   }

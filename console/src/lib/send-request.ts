@@ -28,7 +28,10 @@ export async function sendRequest(request: ServiceRequest): Promise<ServiceAnswe
   if (response.ok) return { status: response.status, body, requestId };
   const problem = problemSchema.safeParse(body);
   if (problem.success) throw new ProblemError(problem.data);
-  throw new NoAnswerError(`The service answered ${response.status} in a form the console cannot read.`, requestId);
+  throw new NoAnswerError(
+    `The service answered ${response.status} in a form the console cannot read.`,
+    requestId,
+  );
 }
 
 async function exchange(request: ServiceRequest): Promise<Response> {
@@ -51,7 +54,10 @@ async function exchange(request: ServiceRequest): Promise<Response> {
 }
 
 async function readBody(response: Response, requestId: string | null): Promise<unknown> {
-  const text = await response.text();
+  const text = await response.text().catch((error: unknown) => {
+    if (error instanceof DOMException && error.name === "AbortError") throw error;
+    throw new NoAnswerError("The answer broke off. Check the connection and try again.", requestId);
+  });
   if (text === "") return null;
   try {
     return JSON.parse(text) as unknown;

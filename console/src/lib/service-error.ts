@@ -19,6 +19,14 @@ export class NoAnswerError extends Error {
   }
 }
 
+/** Whoever sent the call did not wait for its answer. */
+export class CancelledError extends Error {
+  constructor() {
+    super("The call was cancelled.");
+    this.name = "CancelledError";
+  }
+}
+
 /** The same call may succeed when it is sent again unchanged. */
 export function isWorthRetrying(error: unknown): boolean {
   if (error instanceof NoAnswerError) return true;

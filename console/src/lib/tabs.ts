@@ -1,7 +1,5 @@
 /** What the tabs of one browser tell each other. Never a token. */
-export type TabMessage =
-  | { readonly type: "opened"; readonly memberId: string }
-  | { readonly type: "closed" };
+export type TabMessage = { readonly type: "opened"; readonly memberId: string } | { readonly type: "closed" };
 
 const channel = typeof BroadcastChannel === "undefined" ? null : new BroadcastChannel("borewright.session");
 
@@ -19,5 +17,5 @@ export function hearOtherTabs(listener: (message: TabMessage) => void): () => vo
 export function inOneTabAtATime<Result>(work: () => Promise<Result>): Promise<Result> {
   // Locks exist in secure contexts only; over plain http the server's grace for two tabs has to do.
   if (!("locks" in navigator)) return work();
-  return navigator.locks.request("borewright.session", work) as Promise<Result>;
+  return navigator.locks.request("borewright.session", work);
 }

@@ -1,5 +1,5 @@
 import { useCallback, useRef } from "react";
-import { isWorthRetrying, ProblemError } from "./service-error.ts";
+import { CancelledError, isWorthRetrying, ProblemError } from "./service-error.ts";
 
 interface Attempt {
   readonly body: string;
@@ -27,6 +27,7 @@ export function useAttemptKey(): {
 
 /** After these nobody knows yet whether the thing was made: the same key must ask again. */
 function leavesOutcomeOpen(error: unknown): boolean {
+  if (error instanceof CancelledError) return true;
   if (error instanceof ProblemError && error.problem.code === "idempotency_in_progress") return true;
   if (error instanceof ProblemError && error.problem.status === 401) return true;
   return error !== undefined && isWorthRetrying(error);

@@ -1,3 +1,4 @@
+import type { CalculationRecord } from "../../../../shared/schemas/calculations.ts";
 import { Link, useParams, useSearchParams } from "react-router-dom";
 import { Button, ButtonLink } from "../../components/ui/button.tsx";
 import { CopyButton } from "../../components/ui/copy-button.tsx";
@@ -13,30 +14,7 @@ import { useMay, useMember } from "../../lib/use-session.ts";
 
 export function CalculationPage() {
   const { id = "" } = useParams();
-  const [search, setSearch] = useSearchParams();
   const record = useCalculation(id);
-  const member = useMember();
-  const mayReplay = useMay("calculations:write");
-  if (record.isPending) {
-    return (
-      <>
-        <PageHeading title="Record" />
-        <Skeleton what="the record" lines={12} />
-      </>
-    );
-  }
-  if (record.isError) {
-    return (
-      <>
-        <PageHeading title="Record" />
-        {isAbsent(record.error) ? (
-          <NoSuchRecord />
-        ) : (
-          <Failure error={record.error} what="The record could not be read." onRetry={() => void record.refetch()} />
-        )}
-      </>
-    );
-  }
   return (
     <>
       <nav aria-label="Breadcrumb" className="no-print mb-2 text-xs text-muted">
@@ -45,23 +23,53 @@ export function CalculationPage() {
         </Link>
       </nav>
       <PageHeading
-        title={computations[record.data.kind].name}
-        lead={
-          <span className="flex items-center gap-2 text-xs">
-            <span className="break-all">{record.data.id}</span>
-            <CopyButton text={record.data.id} what="record id" />
-          </span>
-        }
+        title={record.isSuccess ? computations[record.data.kind].name : "Record"}
+        lead={<RecordLead id={id} note={record.data?.note ?? null} />}
       >
-        <Button onClick={() => window.print()}>Print sheet</Button>
+        {record.isSuccess && <Button onClick={() => window.print()}>Print sheet</Button>}
       </PageHeading>
-      <RecordSheet
-        record={record.data}
-        owner={member?.organisation.name ?? ""}
-        mayReplay={mayReplay}
-        chosen={search.get("bore")}
-        onChoose={(bore) => setSearch({ bore }, { replace: true, preventScrollReset: true })}
-      />
+      {record.isPending ? (
+        <Skeleton what="the record" lines={12} />
+      ) : record.isSuccess ? (
+        <Sheet record={record.data} />
+      ) : isAbsent(record.error) ? (
+        <NoSuchRecord />
+      ) : (
+        <Failure
+          error={record.error}
+          what="The record could not be read."
+          onRetry={() => void record.refetch()}
+        />
+      )}
+    </>
+  );
+}
+
+function Sheet({ record }: { record: CalculationRecord }) {
+  const [search, setSearch] = useSearchParams();
+  const member = useMember();
+  return (
+    <RecordSheet
+      record={record}
+      owner={member?.organisation.name ?? ""}
+      mayReplay={useMay("calculations:write")}
+      chosen={search.get("bore")}
+      onChoose={(bore) => setSearch({ bore }, { replace: true, preventScrollReset: true })}
+    />
+  );
+}
+
+/** What the caller wrote beside the call, then the id to name it by. */
+function RecordLead({ id, note }: { id: string; note: string | null }) {
+  return (
+    <>
+      {note !== null && note !== "" && (
+        <span className="block break-words whitespace-pre-line text-ink">{note}</span>
+      )}
+      <span className="mt-1 flex items-center gap-2 text-xs">
+        <span className="break-all">{id}</span>
+        <CopyButton text={id} what="record id" />
+      </span>
     </>
   );
 }

@@ -20,7 +20,10 @@ export function CalculationsPage() {
   const keys = useKeyNames(useMay("keys:read"));
   return (
     <>
-      <PageHeading title="Calculations" lead={`Every call leaves a record that does not change. Times are in ${zoneName()}.`}>
+      <PageHeading
+        title="Calculations"
+        lead={`Every call leaves a record that does not change. Times are in ${zoneName()}.`}
+      >
         {mayCompute && (
           <ButtonLink look="main" to={paths.tryCall}>
             Try a call
@@ -38,7 +41,11 @@ function CalculationsList({ search, mayCompute }: { search: URLSearchParams; may
   if (page.isPending) return <Skeleton what="the calculations" lines={9} />;
   if (page.isError) {
     return (
-      <Failure error={page.error} what="The calculations could not be read." onRetry={() => void page.refetch()} />
+      <Failure
+        error={page.error}
+        what="The calculations could not be read."
+        onRetry={() => void page.refetch()}
+      />
     );
   }
   const { data, nextCursor } = page.data;
@@ -78,7 +85,8 @@ function NothingFound({ search, mayCompute }: { search: URLSearchParams; mayComp
         </>
       ) : (
         <p>
-          Records appear here when a colleague or your software computes something. What it takes is written in{" "}
+          Records appear here when a colleague or your software computes something. What it takes is written
+          in{" "}
           <a className="link" href={serverPaths.docs}>
             the documents
           </a>

@@ -12,13 +12,23 @@ import { useMay, useMember } from "../../lib/use-session.ts";
 
 export function KeysPage() {
   const member = useMember();
+  const mayRead = useMay("keys:read");
   const mayIssue = useMay("keys:write");
   return (
     <>
-      <PageHeading title="Keys" lead="What your own software signs its calls with. Each key does what its scopes say and no more.">
+      <PageHeading
+        title="Keys"
+        lead="What your own software signs its calls with. Each key does what its scopes say and no more."
+      >
         {mayIssue && member && <IssueKey role={member.role} />}
       </PageHeading>
-      <KeysList mayIssue={mayIssue} />
+      {mayRead ? (
+        <KeysList mayIssue={mayIssue} />
+      ) : (
+        <Empty title="Your role reads records">
+          Keys are read by engineers, and issued and revoked by developers and administrators.
+        </Empty>
+      )}
     </>
   );
 }
@@ -29,7 +39,9 @@ function KeysList({ mayIssue }: { mayIssue: boolean }) {
   const keys = useKeys(cursor);
   if (keys.isPending) return <Skeleton what="the keys" />;
   if (keys.isError) {
-    return <Failure error={keys.error} what="The keys could not be read." onRetry={() => void keys.refetch()} />;
+    return (
+      <Failure error={keys.error} what="The keys could not be read." onRetry={() => void keys.refetch()} />
+    );
   }
   if (keys.data.data.length === 0) {
     return (

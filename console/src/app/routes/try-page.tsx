@@ -1,5 +1,7 @@
+import { useEffect, useRef } from "react";
 import { useSearchParams } from "react-router-dom";
 import { calculationKinds } from "../../../../shared/schemas/calculations.ts";
+import { Button } from "../../components/ui/button.tsx";
 import { Empty } from "../../components/ui/empty.tsx";
 import { Failure } from "../../components/ui/failure.tsx";
 import { Field } from "../../components/ui/field.tsx";
@@ -32,7 +34,9 @@ export function TryPage() {
         }
       />
       {!may ? (
-        <Empty title="Your role reads records">Computing takes an engineer, a developer or an administrator.</Empty>
+        <Empty title="Your role reads records">
+          Computing takes an engineer, a developer or an administrator.
+        </Empty>
       ) : examples.isPending ? (
         <Skeleton what="the examples" lines={12} />
       ) : examples.isError ? (
@@ -48,26 +52,33 @@ export function TryPage() {
   );
 }
 
-function Bench({ endpoints }: { endpoints: Record<CalculationKind, Endpoint> }) {
+function Bench({ endpoints }: { endpoints: ReadonlyMap<CalculationKind, Endpoint> }) {
   const [search, setSearch] = useSearchParams();
   const send = useSendCall();
-  const kind = calculationKinds.find((known) => computations[known].resource === search.get("endpoint")) ?? "bore-fit";
-  const { examples, summary } = endpoints[kind];
+  const kind =
+    calculationKinds.find((known) => computations[known].resource === search.get("endpoint")) ?? "bore-fit";
+  const { examples, summary } = endpoints.get(kind) ?? { examples: [], summary: "" };
   const example = examples.find(({ name }) => name === search.get("example")) ?? examples[0];
   const { path, resource } = computations[kind];
   const choose = (next: Record<string, string>): void => {
     send.reset();
     setSearch(next, { replace: true });
   };
+  const answer = useShown(send.isSuccess || send.isError);
   const sent = send.variables;
   const problem = send.error instanceof ProblemError ? send.error.problem : null;
   return (
-    <div className="grid gap-10 2xl:grid-cols-2">
+    <div className="grid gap-10 xl:grid-cols-2">
       <section className="min-w-0" aria-label="Call">
         <div className="mb-4 grid gap-3 sm:grid-cols-2">
           <Field label="Endpoint" hint={summary}>
             {(attributes) => (
-              <select {...attributes} className="control" value={resource} onChange={(event) => choose({ endpoint: event.target.value })}>
+              <select
+                {...attributes}
+                className="control"
+                value={resource}
+                onChange={(event) => choose({ endpoint: event.target.value })}
+              >
                 {calculationKinds.map((known) => (
                   <option key={known} value={computations[known].resource}>
                     POST {computations[known].path}
@@ -103,17 +114,36 @@ function Bench({ endpoints }: { endpoints: Record<CalculationKind, Endpoint> }) 
         />
       </section>
       <section className="min-w-0" aria-label="Answer" aria-live="polite" aria-busy={send.isPending}>
-        <SectionHeading>Answer</SectionHeading>
+        <div ref={answer} className="scroll-mb-[60vh]">
+          <SectionHeading>Answer</SectionHeading>
+        </div>
         {send.isPending ? (
-          <Skeleton what="the answer" />
+          <>
+            <p className="late mb-4 flex items-center gap-4">
+              <span>Computing</span>
+              <Button onClick={send.cancel}>Cancel call</Button>
+            </p>
+            <Skeleton what="the answer" />
+          </>
         ) : send.isError ? (
           <CallRefusal error={send.error} />
         ) : send.isSuccess && sent ? (
           <CallAnswer key={sent.bodyText} kind={kind} request={sent.request} answer={send.data} />
         ) : (
-          <p className="text-muted">Send the call to see its answer here, with the figure and the record it leaves.</p>
+          <p className="text-muted">
+            Send the call to see its answer here, with the figure and the record it leaves.
+          </p>
         )}
       </section>
     </div>
   );
+}
+
+/** Where answers stand under the call, an answer that came is brought into view; beside it nothing moves. */
+function useShown(settled: boolean) {
+  const ref = useRef<HTMLDivElement>(null);
+  useEffect(() => {
+    if (settled) ref.current?.scrollIntoView({ block: "nearest" });
+  }, [settled]);
+  return ref;
 }

@@ -18,7 +18,14 @@ interface ButtonProps extends ComponentProps<"button"> {
   busy?: boolean;
 }
 
-export function Button({ look = "plain", busy = false, className, disabled, children, ...rest }: ButtonProps) {
+export function Button({
+  look = "plain",
+  busy = false,
+  className,
+  disabled,
+  children,
+  ...rest
+}: ButtonProps) {
   return (
     <button
       type="button"

@@ -47,7 +47,11 @@ export function CopyButton({ text, what, label, className }: CopyButtonProps) {
 function CopyMark({ done }: { done: boolean }) {
   return (
     <svg viewBox="0 0 12 12" width="12" height="12" fill="none" stroke="currentColor" aria-hidden="true">
-      {done ? <path d="M2 6.5 5 9.5 10.5 2.5" strokeWidth="1.5" /> : <path d="M3.5 3.5v-2h7v7h-2M1.5 3.5h7v7h-7z" />}
+      {done ? (
+        <path d="M2 6.5 5 9.5 10.5 2.5" strokeWidth="1.5" />
+      ) : (
+        <path d="M3.5 3.5v-2h7v7h-2M1.5 3.5h7v7h-7z" />
+      )}
     </svg>
   );
 }

@@ -3,6 +3,7 @@ import { joinClasses } from "./join-classes.ts";
 
 export interface DataColumn<Row> {
   readonly heading: string;
+  /** Null where the row has nothing to say: a stacked row then leaves the field out. */
   readonly cell: (row: Row) => ReactNode;
   readonly align?: "end";
   /** Takes the whole line when rows are stacked on a narrow screen. */
@@ -48,24 +49,27 @@ export function DataTable<Row>({ caption, columns, rows, rowKey }: DataTableProp
             role="row"
             className="border-b border-hair align-baseline max-lg:grid max-lg:grid-cols-[auto_1fr] max-lg:gap-x-4 max-lg:gap-y-1 max-lg:py-3"
           >
-            {columns.map((column) => (
-              <td
-                key={column.heading}
-                role="cell"
-                className={joinClasses(
-                  "min-w-0 lg:px-2 lg:py-2.5 lg:first:pl-0 lg:last:pr-0",
-                  column.align === "end" && "lg:text-right",
-                  column.lead ? "max-lg:col-span-2" : "max-lg:contents",
-                )}
-              >
-                {!column.lead && (
-                  <span className="field-name pt-0.5 lg:hidden" aria-hidden="true">
-                    {column.heading}
-                  </span>
-                )}
-                <div className="min-w-0">{column.cell(row)}</div>
-              </td>
-            ))}
+            {columns.map((column) => {
+              const cell = column.cell(row);
+              return (
+                <td
+                  key={column.heading}
+                  role="cell"
+                  className={joinClasses(
+                    "min-w-0 lg:px-2 lg:py-2.5 lg:first:pl-0 lg:last:pr-0",
+                    column.align === "end" && "lg:text-right",
+                    cell === null ? "max-lg:hidden" : column.lead ? "max-lg:col-span-2" : "max-lg:contents",
+                  )}
+                >
+                  {!column.lead && (
+                    <span className="field-name pt-0.5 lg:hidden" aria-hidden="true">
+                      {column.heading}
+                    </span>
+                  )}
+                  <div className="min-w-0">{cell}</div>
+                </td>
+              );
+            })}
           </tr>
         ))}
       </tbody>

@@ -1,4 +1,4 @@
-import { useEffect, useId, useRef, type ReactNode } from "react";
+import { useEffect, useId, useRef, useState, type ReactNode } from "react";
 
 interface DialogProps {
   title: string;
@@ -9,20 +9,24 @@ interface DialogProps {
 
 /**
  * A modal dialog while it is mounted. The browser's own element keeps focus inside and the page behind inert; where
- * focus was before, it goes back to.
+ * focus was before, it goes back to. It begins at what is marked `data-first-focus`, else at the first control.
  */
 export function Dialog({ title, onDismiss, children }: DialogProps) {
   const ref = useRef<HTMLDialogElement>(null);
   const titleId = useId();
+  const [before] = useState(() => document.activeElement);
   useEffect(() => {
-    const opener = document.activeElement;
     const dialog = ref.current;
+    // One dialog may follow another, whose end has just put focus back; focus inside is the page's own doing.
+    const now = document.activeElement;
+    const opener = dialog?.contains(now) ? before : now;
     if (dialog && !dialog.open) dialog.showModal();
+    dialog?.querySelector<HTMLElement>("[data-first-focus]")?.focus();
     return () => {
       dialog?.close();
       if (opener instanceof HTMLElement && opener.isConnected) opener.focus();
     };
-  }, []);
+  }, [before]);
   return (
     <dialog
       ref={ref}

@@ -1,5 +1,5 @@
 import type { ReactNode } from "react";
-import { NoAnswerError, ProblemError } from "../../lib/service-error.ts";
+import { CancelledError, NoAnswerError, ProblemError } from "../../lib/service-error.ts";
 import { Button } from "./button.tsx";
 import { CopyButton } from "./copy-button.tsx";
 
@@ -39,6 +39,13 @@ function explain(error: unknown): { sentence: string; fix?: string | undefined; 
   if (error instanceof ProblemError) {
     const { problem } = error;
     return { sentence: problem.detail || problem.title, fix: problem.fix, requestId: problem.requestId };
+  }
+  if (error instanceof CancelledError) {
+    return {
+      sentence: "It was not waited for. The service may have computed it all the same.",
+      fix: "Sent again unchanged, it leaves no second record.",
+      requestId: null,
+    };
   }
   if (error instanceof NoAnswerError) return { sentence: error.message, requestId: error.requestId };
   return { sentence: "Something in this page failed. Reload it; what was typed is kept.", requestId: null };

@@ -45,7 +45,8 @@ function whereOf(fault: Fault): string {
 }
 
 function writeLimits({ value, unit, allowed }: Fault): string {
-  const sent = value === undefined ? [] : [`sent ${JSON.stringify(value)}${unit === undefined ? "" : ` ${unit}`}`];
+  const sent =
+    value === undefined ? [] : [`sent ${JSON.stringify(value)}${unit === undefined ? "" : ` ${unit}`}`];
   const least = allowed?.min === undefined ? [] : [`least ${allowed.min}`];
   const most = allowed?.max === undefined ? [] : [`most ${allowed.max}`];
   const inUnit = allowed?.unit === undefined || least.length + most.length === 0 ? "" : ` ${allowed.unit}`;

@@ -1,10 +1,11 @@
 import { useState } from "react";
+import { writeJson } from "../../lib/write-json.ts";
 import { CopyButton } from "./copy-button.tsx";
 
 /** A stored or answered body, closed until asked for. */
 export function JsonView({ title, value }: { title: string; value: unknown }) {
   const [open, setOpen] = useState(false);
-  const write = (): string => JSON.stringify(value, null, 2);
+  const write = (): string => writeJson(value);
   return (
     <details className="no-print border border-hair" onToggle={(event) => setOpen(event.currentTarget.open)}>
       <summary className="cursor-pointer px-3 py-2">{title}</summary>

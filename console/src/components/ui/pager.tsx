@@ -11,8 +11,18 @@ export function Pager({ newest, older }: PagerProps) {
   if (newest === null && older === null) return null;
   return (
     <nav aria-label="Pages" className="no-print mt-4 flex justify-between gap-4">
-      {newest === null ? <span /> : <Link className="link py-2" to={newest}>Newest</Link>}
-      {older !== null && <Link className="link py-2" to={older}>Older</Link>}
+      {newest === null ? (
+        <span />
+      ) : (
+        <Link className="link py-2" to={newest}>
+          Newest
+        </Link>
+      )}
+      {older !== null && (
+        <Link className="link py-2" to={older}>
+          Older
+        </Link>
+      )}
     </nav>
   );
 }

@@ -5,7 +5,13 @@ export function ShapeView({ shape }: { shape: Shape }) {
   switch (shape.kind) {
     case "line":
       return (
-        <line x1={round(shape.from.x)} y1={round(shape.from.y)} x2={round(shape.to.x)} y2={round(shape.to.y)} {...stroke(shape.pen)} />
+        <line
+          x1={round(shape.from.x)}
+          y1={round(shape.from.y)}
+          x2={round(shape.to.x)}
+          y2={round(shape.to.y)}
+          {...stroke(shape.pen)}
+        />
       );
     case "path": {
       const points = shape.points.map(({ x, y }) => `${round(x)},${round(y)}`).join(" ");
@@ -14,7 +20,12 @@ export function ShapeView({ shape }: { shape: Shape }) {
     }
     case "circle":
       return (
-        <circle cx={round(shape.centre.x)} cy={round(shape.centre.y)} r={round(shape.radius)} {...stroke(shape.pen, shape.fill)} />
+        <circle
+          cx={round(shape.centre.x)}
+          cy={round(shape.centre.y)}
+          r={round(shape.radius)}
+          {...stroke(shape.pen, shape.fill)}
+        />
       );
     case "arc": {
       const from = onClock(shape.centre, shape.radius, shape.startDeg);

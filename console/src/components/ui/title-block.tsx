@@ -15,7 +15,7 @@ export function TitleBlock({ label, fields }: { label: string; fields: readonly 
   return (
     <dl
       aria-label={label}
-      className="keep-together grid grid-cols-2 gap-px border border-ink bg-rule md:grid-cols-4"
+      className="title-block keep-together grid grid-flow-row-dense grid-cols-2 gap-px border border-ink bg-rule md:grid-cols-4"
     >
       {fields.map((field) => (
         <div key={field.name} className={joinClasses("min-w-0 bg-sheet px-3 py-2", spans[field.span ?? 1])}>

@@ -13,6 +13,8 @@ export function calculationsQuery(search: URLSearchParams) {
   return queryOptions({
     queryKey: ["calculations", "list", query],
     placeholderData: keepPreviousData,
+    // Whoever comes back to the list wants what was computed meanwhile.
+    staleTime: 0,
     queryFn: async ({ signal }) => {
       const path = `${apiPaths.calculations}?${query}`;
       return readAnswer(calculationPage, await callAsMember({ method: "GET", path, signal }));

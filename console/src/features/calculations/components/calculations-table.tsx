@@ -8,7 +8,14 @@ import { Maker } from "./maker.tsx";
 import { RecordStatus } from "./record-status.tsx";
 
 export function CalculationsTable({ records }: { records: readonly CalculationSummary[] }) {
-  return <DataTable caption="Calculations, newest first" columns={columns} rows={records} rowKey={(record) => record.id} />;
+  return (
+    <DataTable
+      caption="Calculations, newest first"
+      columns={columns}
+      rows={records}
+      rowKey={(record) => record.id}
+    />
+  );
 }
 
 const columns: DataColumn<CalculationSummary>[] = [

@@ -43,14 +43,25 @@ export function Filters({ search, keys, onApply }: FiltersProps) {
         />
       )}
       <Field label="From day">
-        {(attributes) => <input {...attributes} type="date" name="from" defaultValue={chosen("from")} className="control" />}
+        {(attributes) => (
+          <input {...attributes} type="date" name="from" defaultValue={chosen("from")} className="control" />
+        )}
       </Field>
       <Field label="To day">
-        {(attributes) => <input {...attributes} type="date" name="to" defaultValue={chosen("to")} className="control" />}
+        {(attributes) => (
+          <input {...attributes} type="date" name="to" defaultValue={chosen("to")} className="control" />
+        )}
       </Field>
       <Field label="Note or id">
         {(attributes) => (
-          <input {...attributes} type="search" name="q" maxLength={100} defaultValue={chosen("q")} className="control" />
+          <input
+            {...attributes}
+            type="search"
+            name="q"
+            maxLength={100}
+            defaultValue={chosen("q")}
+            className="control"
+          />
         )}
       </Field>
       <div className="col-span-2 flex flex-wrap gap-2 sm:col-span-4 xl:col-span-1">

@@ -17,7 +17,7 @@ interface RecordSheetProps {
 /** A record as a sheet: the figure first, the tables under it, what was sent and answered, the title block at its foot. */
 export function RecordSheet({ record, owner, mayReplay, chosen, onChoose }: RecordSheetProps) {
   return (
-    <article className="grid gap-10">
+    <article className="sheet-stack">
       {record.problem !== null ? (
         <Refusal problem={record.problem} />
       ) : (

@@ -31,21 +31,26 @@ export function RecordTitleBlock({ record, owner }: RecordTitleBlockProps) {
               <span className="block text-xs text-muted">{writeUtc(new Date(record.createdAt))}</span>
             </>
           ),
+          span: 2,
         },
-        { name: "sheet", value: "1 / 1" },
         { name: "creator", value: <Maker record={record} />, span: 2 },
         { name: "approval person", value: <span className="text-muted">not approved</span>, span: 2 },
+        { name: "sheet", value: "1 / 1" },
         { name: "status", value: <RecordStatus status={record.status} /> },
         { name: "engine", value: record.engineVersion },
         { name: "took", value: `${record.durationMs.toFixed(2)} ms` },
-        { name: "request", value: <Copied text={record.requestId} what="request id" /> },
         { name: "input hash", value: <Copied text={record.inputHash} what="input hash" />, span: 2 },
         {
           name: "result hash",
           value: record.resultHash === null ? "–" : <Copied text={record.resultHash} what="result hash" />,
           span: 2,
         },
-        ...(record.note ? [{ name: "note", value: record.note, span: 4 as const }] : []),
+        {
+          name: "request",
+          value: <Copied text={record.requestId} what="request id" />,
+          span: record.note ? 2 : 4,
+        },
+        ...(record.note ? [{ name: "note", value: record.note, span: 2 as const }] : []),
       ]}
     />
   );

@@ -9,8 +9,8 @@ export function Replay({ id }: { id: string }) {
   return (
     <div className="grid justify-items-start gap-3">
       <p className="max-w-prose text-muted">
-        Computes the stored call again with today's engine and compares every number with what is stored. The record stays
-        as it is.
+        Computes the stored call again with today's engine and compares every number with what is stored. The
+        record stays as it is.
       </p>
       <Button busy={replay.isPending} onClick={() => replay.mutate()}>
         Replay record
@@ -31,7 +31,8 @@ function Outcome({ answer }: { answer: ReplayAnswer }) {
   if (answer.same) {
     return (
       <p>
-        <strong className="font-semibold">same</strong>: {engines} answers exactly what is stored, to the last digit.
+        <strong className="font-semibold">same</strong>: {engines} answers exactly what is stored, to the last
+        digit.
       </p>
     );
   }
@@ -58,8 +59,8 @@ function Outcome({ answer }: { answer: ReplayAnswer }) {
                 <th scope="row" className="px-2 py-1 text-left font-normal">
                   {difference.pointer}
                 </th>
-                <td className="px-2 py-1">{writeValue(difference.then)}</td>
-                <td className="px-2 py-1">{writeValue(difference.now)}</td>
+                <td className="px-2 py-1">{JSON.stringify(difference.then)}</td>
+                <td className="px-2 py-1">{JSON.stringify(difference.now)}</td>
               </tr>
             ))}
           </tbody>
@@ -67,8 +68,4 @@ function Outcome({ answer }: { answer: ReplayAnswer }) {
       </div>
     </div>
   );
-}
-
-function writeValue(value: unknown): string {
-  return value === undefined ? "absent" : JSON.stringify(value);
 }

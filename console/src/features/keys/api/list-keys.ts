@@ -9,6 +9,8 @@ export function keysQuery(cursor: string | null) {
   return queryOptions({
     queryKey: [...keysKey, cursor],
     placeholderData: keepPreviousData,
+    // Keys are issued and revoked elsewhere too.
+    staleTime: 0,
     queryFn: async ({ signal }) => {
       const query = cursor === null ? "" : `?cursor=${encodeURIComponent(cursor)}`;
       return readAnswer(keyPage, await callAsMember({ method: "GET", path: apiPaths.keys + query, signal }));

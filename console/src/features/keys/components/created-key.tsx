@@ -7,8 +7,8 @@ export function CreatedKey({ created, onDone }: { created: Created; onDone: () =
   return (
     <div className="grid gap-4">
       <p>
-        This is the key <strong className="font-semibold break-words">{created.name}</strong>. It is shown this once: copy it
-        to where it will be used. Only a fingerprint of it is kept here.
+        This is the key <strong className="font-semibold break-words">{created.name}</strong>. It is shown
+        this once: copy it to where it will be used. Only a fingerprint of it is kept here.
       </p>
       <p className="border border-ink bg-well p-3 font-semibold break-all select-all" data-testid="secret">
         {created.secret}

@@ -42,15 +42,31 @@ export function IssueKeyForm({ role, onIssued, onCancel }: IssueKeyFormProps) {
     <form onSubmit={submit} noValidate className="grid gap-5">
       <Field label="Name" hint="What the key is for, as “outage planning, unit 2”." error={faults["name"]}>
         {(attributes) => (
-          <input {...attributes} name="name" className="control" maxLength={limits.nameLength} autoComplete="off" autoFocus />
+          <input
+            {...attributes}
+            name="name"
+            className="control"
+            maxLength={limits.nameLength}
+            autoComplete="off"
+            autoFocus
+          />
         )}
       </Field>
       <fieldset aria-describedby={faults["scopes"] ? "scopes-error" : undefined}>
         <legend className="field-name mb-1">What it may do</legend>
         <div className="border border-hair">
           {scopesOfRole(role).map((scope) => (
-            <label key={scope} className="flex cursor-pointer items-baseline gap-3 border-b border-hair px-3 py-1.5 last:border-b-0 hover:bg-well">
-              <input type="checkbox" name="scopes" value={scope} defaultChecked={scope.startsWith("calculations:")} className="accent-ink" />
+            <label
+              key={scope}
+              className="flex cursor-pointer items-baseline gap-3 border-b border-hair px-3 py-1.5 last:border-b-0 hover:bg-well"
+            >
+              <input
+                type="checkbox"
+                name="scopes"
+                value={scope}
+                defaultChecked={scope.startsWith("calculations:")}
+                className="accent-ink"
+              />
               <span className="min-w-0">
                 {scopeWords[scope]}
                 <span className="block text-xs text-muted">{scope}</span>

@@ -18,7 +18,11 @@ export function IssueKey({ role }: { role: Member["role"] }) {
       </Button>
       {stage.name === "form" && (
         <Dialog title="Issue key" onDismiss={close}>
-          <IssueKeyForm role={role} onCancel={close} onIssued={(created) => setStage({ name: "shown", created })} />
+          <IssueKeyForm
+            role={role}
+            onCancel={close}
+            onIssued={(created) => setStage({ name: "shown", created })}
+          />
         </Dialog>
       )}
       {stage.name === "shown" && (

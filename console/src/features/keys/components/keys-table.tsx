@@ -16,7 +16,11 @@ export function KeysTable({ keys, mayRevoke }: { keys: readonly Key[]; mayRevoke
 }
 
 const columns: DataColumn<Key>[] = [
-  { heading: "name", lead: true, cell: (key) => <span className="font-semibold break-words">{key.name}</span> },
+  {
+    heading: "name",
+    lead: true,
+    cell: (key) => <span className="font-semibold break-words">{key.name}</span>,
+  },
   {
     heading: "key",
     cell: (key) => (
@@ -36,8 +40,11 @@ const columns: DataColumn<Key>[] = [
       </ul>
     ),
   },
-  { heading: "status", cell: (key) => <KeyStatus status={key.status} /> },
-  { heading: "last used", cell: (key) => (key.lastUsedAt === null ? "not yet" : <Instant at={key.lastUsedAt} />) },
+  { heading: "status", cell: (key) => <KeyStatus apiKey={key} /> },
+  {
+    heading: "last used",
+    cell: (key) => (key.lastUsedAt === null ? "not yet" : <Instant at={key.lastUsedAt} />),
+  },
   { heading: "expires", cell: (key) => (key.expiresAt === null ? "never" : <Instant at={key.expiresAt} />) },
   { heading: "issued by", cell: (key) => key.createdBy?.name ?? "–" },
 ];
@@ -45,9 +52,19 @@ const columns: DataColumn<Key>[] = [
 const revokeColumn: DataColumn<Key> = {
   heading: "action",
   align: "end",
-  cell: (key) => (key.status === "revoked" ? "" : <RevokeKey apiKey={key} />),
+  cell: (key) => (key.status === "revoked" ? null : <RevokeKey apiKey={key} />),
 };
 
-function KeyStatus({ status }: { status: Key["status"] }) {
-  return <span className={status === "active" ? undefined : "text-muted line-through decoration-1"}>{status}</span>;
+function KeyStatus({ apiKey: { status, revokedAt } }: { apiKey: Key }) {
+  if (status === "active") return status;
+  return (
+    <span className="text-muted">
+      {status}
+      {revokedAt !== null && (
+        <span className="block text-xs">
+          <Instant at={revokedAt} />
+        </span>
+      )}
+    </span>
+  );
 }

@@ -20,8 +20,8 @@ export function RevokeKey({ apiKey }: { apiKey: Key }) {
       {asking && (
         <Dialog title={`Revoke key “${apiKey.name}”?`} onDismiss={close}>
           <p>
-            Whatever sends <span className="font-semibold break-all">{apiKey.prefix}…</span> is refused from this moment on. This
-            cannot be undone; its records stay.
+            Whatever sends <span className="font-semibold break-all">{apiKey.prefix}…</span> is refused from
+            this moment on. This cannot be undone; its records stay.
           </p>
           {revoke.isError && (
             <div className="mt-4">
@@ -32,7 +32,11 @@ export function RevokeKey({ apiKey }: { apiKey: Key }) {
             <Button onClick={close} autoFocus>
               Keep key
             </Button>
-            <Button look="grave" busy={revoke.isPending} onClick={() => revoke.mutate(apiKey.id, { onSuccess: close })}>
+            <Button
+              look="grave"
+              busy={revoke.isPending}
+              onClick={() => revoke.mutate(apiKey.id, { onSuccess: close })}
+            >
               Revoke key
             </Button>
           </div>

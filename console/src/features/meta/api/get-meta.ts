@@ -4,12 +4,15 @@ import { apiPaths } from "../../../config/paths.ts";
 import { readAnswer } from "../../../lib/call-api.ts";
 import { sendRequest } from "../../../lib/send-request.ts";
 
+/** What of it the console shows. */
+export const shownMeta = metaSchema.pick({ engineVersion: true, cautions: true });
+
 /** What the service says of itself, its cautions among it. Anyone may read it. */
 export const metaQuery = queryOptions({
   queryKey: ["meta"],
   staleTime: 3_600_000,
   queryFn: async ({ signal }) =>
-    readAnswer(metaSchema, await sendRequest({ method: "GET", path: apiPaths.meta, signal })),
+    readAnswer(shownMeta, await sendRequest({ method: "GET", path: apiPaths.meta, signal })),
 });
 
 export function useMeta() {

@@ -9,7 +9,7 @@ export function Cautions() {
   const meta = useMeta();
   const cautions = meta.data?.cautions ?? [{ code: "least", text: leastCaution }];
   return (
-    <section aria-label="Cautions" className="text-xs text-muted">
+    <section aria-label="Cautions" className="keep-together text-xs text-muted">
       <h2 className="font-semibold text-ink">Cautions</h2>
       <ul className="mt-1 gap-x-10 md:columns-2">
         {cautions.map((caution) => (

@@ -1,24 +1,34 @@
 import { drawPlanElevation } from "../../../../../shared/figures/plan-elevation/draw-plan-elevation.ts";
-import { planElevationOf } from "../../../../../shared/figures/plan-elevation/plan-elevation-of.ts";
+import type { Survey } from "../../../../../shared/figures/plan-elevation/plan-elevation-model.ts";
+import {
+  planElevationOf,
+  type PlannedCall,
+} from "../../../../../shared/figures/plan-elevation/plan-elevation-of.ts";
 import { tabulateAxis } from "../../../../../shared/figures/plan-elevation/tabulate-axis.ts";
 import { tabulatePlanElevation } from "../../../../../shared/figures/plan-elevation/tabulate-plan-elevation.ts";
-import type { AxisDeviationRequest, AxisDeviationResult as Result } from "../../../../../shared/schemas/axis-deviations.ts";
+import type { AxisDeviationResult as Result } from "../../../../../shared/schemas/axis-deviations.ts";
 import { FigureView } from "../../../components/ui/figure-view.tsx";
 import { NumberTable } from "../../../components/ui/number-table.tsx";
 import { VerdictWord } from "../../../components/ui/verdict-mark.tsx";
 import { Warnings, type PlacedWarning } from "./warnings.tsx";
 
+interface AxisDeviationResultProps {
+  call: PlannedCall;
+  result: Result;
+  /** As left by prediction, drawn over what was found. */
+  predicted?: Survey;
+}
+
 /** Figure 2, what became of the stations in one line, and the numbers. */
-export function AxisDeviationResult({ request, result }: { request: AxisDeviationRequest; result: Result }) {
-  const model = planElevationOf(request, result);
+export function AxisDeviationResult({ call, result, predicted }: AxisDeviationResultProps) {
+  const model = planElevationOf(call, result, predicted);
+  const [found] = tabulatePlanElevation(model);
   return (
-    <div className="grid gap-8">
+    <div className="sheet-stack">
       <FigureView number={2} draw={(width) => drawPlanElevation(model, width)} />
       <Summary summary={result.summary} />
-      {tabulatePlanElevation(model).map((table) => (
-        <NumberTable key={table.caption} table={table} />
-      ))}
-      <NumberTable table={tabulateAxis(result.axis, request.units)} />
+      {found && <NumberTable table={found} />}
+      <NumberTable table={tabulateAxis(result.axis, call.units)} />
       <Warnings warnings={warningsOf(result)} />
     </div>
   );
@@ -40,7 +50,8 @@ function Summary({ summary }: { summary: Result["summary"] }) {
         <div>
           <dt className="field-name">uses most of its tolerance</dt>
           <dd className="text-xl">
-            {summary.worst.id} <span className="whitespace-nowrap">{(summary.worst.ratio * 100).toFixed(0)} %</span>
+            {summary.worst.id}{" "}
+            <span className="whitespace-nowrap">{(summary.worst.ratio * 100).toFixed(0)} %</span>
           </dd>
         </div>
       )}
@@ -51,6 +62,8 @@ function Summary({ summary }: { summary: Result["summary"] }) {
 function warningsOf(result: Result): PlacedWarning[] {
   return [
     ...result.axis.warnings.map((warning) => ({ where: "axis", ...warning })),
-    ...result.stations.flatMap((station) => station.warnings.map((warning) => ({ where: station.id, ...warning }))),
+    ...result.stations.flatMap((station) =>
+      station.warnings.map((warning) => ({ where: station.id, ...warning })),
+    ),
   ];
 }

@@ -13,7 +13,11 @@ export function BoreChoice({ ids, index, onChoose }: BoreChoiceProps) {
   const step = (by: number) => {
     const next = ids[index + by];
     return (
-      <Button className="min-h-10" disabled={next === undefined} onClick={() => next !== undefined && onChoose(next)}>
+      <Button
+        className="min-h-10"
+        disabled={next === undefined}
+        onClick={() => next !== undefined && onChoose(next)}
+      >
         {by < 0 ? "Previous" : "Next"}
       </Button>
     );
@@ -24,7 +28,12 @@ export function BoreChoice({ ids, index, onChoose }: BoreChoiceProps) {
         <label htmlFor={id} className="field-name mb-1 block">
           Bore shown, {index + 1} of {ids.length}
         </label>
-        <select id={id} className="control" value={ids[index]} onChange={(event) => onChoose(event.target.value)}>
+        <select
+          id={id}
+          className="control"
+          value={ids[index]}
+          onChange={(event) => onChoose(event.target.value)}
+        >
           {ids.map((name) => (
             <option key={name}>{name}</option>
           ))}

@@ -9,7 +9,7 @@ import { BoreChoice } from "./bore-choice.tsx";
 import { Warnings, type PlacedWarning } from "./warnings.tsx";
 
 interface BoreFitResultProps {
-  request: BoreFitRequest;
+  request: Pick<BoreFitRequest, "units" | "seen" | "bores">;
   fits: readonly Fit[];
   /** Id of the bore whose section is shown; the first when it names none. */
   chosen: string | null;
@@ -25,13 +25,15 @@ export function BoreFitResult({ request, fits, chosen, onChoose }: BoreFitResult
   if (!fit || !bore) return null;
   const model = boreSectionOf(bore, fit, request.units, request.seen);
   return (
-    <div className="grid gap-8">
+    <div className="sheet-stack">
       {fits.length > 1 && <BoreChoice ids={fits.map(({ id }) => id)} index={index} onChoose={onChoose} />}
       {model === null ? (
-        <p className="text-muted">Readings of this form are not wall points, so there is no bore section to draw.</p>
+        <p className="text-muted">
+          Readings of this form are not wall points, so there is no bore section to draw.
+        </p>
       ) : (
-        <div className="grid items-start gap-8 lg:grid-cols-[minmax(0,38rem)_minmax(0,1fr)]">
-          <FigureView number={1} draw={(width) => drawBoreSection(model, width)} />
+        <div className="sheet-stack items-start lg:grid-cols-[minmax(0,38rem)_minmax(0,1fr)]">
+          <FigureView number={1} printWidthMm={130} draw={(width) => drawBoreSection(model, width)} />
           <NumberTable key={model.id} table={tabulateBoreSection(model)} />
         </div>
       )}

@@ -1,7 +1,9 @@
 import { useMemo } from "react";
 import { readCalculation } from "./read-calculation.ts";
 import type { CalculationKind } from "../../../config/paths.ts";
+import { AlignmentResult } from "./alignment-result.tsx";
 import { AxisDeviationResult } from "./axis-deviation-result.tsx";
+import { ShimMoveResult } from "./shim-move-result.tsx";
 import { BoreFitResult } from "./bore-fit-result.tsx";
 
 interface CalculationResultProps {
@@ -19,7 +21,8 @@ export function CalculationResult({ kind, request, response, chosen, onChoose }:
   if (read === null) {
     return (
       <p className="max-w-prose text-muted">
-        This answer was made by an engine version whose form the console does not draw. Its JSON below is whole.
+        This answer was made by an engine version whose form the console does not draw. Its JSON below is
+        whole.
       </p>
     );
   }
@@ -27,6 +30,12 @@ export function CalculationResult({ kind, request, response, chosen, onChoose }:
     case "bore-fit":
       return <BoreFitResult request={read.request} fits={read.fits} chosen={chosen} onChoose={onChoose} />;
     case "axis-deviation":
-      return <AxisDeviationResult request={read.request} result={read.result} />;
+      return <AxisDeviationResult call={read.request} result={read.result} />;
+    case "alignment":
+      return (
+        <AlignmentResult request={read.request} result={read.result} chosen={chosen} onChoose={onChoose} />
+      );
+    case "shim-move":
+      return <ShimMoveResult request={read.request} result={read.result} />;
   }
 }

@@ -1,4 +1,10 @@
 import {
+  alignmentRequest,
+  alignmentResponse,
+  type AlignmentRequest,
+  type AlignmentResult,
+} from "../../../../../shared/schemas/alignments.ts";
+import {
   axisDeviationRequest,
   axisDeviationResponse,
   type AxisDeviationRequest,
@@ -10,14 +16,38 @@ import {
   type BoreFitRequest,
   type BoreFitResult,
 } from "../../../../../shared/schemas/bore-fits.ts";
+import {
+  shimMoveRequest,
+  shimMoveResponse,
+  type ShimMoveRequest,
+  type ShimMoveResult,
+} from "../../../../../shared/schemas/shim-moves.ts";
 import type { CalculationKind } from "../../../config/paths.ts";
 
 export type ReadCalculation =
   | { readonly kind: "bore-fit"; readonly request: BoreFitRequest; readonly fits: readonly BoreFitResult[] }
-  | { readonly kind: "axis-deviation"; readonly request: AxisDeviationRequest; readonly result: AxisDeviationResult };
+  | {
+      readonly kind: "axis-deviation";
+      readonly request: AxisDeviationRequest;
+      readonly result: AxisDeviationResult;
+    }
+  | {
+      readonly kind: "shim-move";
+      readonly request: ShimMoveRequest;
+      readonly result: ShimMoveResult;
+    }
+  | {
+      readonly kind: "alignment";
+      readonly request: AlignmentRequest;
+      readonly result: AlignmentResult;
+    };
 
-/** A call and its answer in the forms of this version; null when a record of another version has other forms. */
-export function readCalculation(kind: CalculationKind, request: unknown, response: unknown): ReadCalculation | null {
+/** A call and its answer in the forms of this version; null where the forms are of another version, or are not drawn. */
+export function readCalculation(
+  kind: CalculationKind,
+  request: unknown,
+  response: unknown,
+): ReadCalculation | null {
   switch (kind) {
     case "bore-fit": {
       const [sent, answered] = [boreFitRequest.safeParse(request), boreFitResponse.safeParse(response)];
@@ -26,12 +56,27 @@ export function readCalculation(kind: CalculationKind, request: unknown, respons
         : null;
     }
     case "axis-deviation": {
-      const [sent, answered] = [axisDeviationRequest.safeParse(request), axisDeviationResponse.safeParse(response)];
+      const [sent, answered] = [
+        axisDeviationRequest.safeParse(request),
+        axisDeviationResponse.safeParse(response),
+      ];
       return sent.success && answered.success
         ? { kind, request: sent.data, result: answered.data.result }
         : null;
     }
-    case "shim-move":
+    case "alignment": {
+      const [sent, answered] = [alignmentRequest.safeParse(request), alignmentResponse.safeParse(response)];
+      return sent.success && answered.success
+        ? { kind, request: sent.data, result: answered.data.result }
+        : null;
+    }
+    case "shim-move": {
+      const [sent, answered] = [shimMoveRequest.safeParse(request), shimMoveResponse.safeParse(response)];
+      return sent.success && answered.success
+        ? { kind, request: sent.data, result: answered.data.result }
+        : null;
+    }
+    default:
       return null;
   }
 }

@@ -14,7 +14,8 @@ export function AcceptInvitationForm({ token }: { token: string }) {
   const [faults, setFaults] = useState<FieldFaults>({});
   const attempt = useAttemptKey();
   const mutation = useMutation({
-    mutationFn: (acceptance: Acceptance) => acceptInvitation(acceptance, attempt.keyFor(JSON.stringify(acceptance))),
+    mutationFn: (acceptance: Acceptance) =>
+      acceptInvitation(acceptance, attempt.keyFor(JSON.stringify(acceptance))),
     onSettled: (_, error) => attempt.settle(error ?? undefined),
     onError: (error) => setFaults(faultsOfProblem(error)),
   });
@@ -34,7 +35,9 @@ export function AcceptInvitationForm({ token }: { token: string }) {
   if (mutation.isSuccess) {
     return (
       <div role="status">
-        <p className="mb-4">Your password is set. Sign in with the e-mail that the invitation was made for.</p>
+        <p className="mb-4">
+          Your password is set. Sign in with the e-mail that the invitation was made for.
+        </p>
         <ButtonLink look="main" to={paths.signIn}>
           Go to sign in
         </ButtonLink>
@@ -44,11 +47,24 @@ export function AcceptInvitationForm({ token }: { token: string }) {
   return (
     <form onSubmit={submit} noValidate className="grid gap-4">
       <Field label="Your name" hint="Leave empty to keep the name on the invitation." error={faults["name"]}>
-        {(attributes) => <input {...attributes} name="name" autoComplete="name" className="control" maxLength={120} />}
-      </Field>
-      <Field label="New password" hint="At least 12 characters. Any characters; length is what counts." error={faults["password"]}>
         {(attributes) => (
-          <input {...attributes} name="password" type="password" autoComplete="new-password" className="control" autoFocus />
+          <input {...attributes} name="name" autoComplete="name" className="control" maxLength={120} />
+        )}
+      </Field>
+      <Field
+        label="New password"
+        hint="At least 12 characters. Any characters; length is what counts."
+        error={faults["password"]}
+      >
+        {(attributes) => (
+          <input
+            {...attributes}
+            name="password"
+            type="password"
+            autoComplete="new-password"
+            className="control"
+            autoFocus
+          />
         )}
       </Field>
       {mutation.isError && <Failure error={mutation.error} what="The invitation was not accepted." />}

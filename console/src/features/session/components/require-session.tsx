@@ -1,12 +1,11 @@
-import { useQueryClient } from "@tanstack/react-query";
-import { useEffect, useRef, useState } from "react";
+import { Fragment, useEffect, useState } from "react";
 import { Navigate, Outlet, useLocation } from "react-router-dom";
 import { Dialog } from "../../../components/ui/dialog.tsx";
 import { Failure } from "../../../components/ui/failure.tsx";
 import { Skeleton } from "../../../components/ui/skeleton.tsx";
 import { paths } from "../../../config/paths.ts";
-import { renewSession } from "../../../lib/session-store.ts";
-import { useMember, useSession } from "../../../lib/use-session.ts";
+import { renewSession, type Member, type SessionState } from "../../../lib/session-store.ts";
+import { useSession } from "../../../lib/use-session.ts";
 import { SignInForm } from "./sign-in-form.tsx";
 
 /** The pages behind the sign-in. A session that runs out is renewed over the page, which keeps what was typed. */
@@ -14,7 +13,6 @@ export function RequireSession() {
   const session = useSession();
   const location = useLocation();
   const failure = useSilentSignIn();
-  useForgetOtherMembers();
   switch (session.status) {
     case "starting":
       return failure.error === null ? (
@@ -28,7 +26,10 @@ export function RequireSession() {
     case "open":
       return (
         <>
-          <Outlet />
+          {/* Another member who signs in over the page gets it anew. */}
+          <Fragment key={memberOf(session).id}>
+            <Outlet />
+          </Fragment>
           {session.status === "lapsed" && (
             <Dialog title="Your session has ended">
               <p className="mb-4 text-muted">Sign in to go on. This page keeps what you typed.</p>
@@ -38,6 +39,10 @@ export function RequireSession() {
         </>
       );
   }
+}
+
+function memberOf(session: Extract<SessionState, { status: "open" | "lapsed" }>): Member {
+  return session.status === "open" ? session.session.member : session.member;
 }
 
 export function signInAddress(next: string): string {
@@ -59,16 +64,4 @@ export function useSilentSignIn(): { error: unknown; retry: () => void } {
     setTries((count) => count + 1);
   };
   return { error, retry };
-}
-
-/** Answers read for one member are never shown to the next. */
-function useForgetOtherMembers(): void {
-  const member = useMember();
-  const queryClient = useQueryClient();
-  const last = useRef<string | null>(null);
-  useEffect(() => {
-    const id = member?.id ?? null;
-    if (last.current !== null && last.current !== id) queryClient.clear();
-    last.current = id;
-  }, [member, queryClient]);
 }

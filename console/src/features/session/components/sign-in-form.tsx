@@ -38,12 +38,28 @@ export function SignInForm({ email = "", onSignedIn }: SignInFormProps) {
     <form onSubmit={submit} noValidate className="grid gap-4">
       <Field label="E-mail" error={faults["email"]}>
         {(attributes) => (
-          <input {...attributes} name="email" type="email" autoComplete="username" defaultValue={email} className="control" autoFocus={email === ""} />
+          <input
+            {...attributes}
+            name="email"
+            type="email"
+            autoComplete="username"
+            defaultValue={email}
+            className="control"
+            autoFocus={email === ""}
+          />
         )}
       </Field>
       <Field label="Password" error={faults["password"]}>
         {(attributes) => (
-          <input {...attributes} name="password" type="password" autoComplete="current-password" className="control" autoFocus={email !== ""} />
+          <input
+            {...attributes}
+            name="password"
+            type="password"
+            autoComplete="current-password"
+            className="control"
+            autoFocus={email !== ""}
+            data-first-focus={email === "" ? undefined : ""}
+          />
         )}
       </Field>
       {mutation.isError && <Failure error={mutation.error} what="You are not signed in." />}
@@ -62,7 +78,10 @@ function wordsFor(faults: FieldFaults): FieldFaults {
 }
 
 /** A sign-in whose answer was lost cannot be shown again: the same credentials then open another session. */
-async function openOnce(credentials: Credentials, attempt: ReturnType<typeof useAttemptKey>): Promise<Member> {
+async function openOnce(
+  credentials: Credentials,
+  attempt: ReturnType<typeof useAttemptKey>,
+): Promise<Member> {
   const body = JSON.stringify(credentials);
   try {
     const member = await signIn(credentials, attempt.keyFor(body));

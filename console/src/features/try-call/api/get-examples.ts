@@ -1,7 +1,9 @@
 import { queryOptions, useQuery } from "@tanstack/react-query";
 import { z } from "zod";
+import { calculationKinds } from "../../../../../shared/schemas/calculations.ts";
 import { computations, serverPaths, type CalculationKind } from "../../../config/paths.ts";
 import { readAnswer } from "../../../lib/call-api.ts";
+import { writeJson } from "../../../lib/write-json.ts";
 import { sendRequest } from "../../../lib/send-request.ts";
 
 /** The parts of an OpenAPI document that a call is tried from. */
@@ -55,22 +57,22 @@ export function useExamples() {
   return useQuery(examplesQuery);
 }
 
-function endpointsOf(document: z.infer<typeof documentSchema>): Record<CalculationKind, Endpoint> {
-  const endpoint = (kind: CalculationKind): Endpoint => {
-    const post = document.paths[computations[kind].path]?.post;
-    const examples = Object.entries(post?.requestBody?.content["application/json"]?.examples ?? {});
-    return {
-      summary: post?.summary ?? "",
-      examples: examples.map(([name, example]) => ({
-        name,
-        summary: example.summary ?? name,
-        text: JSON.stringify(example.value, null, 2),
-      })),
-    };
-  };
-  return {
-    "bore-fit": endpoint("bore-fit"),
-    "axis-deviation": endpoint("axis-deviation"),
-    "shim-move": endpoint("shim-move"),
-  };
+function endpointsOf(document: z.infer<typeof documentSchema>): ReadonlyMap<CalculationKind, Endpoint> {
+  return new Map(
+    calculationKinds.map((kind) => {
+      const post = document.paths[computations[kind].path]?.post;
+      const examples = Object.entries(post?.requestBody?.content["application/json"]?.examples ?? {});
+      return [
+        kind,
+        {
+          summary: post?.summary ?? "",
+          examples: examples.map(([name, example]) => ({
+            name,
+            summary: example.summary ?? name,
+            text: writeJson(example.value),
+          })),
+        },
+      ];
+    }),
+  );
 }

@@ -5,7 +5,7 @@ import { paths } from "../../../config/paths.ts";
 import { CopyButton } from "../../../components/ui/copy-button.tsx";
 import { Failure } from "../../../components/ui/failure.tsx";
 import { JsonView } from "../../../components/ui/json-view.tsx";
-import { ProblemError } from "../../../lib/service-error.ts";
+import { CancelledError, ProblemError } from "../../../lib/service-error.ts";
 import { CalculationResult } from "../../results/components/calculation-result.tsx";
 
 interface CallAnswerProps {
@@ -26,7 +26,13 @@ export function CallAnswer({ kind, request, answer }: CallAnswerProps) {
         {id !== null && <RecordLink id={id} />}
       </p>
       <JsonView title="Response" value={answer.body} />
-      <CalculationResult kind={kind} request={request} response={answer.body} chosen={chosen} onChoose={setChosen} />
+      <CalculationResult
+        kind={kind}
+        request={request}
+        response={answer.body}
+        chosen={chosen}
+        onChoose={setChosen}
+      />
     </div>
   );
 }
@@ -34,9 +40,8 @@ export function CallAnswer({ kind, request, answer }: CallAnswerProps) {
 /** A refusal: why, and the record that the engine's own refusals leave. Its faults stand at the text. */
 export function CallRefusal({ error }: { error: unknown }) {
   const id = error instanceof ProblemError ? error.problem.id : undefined;
-  const title = error instanceof ProblemError ? `${error.problem.status} ${error.problem.title}.` : "The call got no answer.";
   return (
-    <Failure error={error} what={title}>
+    <Failure error={error} what={titleOf(error)}>
       {id !== undefined && (
         <p className="mt-2">
           <RecordLink id={id} />
@@ -44,6 +49,11 @@ export function CallRefusal({ error }: { error: unknown }) {
       )}
     </Failure>
   );
+}
+
+function titleOf(error: unknown): string {
+  if (error instanceof ProblemError) return `${error.problem.status} ${error.problem.title}.`;
+  return error instanceof CancelledError ? "You cancelled the call." : "The call got no answer.";
 }
 
 function RecordLink({ id }: { id: string }) {
@@ -58,5 +68,7 @@ function RecordLink({ id }: { id: string }) {
 }
 
 function idOf(body: unknown): string | null {
-  return typeof body === "object" && body !== null && "id" in body && typeof body.id === "string" ? body.id : null;
+  return typeof body === "object" && body !== null && "id" in body && typeof body.id === "string"
+    ? body.id
+    : null;
 }

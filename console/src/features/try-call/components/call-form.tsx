@@ -1,4 +1,4 @@
-import { useDeferredValue, useId, useMemo, useRef } from "react";
+import { useDeferredValue, useEffect, useId, useMemo, useRef } from "react";
 import { Button } from "../../../components/ui/button.tsx";
 import { CopyButton } from "../../../components/ui/copy-button.tsx";
 import { FaultList } from "../../../components/ui/fault-list.tsx";
@@ -26,7 +26,8 @@ export function CallForm({ path, draftName, exampleText, busy, refusal, onSend }
   const deferredText = useDeferredValue(draft.text);
   const parsed = useMemo(() => parseJsonText(deferredText), [deferredText]);
   const faults = useMemo(() => {
-    const standing = refusal !== null && refusal.bodyText === deferredText ? (refusal.problem.errors ?? []) : [];
+    const standing =
+      refusal !== null && refusal.bodyText === deferredText ? (refusal.problem.errors ?? []) : [];
     return parsed.ok
       ? standing.map((fault) => ({ fault, place: placeOfPointer(parsed.places, fault.pointer ?? "") }))
       : [];
@@ -34,6 +35,11 @@ export function CallForm({ path, draftName, exampleText, busy, refusal, onSend }
   const marks = parsed.ok
     ? faults.flatMap(({ place }) => (place === null ? [] : [narrowed(deferredText, place)]))
     : [{ from: parsed.fault.at, to: parsed.fault.at + 1 }];
+  useEffect(() => {
+    // A refusal brings its first fault into view; focus stays where the writer has it.
+    const first = faults[0]?.place;
+    if (first) scrollTo(editor.current, lineAndColumn(deferredText, first.from).line);
+  }, [faults, deferredText]);
   const go = (place: Place): void => {
     editor.current?.focus();
     editor.current?.setSelectionRange(place.from, place.to);
@@ -57,7 +63,9 @@ export function CallForm({ path, draftName, exampleText, busy, refusal, onSend }
         editor={editor}
       />
       <div id={faultsId} role="status" className="text-sm">
-        {!parsed.ok && <SyntaxFault text={deferredText} at={parsed.fault.at} detail={parsed.fault.detail} go={go} />}
+        {!parsed.ok && (
+          <SyntaxFault text={deferredText} at={parsed.fault.at} detail={parsed.fault.detail} go={go} />
+        )}
         {faults.length > 0 && (
           <FaultList
             faults={faults.map(({ fault }) => fault)}
@@ -74,14 +82,28 @@ export function CallForm({ path, draftName, exampleText, busy, refusal, onSend }
         <Button look="main" busy={busy} onClick={send}>
           Send call
         </Button>
-        <CopyButton label="Copy as curl" what="the call as curl" text={() => writeCurl(location.origin, path, draft.text)} />
+        <CopyButton
+          label="Copy as curl"
+          what="the call as curl"
+          text={() => writeCurl(location.origin, path, draft.text)}
+        />
         {draft.isEdited && <Button onClick={draft.restore}>Restore example</Button>}
       </div>
     </div>
   );
 }
 
-function SyntaxFault({ text, at, detail, go }: { text: string; at: number; detail: string; go: (place: Place) => void }) {
+function SyntaxFault({
+  text,
+  at,
+  detail,
+  go,
+}: {
+  text: string;
+  at: number;
+  detail: string;
+  go: (place: Place) => void;
+}) {
   const { line, column } = lineAndColumn(text, at);
   return (
     <p className="text-signal">

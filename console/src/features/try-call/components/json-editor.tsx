@@ -77,7 +77,10 @@ function Marked({ text, faults }: { text: string; faults: readonly Place[] }) {
   const pieces: React.ReactNode[] = [];
   let from = 0;
   for (const fault of withoutOverlap(faults)) {
-    pieces.push(text.slice(from, fault.from), <mark key={fault.from}>{text.slice(fault.from, fault.to)}</mark>);
+    pieces.push(
+      text.slice(from, fault.from),
+      <mark key={fault.from}>{text.slice(fault.from, fault.to)}</mark>,
+    );
     from = fault.to;
   }
   // The line break keeps the last line as high as the field's own when it is empty.

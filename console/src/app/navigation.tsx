@@ -1,0 +1,44 @@
+import { NavLink } from "react-router-dom";
+import { joinClasses } from "../components/ui/join-classes.ts";
+import { paths, serverPaths } from "../config/paths.ts";
+import { useMay, useMember } from "../lib/use-session.ts";
+
+const look = "block border-b-2 py-1";
+
+/** The pages that the member's role can use, and the documents, which the server serves itself. */
+export function Navigation() {
+  const member = useMember();
+  const mayCompute = useMay("calculations:write");
+  const mayReadKeys = useMay("keys:read");
+  if (!member) return null;
+  return (
+    <nav aria-label="Main">
+      <ul className="flex flex-wrap gap-x-6 gap-y-1">
+        <PageLink to={paths.calculations}>Calculations</PageLink>
+        {mayCompute && <PageLink to={paths.tryCall}>Try a call</PageLink>}
+        {mayReadKeys && <PageLink to={paths.keys}>Keys</PageLink>}
+        {/* On a narrow screen the footer's link has to do. */}
+        <li className="max-sm:hidden">
+          <a href={serverPaths.docs} className={joinClasses(look, "border-transparent hover:border-rule")}>
+            Documents
+          </a>
+        </li>
+      </ul>
+    </nav>
+  );
+}
+
+function PageLink({ to, children }: { to: string; children: string }) {
+  return (
+    <li>
+      <NavLink
+        to={to}
+        className={({ isActive }) =>
+          joinClasses(look, isActive ? "border-ink font-semibold" : "border-transparent hover:border-rule")
+        }
+      >
+        {children}
+      </NavLink>
+    </li>
+  );
+}

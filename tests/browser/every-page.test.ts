@@ -1,0 +1,109 @@
+import type { Page } from "playwright-core";
+import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { recordOutage } from "../../server/demo/record-outage.ts";
+import { noMisdeeds, openConsole, openPage, signIn, type ConsoleInBrowser } from "../support/browser.ts";
+
+describe("every page", () => {
+  let opened: ConsoleInBrowser;
+  beforeAll(async () => {
+    opened = await openConsole();
+    await recordOutage(opened.service.deps, opened.admin);
+  });
+  afterAll(() => opened.close());
+
+  const atRest = "Cautions";
+
+  it.each(["/sign-in", "/invitation#token=not-used", "/invitation", "/nowhere"])(
+    "%s asks nothing of another origin and breaks no policy, for a stranger",
+    async (path) => {
+      const { page, misdeeds } = await openPage(opened.browser, opened.service.url);
+      await page.goto(opened.service.url + path, { waitUntil: "networkidle" });
+      await page.getByRole("region", { name: atRest }).waitFor();
+      expect(misdeeds).toEqual(noMisdeeds);
+    },
+  );
+
+  it("asks nothing of another origin and breaks no policy, signed in", async () => {
+    const { page, misdeeds } = await openPage(opened.browser, opened.service.url);
+    await signIn(page, opened);
+    const records = await recordPaths(page);
+    expect(records.length).toBeGreaterThanOrEqual(6);
+    const tried = ["bore-fits", "axis-deviations", "shim-moves"].map(
+      (resource) => `/try?endpoint=${resource}`,
+    );
+    for (const path of ["/", "/calculations?kind=bore-fit&status=failed", "/keys", ...tried, ...records]) {
+      await page.goto(opened.service.url + path, { waitUntil: "networkidle" });
+      await page.getByRole("heading", { level: 1 }).waitFor();
+      if (path.startsWith("/calculations/")) await page.getByLabel("Title block").waitFor();
+      if (path.startsWith("/try")) {
+        await page.getByRole("button", { name: "Send call" }).click();
+        await page.getByText("201 Created").waitFor();
+      }
+      expect([path, misdeeds]).toEqual([path, noMisdeeds]);
+    }
+  });
+
+  it.each([380, 768, 1280])("fits a window %d pixels wide without scrolling sideways", async (width) => {
+    const { page } = await openPage(opened.browser, opened.service.url);
+    await page.setViewportSize({ width, height: 800 });
+    await signIn(page, opened);
+    const records = await recordPaths(page);
+    for (const path of ["/calculations", "/keys", "/try", ...records]) {
+      await page.goto(opened.service.url + path, { waitUntil: "networkidle" });
+      await page.getByRole("heading", { level: 1 }).waitFor();
+      const scrollWidth = await page.evaluate<number>("document.documentElement.scrollWidth");
+      expect([path, scrollWidth]).toEqual([path, width]);
+    }
+  });
+
+  it("is signed in again after a reload, and signed out for good when asked", async () => {
+    const { page } = await openPage(opened.browser, opened.service.url);
+    await signIn(page, opened);
+    await page.reload();
+    await page.getByText("Maren Oake, admin").waitFor();
+    await page.getByRole("button", { name: "Sign out" }).click();
+    await page.getByRole("heading", { level: 1, name: "Sign in" }).waitFor();
+    await page.goto(`${opened.service.url}/keys`);
+    await page.getByLabel("Password").waitFor();
+    expect(new URL(page.url()).pathname).toBe("/sign-in");
+  });
+
+  it("puts the last filters back with the back button", async () => {
+    const { page } = await openPage(opened.browser, opened.service.url);
+    await signIn(page, opened);
+    await page.getByLabel("Kind").selectOption("shim-move");
+    await page.getByRole("button", { name: "Apply filters" }).click();
+    await page.waitForURL(/kind=shim-move/);
+    await page.getByRole("link", { name: "Shim moves" }).first().click();
+    await page.getByLabel("Title block").waitFor();
+    await page.goBack();
+    await page.getByRole("heading", { level: 1, name: "Calculations" }).waitFor();
+    expect(await page.getByLabel("Kind").inputValue()).toBe("shim-move");
+    await page.goBack();
+    await page.waitForURL((url) => url.search === "");
+    expect(await page.getByLabel("Kind").inputValue()).toBe("");
+  });
+
+  it("prints a record as a sheet without the console round it", async () => {
+    const { page } = await openPage(opened.browser, opened.service.url);
+    await signIn(page, opened);
+    await page.getByRole("link", { name: "Axis and deviations" }).first().click();
+    await page.getByLabel("Title block").waitFor();
+    await page.emulateMedia({ media: "print" });
+    expect(await page.getByRole("navigation", { name: "Main" }).isVisible()).toBe(false);
+    expect(await page.getByRole("button", { name: "Replay record" }).isVisible()).toBe(false);
+    expect(await page.getByLabel("Title block").isVisible()).toBe(true);
+    expect(await page.getByRole("region", { name: atRest }).isVisible()).toBe(true);
+    expect(await page.locator("svg.figure-printed").isVisible()).toBe(true);
+    const pdf = await page.pdf({ preferCSSPageSize: true });
+    expect(pdf.subarray(0, 5).toString()).toBe("%PDF-");
+  });
+});
+
+/** Where the records of the list stand. */
+async function recordPaths(page: Page): Promise<string[]> {
+  await page.getByRole("table").waitFor();
+  const links = await page.getByRole("row").getByRole("link").all();
+  const paths = await Promise.all(links.map((link) => link.getAttribute("href")));
+  return paths.flatMap((path) => path ?? []);
+}
