@@ -45,6 +45,7 @@ export const operationAccess = {
   createColdTarget: compute,
   createConfirmation: compute,
   createRepeatabilityStudy: compute,
+  createMeasurementPlan: compute,
   replayCalculation: compute,
   listCalculations: readRecords,
   readCalculation: readRecords,

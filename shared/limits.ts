@@ -28,6 +28,12 @@ export const limits = {
   massesPerRotor: 500,
   supportsPerRotor: 500,
   growthsPerStation: 50,
+  /** Of a measurement plan: places that can be reached, readings at one, readings that may be added. */
+  placesPerBore: 360,
+  placesPerCall: 10_000,
+  rangesPerBore: 20,
+  readingsPerPlace: 100,
+  addedPerBore: 1_000,
   idLength: 64,
   noteLength: 2_000,
   nameLength: 120,
@@ -56,6 +62,9 @@ export const bounds = {
   clockDeg: { min: -360, max: 360 },
   halfAngleDeg: { min: -89, max: 89 },
   level: { min: 0.5, max: 1 },
+  stepDeg: { min: 0.1, max: 180 },
+  /** Half-width of a tolerance over an expanded uncertainty. */
+  toleranceRatio: { min: 1, max: 1_000 },
   /** A slope, offset units per axial unit. */
   tilt: { min: 1e-12, max: 1e9 },
   /** Beyond it a turn is no longer small. */

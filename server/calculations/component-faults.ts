@@ -2,7 +2,8 @@ import type { Fault } from "../../shared/error-codes.ts";
 import { pointerOf } from "../../shared/pointer.ts";
 import type { ComponentRequest, StackRequest, SupportRequest } from "../../shared/schemas/move-components.ts";
 import type { Converter, Dimension } from "../../shared/units.ts";
-import { combinationInvalid, duplicates, notAvailable, unknownReference } from "./common-faults.ts";
+import { combinationInvalid, duplicates, unknownReference } from "./common-faults.ts";
+import { rollFaults, tiltFaults } from "./linkage-faults.ts";
 
 type Path = readonly PropertyKey[];
 
@@ -10,12 +11,14 @@ type Path = readonly PropertyKey[];
 interface Known {
   readonly stationIds: ReadonlySet<string | null>;
   readonly reference: readonly string[];
+  /** z of the stations that were sent well. */
+  readonly zOf: ReadonlyMap<string, number>;
 }
 
 /** Pieces add up to their pack within this and within a billionth of it: far below any gauge, far above rounding. */
 const sumSlackMm = 1e-6;
 
-/** Everything that is wrong with one component: its stations, its supports, its stacks, what is not computed yet. */
+/** Everything that is wrong with one component: its stations, its supports, its stacks, its tilt and roll. */
 export function componentFaults(
   component: ComponentRequest,
   index: number,
@@ -35,7 +38,8 @@ export function componentFaults(
       (k) => [...at, "supports", k, "id"],
     ),
     ...supports.flatMap((support, k) => supportFaults(support, [...at, "supports", k], offset)),
-    ...laterMembers(component, at),
+    ...tiltFaults(component, at, known.zOf),
+    ...rollFaults(component, at),
   ];
 }
 
@@ -66,14 +70,6 @@ function noSupport(at: Path): Fault {
     code: "supports_insufficient",
     detail: "A component that may move rests on one support or more.",
   };
-}
-
-function laterMembers({ carriedBy, tilt, roll }: ComponentRequest, at: Path): Fault[] {
-  return Object.entries({ carriedBy, tilt, roll }).flatMap(([name, value]) =>
-    value === null || value === undefined
-      ? []
-      : [notAvailable([...at, name], `${name} is not computed by this engine version.`)],
-  );
 }
 
 function supportFaults(support: SupportRequest, at: Path, offset: Converter): Fault[] {

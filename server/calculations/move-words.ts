@@ -92,6 +92,11 @@ function causeInWords(
         because: "No least-squares move of the part as one rigid piece brings all its bores inside",
         limit: null,
       };
+    case "tilt":
+      return {
+        because: `The tilt stays beyond its tolerance in ${planeNames(unreachable.planes)}`,
+        limit: pointerOf([...at, "tilt"]),
+      };
     case "shims":
       return {
         because: "The ideal move would do; the shims that can be cut do not",
@@ -124,6 +129,10 @@ export function adviceInWords(wording: Wording, advice: Advice): string {
       return `${advice.componentId}: ${listed(advice.stationIds)} without a tolerance; where others have one, these ask for nothing and are carried along.`;
     case "tilt_not_determined":
       return `${advice.componentId}: its stations do not set a tilt in ${planeNames(advice.planes)}; of equally good moves the smallest is taken.`;
+    case "tilt_not_adjustable":
+      return `${advice.componentId}: its supports cannot change its tilt in ${planeNames(advice.planes)}; a translation alone was solved.`;
+    case "shifted_afterwards":
+      return `${advice.componentId}: later moves shift ${listed(advice.stationIds)}, for which it was not solved. Measure again and solve again.`;
     case "bearing_afterwards":
       return `After moving ${listed(advice.componentIds)}: check cap crush, top clearance, journal contact, and rim and face of the coupling on every coupled shaft.`;
     case "reference_held":

@@ -112,7 +112,7 @@ describe("shimMoveKind.answer: refusals", () => {
     );
   });
 
-  it("says at its own place what this engine version does not compute", () => {
+  it("names carriers, couplings, tilts and rolls that refer to nothing or to themselves", () => {
     const request: ShimMoveRequest = {
       ...base,
       components: [
@@ -120,21 +120,49 @@ describe("shimMoveKind.answer: refusals", () => {
           ...padBearing,
           carriedBy: "casing",
           tilt: { tolerance: { h: 1e-5, v: 1e-5 } },
-          roll: { radians: 0.001, feet: [] },
+          roll: {
+            radians: 0.001,
+            feet: [
+              { support: "seat", place: "right", h: 100, v: -100 },
+              { support: "nowhere", place: "left", h: 100, v: -100 },
+            ],
+          },
         },
-        casing,
+        { ...casing, carriedBy: "bearing" },
+        { id: "cover", fixed: true, carriedBy: "ghost" },
       ],
+      couplings: [
+        { component: "casing", support: "rear", station: "aft", h: 0, v: 0.1 },
+        { component: "casing", support: "seat", station: "lost", h: 0, v: 0.1 },
+        { component: "ghost", support: "seat", station: "brg", h: 0, v: 0.1 },
+      ],
+    };
+    expect(places(faultsOf(request))).toEqual(
+      [
+        "/components/0/carriedBy combination_invalid",
+        "/components/0/roll/feet combination_invalid",
+        "/components/0/roll/feet/0/place unknown_reference",
+        "/components/0/roll/feet/1/support unknown_reference",
+        "/components/0/tilt combination_invalid",
+        "/components/1/carriedBy combination_invalid",
+        "/components/2/carriedBy unknown_reference",
+        "/couplings/0/station combination_invalid",
+        "/couplings/1/station unknown_reference",
+        "/couplings/1/support unknown_reference",
+        "/couplings/2/component unknown_reference",
+      ].sort(),
+    );
+  });
+
+  it("says at its own place what this engine version does not compute", () => {
+    const request: ShimMoveRequest = {
+      ...base,
       shims: { stock: [{ thickness: 0.05 }], reuse: true },
       objective: "minimax",
-      couplings: [{ component: "casing", support: "rear", station: "brg", h: 0, v: 0.1 }],
     };
     const faults = faultsOf(request);
     expect(new Set(faults.map(({ code }) => code))).toEqual(new Set(["not_available"]));
     expect(faults.map(({ pointer }) => pointer).sort()).toEqual([
-      "/components/0/carriedBy",
-      "/components/0/roll",
-      "/components/0/tilt",
-      "/couplings",
       "/objective",
       "/shims/reuse",
       "/shims/stock",

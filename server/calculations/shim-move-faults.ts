@@ -24,6 +24,7 @@ import {
   unknownReference,
 } from "./common-faults.ts";
 import { componentFaults, stationsSharedFaults } from "./component-faults.ts";
+import { carrierFaults, couplingFaults } from "./linkage-faults.ts";
 import { readMoveStation } from "./shim-move-input.ts";
 
 const wholeCall = shimMoveRequest.shape;
@@ -88,6 +89,7 @@ export function shimMoveFaultsBesideSchema(body: unknown): Fault[] {
 function faultsOf(read: Readable): Fault[] {
   const { stationIds, stations, componentIds, components, indicatorIds, indicators, reference } = read;
   const convert = convertersFor(read.units);
+  const zOf = new Map(stations.flatMap((station) => (station ? [[station.id, station.z] as const] : [])));
   const known = { stations: new Set(stationIds), components: new Set(componentIds) };
   return [
     ...duplicates(stationIds, (index) => ["stations", index, "id"]),
@@ -98,9 +100,16 @@ function faultsOf(read: Readable): Fault[] {
     ),
     ...duplicates(componentIds, (index) => ["components", index, "id"]),
     ...components.flatMap((component, index) =>
-      component ? componentFaults(component, index, { stationIds: known.stations, reference }, convert) : [],
+      component
+        ? componentFaults(component, index, { stationIds: known.stations, reference, zOf }, convert)
+        : [],
     ),
     ...stationsSharedFaults(components),
+    ...carrierFaults(components, componentIds),
+    ...couplingFaults(read.call.couplings ?? [], components, {
+      components: componentIds,
+      stations: known.stations,
+    }),
     ...duplicates(indicatorIds, (index) => ["indicators", index, "id"]),
     ...indicators.flatMap((indicator, index) =>
       !indicator || known.components.has(indicator.component)
@@ -126,7 +135,7 @@ function stationFaults(
 }
 
 /** What of the call as a whole this engine version does not compute. */
-function callFaults({ shims, objective, couplings }: Readable["call"]): Fault[] {
+function callFaults({ shims, objective }: Readable["call"]): Fault[] {
   const { stock, cutToSize, reuse } = shims ?? {};
   // An empty stock beside shims cut to size takes nothing away; alone it would mean that there are no shims at all.
   const stockCounts = stock !== undefined && (stock.length > 0 || !cutToSize);
@@ -149,9 +158,6 @@ function callFaults({ shims, objective, couplings }: Readable["call"]): Fault[] 
       : []),
     ...(objective === "minimax"
       ? [notAvailable(["objective"], "minimax is not computed by this engine version; use least_squares.")]
-      : []),
-    ...(couplings !== undefined && couplings.length > 0
-      ? [notAvailable(["couplings"], "Couplings are not computed by this engine version.")]
       : []),
   ];
 }

@@ -32,6 +32,13 @@ export function readMoveProblem(request: ShimMoveRequest, convert: Converters): 
     stations: request.stations.map((station) => readMoveStation(station, convert)),
     referenceIds: request.reference ?? [],
     components: request.components.map((component) => readComponent(component, convert)),
+    couplings: (request.couplings ?? []).map(({ component, support, station, h, v }) => ({
+      componentId: component,
+      supportId: support,
+      stationId: station,
+      h,
+      v,
+    })),
     cutIncrementMm: shims?.cutToSize ? offset.toMm(shims.cutToSize.increment) : null,
     maximumMisfitMm: maximumMisfit === undefined ? maximumMisfitDefaultMm : offset.toMm(maximumMisfit),
     maximumIncrementMm: orElse(maximumIncrement, offset, null),
@@ -54,7 +61,8 @@ export function readMoveStation(station: MoveStationRequest, { axial, offset }: 
 }
 
 function readComponent(component: ComponentRequest, convert: Converters): MoveComponent {
-  const { id, kind, stations, fixed, allowReferenceMove, supports } = component;
+  const { id, kind, stations, fixed, allowReferenceMove, supports, carriedBy, tilt, roll } = component;
+  const { axial, offset } = convert;
   return {
     id,
     kind: kind ?? "other",
@@ -62,6 +70,24 @@ function readComponent(component: ComponentRequest, convert: Converters): MoveCo
     fixed: fixed ?? false,
     allowReferenceMove: allowReferenceMove ?? false,
     supports: (supports ?? []).map((support) => readSupport(support, convert)),
+    carriedById: carriedBy ?? null,
+    tiltTolerance: tilt
+      ? {
+          h: offset.toMm(tilt.tolerance.h) / axial.toMm(1),
+          v: offset.toMm(tilt.tolerance.v) / axial.toMm(1),
+        }
+      : null,
+    roll: roll
+      ? {
+          radians: roll.radians,
+          feet: roll.feet.map(({ support, place, h, v }) => ({
+            supportId: support,
+            place,
+            hMm: offset.toMm(h),
+            vMm: offset.toMm(v),
+          })),
+        }
+      : null,
   };
 }
 

@@ -4,16 +4,19 @@ import {
   type ShimMoveRequest,
   type ShimMoveResult,
 } from "../../shared/schemas/shim-moves.ts";
-import { convertersFor, type Converter, type Units } from "../../shared/units.ts";
+import { convertersFor, type Converter, type Dimension, type Units } from "../../shared/units.ts";
 import type { PlaneVector } from "../compute/plane.ts";
 import type { ComponentMove, MovePlan, StackChange, Step, SupportMove } from "../compute/moves/move-plan.ts";
+import type { Tilt } from "../compute/moves/tilt.ts";
 import { solveMoves } from "../compute/moves/solve-moves.ts";
 import { CalculationRefusal, type CalculationKind } from "./calculation-kind.ts";
-import { computeEach } from "./collect-faults.ts";
+import { attempt } from "./collect-faults.ts";
 import { adviceInWords, wordingFor, writeUnreachable, type Wording } from "./move-words.ts";
 import { shimMoveFaults, shimMoveFaultsBesideSchema } from "./shim-move-faults.ts";
 import { readMoveProblem } from "./shim-move-input.ts";
 import { writeDeviation } from "./write-deviation.ts";
+
+type Converters = Record<Dimension, Converter>;
 
 interface ShimMoveAnswer {
   readonly units: Units;
@@ -31,17 +34,23 @@ export const shimMoveKind: CalculationKind<ShimMoveRequest, ShimMoveAnswer> = {
     if (faults.length > 0) throw new CalculationRefusal(faults);
     const convert = convertersFor(request.units);
     const problem = readMoveProblem(request, convert);
-    const plan = solveMoves(problem, (components, solve) => computeEach(components, ["components"], solve));
-    const result = writePlan(plan, wordingFor(request, convert.offset), convert.offset);
+    const plan = solveMoves(problem, (order, solve) => {
+      const attempts = order.map((index) => attempt(["components", index], () => solve(index)));
+      const refused = attempts.flatMap(({ faults: found }) => found);
+      if (refused.length > 0) throw new CalculationRefusal(refused);
+      return attempts.flatMap(({ results }) => results);
+    });
+    const result = writePlan(plan, wordingFor(request, convert.offset), convert);
     return { units: request.units, level: problem.level, result, cautions };
   },
   isLong: ({ shims }) => Boolean(shims?.cutToSize ?? shims?.stock),
   faultsBesideSchema: shimMoveFaultsBesideSchema,
 };
 
-function writePlan(plan: MovePlan, wording: Wording, offset: Converter): ShimMoveResult {
+function writePlan(plan: MovePlan, wording: Wording, convert: Converters): ShimMoveResult {
+  const { offset } = convert;
   return {
-    components: plan.components.map((component, index) => writeComponent(component, index, wording, offset)),
+    components: plan.components.map((component, index) => writeComponent(component, index, wording, convert)),
     predicted: plan.predicted.map(({ id, deviation, verdict }) => ({
       id,
       deviation: writeDeviation(deviation, offset),
@@ -54,17 +63,31 @@ function writePlan(plan: MovePlan, wording: Wording, offset: Converter): ShimMov
 }
 
 function writeComponent(
-  { id, fixed, ideal, realised, stacks, unreachable }: ComponentMove,
+  { id, fixed, ideal, realised, stacks, tilt, roll, unreachable }: ComponentMove,
   index: number,
   wording: Wording,
-  offset: Converter,
+  { axial, offset }: Converters,
 ): ShimMoveResult["components"][number] {
+  const slopes = ({ h, v }: Tilt) => ({
+    h: offset.fromMm(h * axial.toMm(1)),
+    v: offset.fromMm(v * axial.toMm(1)),
+  });
   return {
     id,
     fixed,
     moves: ideal.map((move) => writeMove(move, offset)),
     realised: realised.map((move) => writeMove(move, offset)),
     stacks: stacks.map((stack) => writeStack(stack, offset)),
+    ...(tilt ? { tilt: { found: slopes(tilt.found), predicted: slopes(tilt.predicted) } } : {}),
+    ...(roll
+      ? {
+          roll: {
+            found: roll.foundRadians,
+            predicted: roll.predictedRadians,
+            boreShift: writeVector(roll.boreShift, offset),
+          },
+        }
+      : {}),
     ...(unreachable ? { unreachable: writeUnreachable(wording, index, unreachable) } : {}),
   };
 }

@@ -10,6 +10,7 @@ export const calculationKinds = [
   "cold-target",
   "confirmation",
   "repeatability-study",
+  "measurement-plan",
 ] as const;
 export const calculationKindSchema = z.enum(calculationKinds).meta({ id: "CalculationKind" });
 

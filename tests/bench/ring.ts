@@ -14,3 +14,12 @@ export function ring(count: number, seed = 1): WallPoint[] {
     return { h: 0.1 + radius * Math.sin(angle), v: -0.2 + radius * Math.cos(angle) };
   });
 }
+
+/** The same points in no order. */
+export function shuffled(points: readonly WallPoint[], seed = 2): WallPoint[] {
+  const random = seededRandom(seed);
+  return points
+    .map((point) => ({ point, key: random.uniform() }))
+    .sort((one, other) => one.key - other.key)
+    .map(({ point }) => point);
+}

@@ -147,7 +147,6 @@ const swapped: Readonly<Record<string, string>> = {
   "key-right": "key-left",
 };
 
-/** What `left` is called in the mirror. */
 export const mirroredPlace = (place: string): string => swapped[place] ?? place;
 
 export function retell(problem: MoveProblem, { z = (mm) => mm, factor = 1, mirrored = false }: Retelling) {

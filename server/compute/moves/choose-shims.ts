@@ -1,11 +1,13 @@
+import { assertFinite } from "../compute-error.ts";
 import { ChoiceFrontier } from "./choice-frontier.ts";
-import { dot, lengthOf } from "./least-squares-in-order.ts";
+import { lengthOf } from "./least-squares-in-order.ts";
+import { loadPlacesOf } from "./load-places.ts";
+import { misfitGuards } from "./misfit-guards.ts";
 import { realiseChoice } from "./realise-choice.ts";
-import { rigidFitOf } from "./rigid-fit.ts";
 import { searchChoices } from "./search-choices.ts";
 import type { SearchBudget } from "./search-budget.ts";
 import { changesWithin, sameThicknessMm, type ShimChange } from "./shim-changes.ts";
-import { groupOptions, groupPlaces, type LoadPlace } from "./shim-groups.ts";
+import { groupOptions, groupPlaces, type GroupOption, type LoadPlace } from "./shim-groups.ts";
 import { shimSightOf } from "./shim-sight.ts";
 import type { ShimChoice, ShimTask } from "./shim-task.ts";
 import { costOf } from "./station-pull.ts";
@@ -19,40 +21,33 @@ const widenings = 3;
  * stacks' limits and the misfit. `elsewhere` is the cost of the component's other planes.
  *
  * How optimality is known. The realised move y is the rigid least squares fit of the changes at load-bearing places;
- * what they leave open is set by jack to the best. With ŷ the best move imaginable, cost(y) ≥ cost(ŷ) + ‖R(y − ŷ)‖²
- * for every y that keeps the limits (the cost is quadratic, and at ŷ it falls in no permitted direction). So a choice
- * better than one already found lies in an ellipsoid about ŷ. Every choice in it is visited or excluded by
- * searchChoices, and the ellipsoid is widened until it reaches to the best found. Where the stations do not determine
- * a place's change (all at one z, on supports at several), no ellipsoid bounds it: that stack is taken to a neighbour
- * of its ideal change. When not even standing still is permitted, the search ends about 64 steps from ŷ.
- * @throws ComputeError too_many_choices, not_converged
+ * what they leave open is set by jack to the best. With ŷ the best move imaginable, cost(y) − cost(ŷ) is ‖R(y − ŷ)‖² and
+ * what limits add that hold ŷ back (load-places.ts), never less than 0 where they are kept. So a choice better than one
+ * already found lies in an ellipsoid about ŷ. Every choice in it is visited or excluded by searchChoices, and the
+ * ellipsoid is widened until it reaches to the best found. Where the stations do not determine a place's change (all at
+ * one z, on supports at several), no ellipsoid bounds it: that stack is taken to a neighbour of its ideal change. When not
+ * even standing still is permitted, the search ends about 64 steps from ŷ.
+ * @throws ComputeError too_many_choices, not_converged, result_overflow
  */
 export function chooseShims(task: ShimTask, elsewhere: number, budget: SearchBudget): readonly ShimChoice[] {
-  const fit = rigidFitOf(
-    task.loaded.map(({ row }) => row),
+  const sight = shimSightOf(task.pull.rows, task.fit, task.size);
+  const { places, mostPushes } = loadPlacesOf(task, sight);
+  const groups = groupPlaces(places);
+  const guards = misfitGuards(
+    groups.flatMap(([first]) => (first ? [first.row] : [])),
     task.size,
-  );
-  const sight = shimSightOf(task.pull.rows, fit, task.size);
-  const groups = groupPlaces(
-    task.loaded.map(({ place, row }, k) => {
-      const extent = sight.extent(row);
-      const centre = extent < Infinity ? task.bestImaginable : task.ideal;
-      return {
-        place,
-        column: sight.rows.map((seen) => dot(seen, fit.columns[k] ?? [])),
-        wantedMm: dot(row, centre),
-        extent,
-        leverage: fit.leverage[k] ?? 1,
-      };
-    }),
+    task.maximumMisfitMm,
   );
   const frontier = new ChoiceFrontier(elsewhere);
+  const placesInTurn = groups.flatMap((group) => group.map(({ place }) => place));
+  const turnOf = task.loaded.map(({ place }) => placesInTurn.indexOf(place));
   const visit = (chosen: readonly { readonly changes: readonly ShimChange[] }[]) => {
-    const changeOf = new Map(
-      groups.flatMap((group, g) => group.map(({ place }, k) => [place, chosen[g]?.changes[k]] as const)),
+    const inTurn = chosen.flatMap(({ changes }) => changes);
+    const choice = realiseChoice(
+      task,
+      turnOf.flatMap((turn) => inTurn[turn] ?? []),
+      budget,
     );
-    const changes = task.loaded.flatMap(({ place }) => changeOf.get(place) ?? []);
-    const choice = realiseChoice(task, fit, changes, budget);
     if (choice) frontier.add(choice);
   };
 
@@ -63,16 +58,21 @@ export function chooseShims(task: ShimTask, elsewhere: number, budget: SearchBud
   }));
   if (still.every(({ changes }, g) => changes.length === groups[g]?.length)) visit(still);
 
-  const floor = costOf(task.pull, task.bestImaginable);
+  const floor = assertFinite(costOf(task.pull, task.bestImaginable), "The cost of the best move");
   let radius = aboutOneStep(groups.flat(), task.incrementMm);
   for (let widened = 0; frontier.found || widened <= widenings; widened++) {
-    const places = groups.map((group) => ({
+    const open = groups.map((group, g) => ({
       options: groupOptions(group, task.incrementMm, reachMm(group, radius, task), budget),
       columns: group.map(({ column }) => column),
+      allowed: (before: readonly GroupOption[]) => {
+        const allowed = guards[g]?.(before.map(({ firstMm }) => firstMm));
+        return (option: GroupOption) => allowed?.(option.firstMm) ?? true;
+      },
     }));
-    searchChoices(places, sight.rows.length, () => Math.min(radius, frontier.ceiling - floor), visit, budget);
+    const bound = () => Math.min(radius, frontier.ceiling - floor);
+    searchChoices(open, sight.rows.length, mostPushes, bound, visit, budget);
     if (frontier.ceiling - floor <= radius) break;
-    radius = frontier.found ? frontier.ceiling - floor : 16 * radius;
+    radius = Math.min(16 * radius, frontier.ceiling - floor);
   }
   return frontier.choices;
 }

@@ -3,9 +3,11 @@ import { chooseShims } from "./choose-shims.ts";
 import { idealMoveOf, placesIn, type IdealMove } from "./ideal-move.ts";
 import type { MoveComponent, MoveStation } from "./move-problem.ts";
 import { travelLimits } from "./move-limits.ts";
+import { rigidFitOf, type RigidFit } from "./rigid-fit.ts";
 import { rowAlong } from "./rigid-freedom.ts";
 import type { SearchBudget } from "./search-budget.ts";
-import type { ChosenStack, ShimChoice, ShimTask } from "./shim-task.ts";
+import { sameThicknessMm } from "./shim-changes.ts";
+import type { ChosenStack, PlaceRow, ShimChoice, ShimTask } from "./shim-task.ts";
 import type { Place } from "./support-places.ts";
 
 export interface ShimSupply {
@@ -52,22 +54,60 @@ function shimTaskOf(
   { incrementMm, maximumMisfitMm }: ShimSupply,
 ): ShimTask | null {
   const { planes, modes, pull, leastMovement, amounts } = ideal;
-  const loosened = idealMoveOf(component, stations, places, planes, maximumMisfitMm);
-  if (!loosened.possible) return null;
   const rows = placesIn(places, planes).map((place) => ({
     place,
     row: rowAlong(modes, place.direction, place.zMm),
   }));
+  const loaded = rows.filter(({ place }) => place.bearsLoad);
+  const fit = rigidFitOf(
+    loaded.map(({ row }) => row),
+    modes.length,
+  );
+  const exact = placesWithoutMisfit(loaded, fit);
+  const looserMm = (place: Place) => (exact.has(place) ? 0 : maximumMisfitMm);
+  const loosened = idealMoveOf(component, stations, places, planes, looserMm);
+  if (!loosened.possible) return null;
   return {
     size: modes.length,
     pull,
     leastMovement,
     travel: travelLimits(component.supports, modes, planes),
-    loaded: rows.filter(({ place }) => place.bearsLoad),
+    loaded,
     following: rows.filter(({ place }) => !place.bearsLoad),
+    fit,
     ideal: amounts,
     bestImaginable: loosened.move.amounts,
+    hindrances: loosened.move.hindrances,
     incrementMm,
     maximumMisfitMm,
   };
+}
+
+/**
+ * Places at which the realised move passes the stack's limits by no misfit: alone they set their part of it, or with a
+ * twin that has the same limits, of whose changes it is the mean.
+ */
+function placesWithoutMisfit(loaded: readonly PlaceRow[], { leverage }: RigidFit): Set<Place> {
+  const alone = 1 - 1e-9;
+  return new Set(
+    loaded.flatMap(({ place }, k) => {
+      const t = loaded.findIndex(
+        (other) => other.place.support === place.support && other.place.name === place.twin,
+      );
+      const twin = loaded[t]?.place;
+      const together = (leverage[k] ?? 0) + (twin && sameLimits(place, twin) ? (leverage[t] ?? 0) : 0);
+      return together >= alone ? [place] : [];
+    }),
+  );
+}
+
+/** Whether the stacks of twins may be changed by the same amounts, each told along the move. */
+function sameLimits(a: Place, b: Place): boolean {
+  const room = ({ stack, direction, offsetMm }: Place): number[] => {
+    const standsMm = stack.thicknessMm + offsetMm;
+    const [least, most] = [stack.minMm - standsMm, stack.maxMm - standsMm];
+    return direction.h + direction.v < 0 ? [-most, -least] : [least, most];
+  };
+  const other = room(b);
+  return room(a).every((mm, k) => mm === other[k] || Math.abs(mm - (other[k] ?? NaN)) <= sameThicknessMm);
 }

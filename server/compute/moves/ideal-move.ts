@@ -1,4 +1,4 @@
-import { minimiseInOrder, type LeastSquares } from "./least-squares-in-order.ts";
+import { lengthOf, minimiseInOrder, type LeastSquares } from "./least-squares-in-order.ts";
 import { stackLimits, travelLimits } from "./move-limits.ts";
 import type { LimitPlace } from "./move-plan.ts";
 import { planes as bothPlanes, type MoveComponent, type MoveStation, type Plane } from "./move-problem.ts";
@@ -10,6 +10,9 @@ import type { Place } from "./support-places.ts";
 /** A limit that holds the ideal move back, and what the stations ask for there. */
 export interface Hindrance {
   readonly limit: LimitPlace;
+  /** The limit on the amounts: row·amounts ≤ most. */
+  readonly row: readonly number[];
+  readonly most: number;
   /** What one millimetre more there would be worth, in cost. */
   readonly worth: number;
   readonly limitMm: number;
@@ -51,7 +54,7 @@ export function placesIn(places: readonly Place[], planes: readonly Plane[]): Pl
 
 /**
  * The move of a rigid part that minimises Σ w·(dᵢ + δ(zᵢ))² within the travel of its supports, the thickness of its
- * stacks (each loosened by `looserMm`) and its blocked directions. Of moves that serve the stations alike, the one that
+ * stacks (each loosened by `looserMm` of its place) and its blocked directions. Of moves that serve the stations alike, the one that
  * moves the supports least, Σ δ². A convex quadratic program, solved exactly.
  * @throws ComputeError not_converged
  */
@@ -60,18 +63,17 @@ export function idealMoveOf(
   stations: readonly MoveStation[],
   places: readonly Place[],
   planes: readonly Plane[],
-  looserMm = 0,
+  looserMm: (place: Place) => number = () => 0,
 ): IdealAnswer {
   const stationZMm = stations.map(({ zMm }) => zMm);
   const modes = planes.flatMap((plane) => modesOf(component.supports, stationZMm, plane));
-  const pull = pullOf(stations, modes, planes);
+  const pull = pullOf(stations, modes, planes, component.tiltTolerance);
   const leastMovement = leastMovementOf(component, modes);
   const limits = [
     ...travelLimits(component.supports, modes, planes),
-    ...stackLimits(placesIn(places, planes), modes).map((limit) => ({
-      ...limit,
-      most: limit.most + looserMm,
-    })),
+    ...placesIn(places, planes).flatMap((place) =>
+      stackLimits(place, modes).map((limit) => ({ ...limit, most: limit.most + looserMm(place) })),
+    ),
   ];
   const best = solveQuadraticProgram(modes.length, [pull, leastMovement], limits);
   if (!best.feasible) {
@@ -83,7 +85,17 @@ export function idealMoveOf(
     if (!limit) return [];
     const sign = limit.place.side === "max" ? 1 : -1;
     const wanted = limit.row.reduce((sum, value, i) => sum + value * (unhindered[i] ?? 0), 0);
-    return [{ limit: limit.place, worth: multiplier, limitMm: sign * limit.most, wantedMm: sign * wanted }];
+    return [
+      {
+        limit: limit.place,
+        row: limit.row,
+        most: limit.most,
+        // The multiplier is that of half the gradient, for a row of length 1.
+        worth: (2 * multiplier) / lengthOf(limit.row),
+        limitMm: sign * limit.most,
+        wantedMm: sign * wanted,
+      },
+    ];
   });
   const move: IdealMove = {
     planes,
@@ -93,7 +105,7 @@ export function idealMoveOf(
     amounts: best.point,
     unhindered,
     cost: costOf(pull, best.point),
-    hindrances,
+    hindrances: hindrances.sort((a, b) => b.worth - a.worth),
     determined: minimiseInOrder(modes.length, [pull]).free.length === 0,
   };
   return { possible: true, move };

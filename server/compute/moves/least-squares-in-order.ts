@@ -1,4 +1,5 @@
 import { Matrix, SVD } from "ml-matrix";
+import { assertFinite } from "../compute-error.ts";
 
 /** Minimise ‖rows·x − targets‖. */
 export interface LeastSquares {
@@ -41,11 +42,16 @@ export function wholeSpace(size: number): Minimisers {
   };
 }
 
-/** Singular value decomposition with as many right vectors as columns, also for fewer rows than columns. */
+/**
+ * Singular value decomposition with as many right vectors as columns, also for fewer rows than columns.
+ * @throws ComputeError result_overflow when an entry is not finite: the decomposition would not end
+ */
 export function decompose(rows: readonly (readonly number[])[], columns: number) {
   if (columns === 0) return { singular: [], left: [], right: [] };
   const padded = new Matrix(Math.max(rows.length, columns), columns);
-  rows.forEach((row, i) => row.forEach((value, k) => padded.set(i, k, value)));
+  rows.forEach((row, i) =>
+    row.forEach((value, k) => padded.set(i, k, assertFinite(value, "An entry of a least squares problem"))),
+  );
   const svd = new SVD(padded);
   const { leftSingularVectors: left, rightSingularVectors: right } = svd;
   return { singular: svd.diagonal, left: left.transpose().to2DArray(), right: right.transpose().to2DArray() };

@@ -25,13 +25,15 @@ export function travelLimits(
   );
 }
 
-/** What every stack may still give or take before it passes its own least and most thickness. */
-export function stackLimits(places: readonly Place[], modes: readonly Mode[]): PlacedLimit[] {
-  return places.flatMap(({ support, name, zMm, direction, stack }) => {
-    const row = rowAlong(modes, direction, zMm);
-    const at = { of: "stack", support, place: name } as const;
-    return between(row, stack.minMm - stack.thicknessMm, stack.maxMm - stack.thicknessMm, at);
-  });
+/** What a stack may still give or take before it passes its own least and most thickness. */
+export function stackLimits(
+  { support, name, zMm, direction, offsetMm, stack }: Place,
+  modes: readonly Mode[],
+): PlacedLimit[] {
+  const row = rowAlong(modes, direction, zMm);
+  const at = { of: "stack", support, place: name } as const;
+  const standsMm = stack.thicknessMm + offsetMm;
+  return between(row, stack.minMm - standsMm, stack.maxMm - standsMm, at);
 }
 
 type Sideless<Placed> = Placed extends LimitPlace ? Omit<Placed, "side"> : never;

@@ -1,6 +1,8 @@
 import type { Verdict } from "../conformity/tolerance.ts";
 import type { PlaneVector } from "../plane.ts";
 import type { Plane } from "./move-problem.ts";
+import type { RollAnswer } from "./roll.ts";
+import type { Tilt } from "./tilt.ts";
 
 /** How far the bore moves at one support. */
 export interface SupportMove extends PlaneVector {
@@ -49,6 +51,8 @@ export type Unreachable = {
   | { readonly cause: "rigid" }
   /** The ideal move would do; the shims that can be cut do not. */
   | { readonly cause: "shims" }
+  /** The stations are inside; the tilt of the part is not. */
+  | { readonly cause: "tilt"; readonly planes: readonly Plane[] }
 );
 
 export interface ComponentMove {
@@ -58,6 +62,9 @@ export interface ComponentMove {
   readonly realised: readonly SupportMove[];
   readonly stacks: readonly StackChange[];
   readonly unreachable: Unreachable | null;
+  /** Slope of the line through the end stations before and after; null where no tolerance of it was stated. */
+  readonly tilt: { readonly found: Tilt; readonly predicted: Tilt } | null;
+  readonly roll: RollAnswer | null;
 }
 
 export interface PredictedStation {
@@ -110,6 +117,12 @@ export type Advice =
       readonly stationIds: readonly string[];
     }
   | { readonly code: "tilt_not_determined"; readonly componentId: string; readonly planes: readonly Plane[] }
+  | { readonly code: "tilt_not_adjustable"; readonly componentId: string; readonly planes: readonly Plane[] }
+  | {
+      readonly code: "shifted_afterwards";
+      readonly componentId: string;
+      readonly stationIds: readonly string[];
+    }
   | { readonly code: "bearing_afterwards"; readonly componentIds: readonly string[] }
   | { readonly code: "reference_held"; readonly componentId: string; readonly stationIds: readonly string[] }
   | { readonly code: "axis_survey_anew"; readonly stationIds: readonly string[] };

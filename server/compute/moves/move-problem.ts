@@ -64,6 +64,33 @@ export interface MoveComponent {
   readonly fixed: boolean;
   readonly allowReferenceMove: boolean;
   readonly supports: readonly MoveSupport[];
+  /** The component that this one rests in: its stations follow that one's move before its own. */
+  readonly carriedById: string | null;
+  /** Largest slope of the line through its two end stations; null where its tilt is not held to anything. */
+  readonly tiltTolerance: Readonly<Record<Plane, number>> | null;
+  readonly roll: Roll | null;
+}
+
+/** A measured turn of a part about its bore, to be taken out by its feet. */
+export interface Roll {
+  /** Positive clockwise, seen downstream. */
+  readonly radians: number;
+  /** Where its feet stand, from the bore's centre. */
+  readonly feet: readonly {
+    readonly supportId: string;
+    readonly place: string;
+    readonly hMm: number;
+    readonly vMm: number;
+  }[];
+}
+
+/** How a support's move shifts a station that its part does not carry: by so much in h, and in v, per unit there. */
+export interface Coupling {
+  readonly componentId: string;
+  readonly supportId: string;
+  readonly stationId: string;
+  readonly h: number;
+  readonly v: number;
 }
 
 export interface MoveIndicator {
@@ -78,6 +105,7 @@ export interface MoveProblem {
   readonly stations: readonly MoveStation[];
   readonly referenceIds: readonly string[];
   readonly components: readonly MoveComponent[];
+  readonly couplings: readonly Coupling[];
   /** Shims cut to any whole multiple of this thickness; null: none are chosen, every change is the ideal one. */
   readonly cutIncrementMm: number | null;
   /** Most that may be left between a chosen change and the rigid move, at any place. */

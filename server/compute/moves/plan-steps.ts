@@ -4,25 +4,28 @@ import type { Increment, Step, SupportMove, Watch } from "./move-plan.ts";
 import type { MoveIndicator, MoveProblem } from "./move-problem.ts";
 import type { RigidMove } from "./rigid-freedom.ts";
 import type { SolvedComponent } from "./solve-component.ts";
+import type { StationShift } from "./station-shifts.ts";
 
 /**
- * The moves in the order in which they are made (common practice, no source): casings, shrouds, nozzles and other parts
- * to the axis first, bearings after, each in the order sent and locked before the next.
+ * The moves as steps, in the order solved: each made and locked before the next.
  * @throws ComputeError combination_invalid when the moves would be split into more parts than `incrementsMax`
  */
-export function planSteps(problem: MoveProblem, solved: readonly SolvedComponent[]): Step[] {
-  const moving = solved.filter(({ moved }) => moved);
+export function planSteps(
+  problem: MoveProblem,
+  inOrder: readonly SolvedComponent[],
+  shiftOf: StationShift,
+): Step[] {
+  const moving = inOrder.filter(({ moved }) => moved);
   const parts = moving.reduce(
     (sum, { answer }) => sum + incrementCount(answer.realised, problem.maximumIncrementMm),
     0,
   );
   if (parts > problem.incrementsMax) throw tooManyParts(parts, problem.incrementsMax);
-  const isBearing = ({ component }: SolvedComponent) => component.kind === "bearing";
-  return [...moving.filter((each) => !isBearing(each)), ...moving.filter(isBearing)].map((each, index) => ({
+  return moving.map((each, index) => ({
     order: index + 1,
     componentId: each.component.id,
     increments: incrementsOf(problem, each),
-    watch: problem.referenceIds.flatMap((id) => watchOf(problem, each, id)),
+    watch: watchOf(problem, each, shiftOf),
   }));
 }
 
@@ -37,7 +40,10 @@ export function incrementCount(moves: readonly SupportMove[], maximumMm: number 
   return maximumMm === null ? 1 : Math.max(1, Math.ceil(largestMm / maximumMm - 1e-9));
 }
 
-function incrementsOf(problem: MoveProblem, { component, answer, realised }: SolvedComponent): Increment[] {
+function incrementsOf(
+  problem: MoveProblem,
+  { component, answer, supportMove }: SolvedComponent,
+): Increment[] {
   const indicators = problem.indicators.filter(({ componentId }) => componentId === component.id);
   const count = incrementCount(answer.realised, problem.maximumIncrementMm);
   return Array.from({ length: count }, (_, k) => {
@@ -50,7 +56,7 @@ function incrementsOf(problem: MoveProblem, { component, answer, realised }: Sol
       })),
       readings: indicators.map((indicator) => ({
         indicatorId: indicator.id,
-        readingMm: readingMm(indicator, realised) * share,
+        readingMm: readingMm(indicator, supportMove) * share,
       })),
     };
   });
@@ -64,14 +70,26 @@ function readingMm({ zMm, clockDeg, contact }: MoveIndicator, move: RigidMove): 
   return contact === "outside" ? toward : 0 - toward;
 }
 
-/** A reference station must not change while others move, unless its own part does. */
-function watchOf(problem: MoveProblem, { component, realised }: SolvedComponent, stationId: string): Watch[] {
-  const station = problem.stations.find(({ id }) => id === stationId);
-  if (!station) return [];
-  const change = component.stationIds.includes(stationId) ? realised(station.zMm) : { hMm: 0, vMm: 0 };
-  const about = (mm: number) => ({
-    minMm: mm - problem.maximumMisfitMm,
-    maxMm: mm + problem.maximumMisfitMm,
+/**
+ * The neighbours to read meanwhile: the reference stations, which must not change unless this part carries them, and
+ * the stations of others that this move shifts.
+ */
+function watchOf(
+  { stations, referenceIds, maximumMisfitMm }: MoveProblem,
+  { index, component, realised }: SolvedComponent,
+  shiftOf: StationShift,
+): Watch[] {
+  const about = (mm: number) => ({ minMm: mm - maximumMisfitMm, maxMm: mm + maximumMisfitMm });
+  const byId = new Map(stations.map((station) => [station.id, station]));
+  const shifted = stations.filter((station) => {
+    const { hMm, vMm } = shiftOf(index, realised, station);
+    return !component.stationIds.includes(station.id) && (hMm !== 0 || vMm !== 0);
   });
-  return [{ stationId, change, stopAt: { h: about(change.hMm), v: about(change.vMm) } }];
+  const watched = new Set([...referenceIds, ...shifted.map(({ id }) => id)]);
+  return [...watched].flatMap((stationId) => {
+    const station = byId.get(stationId);
+    if (!station) return [];
+    const change = shiftOf(index, realised, station);
+    return [{ stationId, change, stopAt: { h: about(change.hMm), v: about(change.vMm) } }];
+  });
 }

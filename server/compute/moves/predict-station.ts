@@ -1,3 +1,4 @@
+import { assertFinite } from "../compute-error.ts";
 import { judge } from "../conformity/judge.ts";
 import type { PlaneVector } from "../plane.ts";
 import type { PredictedStation } from "./move-plan.ts";
@@ -17,7 +18,10 @@ export function predictStation(station: MoveStation, move: RigidMove, level: num
   return { id, deviation, verdict };
 }
 
-/** The station left farthest beyond its tolerance, uncertainty aside, and its |d|/T; null when none is beyond. */
+/**
+ * The station left farthest beyond its tolerance, uncertainty aside, and its |d|/T; null when none is beyond.
+ * @throws ComputeError tolerance_invalid, result_overflow
+ */
 export function worstBeyond(
   stations: readonly MoveStation[],
   move: RigidMove,
@@ -35,7 +39,9 @@ export function worstBeyond(
       level,
       rule: "simple",
     });
-    return verdict === "exceeds" ? [{ stationId: id, ratio }] : [];
+    return verdict === "exceeds"
+      ? [{ stationId: id, ratio: assertFinite(ratio, "A share of a tolerance") }]
+      : [];
   });
   return beyond.reduce<(typeof beyond)[number] | null>(
     (worst, next) => (next.ratio > (worst?.ratio ?? 0) ? next : worst),

@@ -1,10 +1,13 @@
 import { along, dot, type LeastSquares } from "./least-squares-in-order.ts";
 import { excessOver, solveQuadraticProgram } from "./quadratic-program.ts";
-import type { RigidFit } from "./rigid-fit.ts";
 import type { SearchBudget } from "./search-budget.ts";
 import { changesWithin, sameThicknessMm, type ShimChange } from "./shim-changes.ts";
+import { moveShareMm } from "./shim-groups.ts";
 import type { ChosenStack, PlaceRow, ShimChoice, ShimTask } from "./shim-task.ts";
 import { costOf } from "./station-pull.ts";
+
+/** What solving one quadratic program is worth, in trials of the search. */
+const trialsPerProgram = 100;
 
 /**
  * The rigid move that `changes` make (one per load-bearing place of the task, in its order), with what the upper pads
@@ -13,29 +16,30 @@ import { costOf } from "./station-pull.ts";
  */
 export function realiseChoice(
   task: ShimTask,
-  fit: RigidFit,
   changes: readonly ShimChange[],
   budget: SearchBudget,
 ): ShimChoice | null {
-  const fitted = along(
-    new Array<number>(task.size).fill(0),
-    fit.columns,
-    changes.map(({ changeMm }) => changeMm),
-  );
-  const amounts = fit.open.length === 0 ? fitted : setByJack(task, fit, fitted);
+  budget.spend(changes.length);
+  const { fit } = task;
+  const shares = task.loaded.map(({ place }, k) => moveShareMm(place, changes[k]?.changeMm ?? 0));
+  const fitted = along(new Array<number>(task.size).fill(0), fit.columns, shares);
+  // What is set by jack moves none of these places: their misfit is known before it.
+  const misfits = task.loaded.map(({ row }, k) => (shares[k] ?? 0) - dot(row, fitted));
+  const mostMm = task.maximumMisfitMm + sameThicknessMm;
+  if (misfits.some((misfitMm) => Math.abs(misfitMm) > mostMm)) return null;
+  const amounts = fit.open.length === 0 ? fitted : setByJack(task, fitted, budget);
   if (!amounts || task.travel.some((limit) => excessOver(limit, amounts) > 0)) return null;
 
-  const stacks: ChosenStack[] = [];
-  for (const [k, { place, row }] of task.loaded.entries()) {
+  const stacks: ChosenStack[] = task.loaded.flatMap(({ place }, k) => {
     const change = changes[k];
-    if (change) stacks.push({ place, change, misfitMm: change.changeMm - dot(row, amounts) });
-  }
+    return change ? [{ place, change, misfitMm: misfits[k] ?? 0 }] : [];
+  });
   for (const follower of task.following) {
     const stack = follow(follower, amounts, task, budget);
     if (!stack) return null;
     stacks.push(stack);
   }
-  if (stacks.some(({ misfitMm }) => Math.abs(misfitMm) > task.maximumMisfitMm + sameThicknessMm)) return null;
+  if (stacks.some(({ misfitMm }) => Math.abs(misfitMm) > mostMm)) return null;
   return {
     amounts,
     cost: costOf(task.pull, amounts),
@@ -46,7 +50,13 @@ export function realiseChoice(
 }
 
 /** What the places leave open is set to the best, within the travel, once their shims are in. */
-function setByJack(task: ShimTask, fit: RigidFit, fitted: readonly number[]): readonly number[] | null {
+function setByJack(
+  task: ShimTask,
+  fitted: readonly number[],
+  budget: SearchBudget,
+): readonly number[] | null {
+  budget.spend(trialsPerProgram + task.travel.length);
+  const { fit } = task;
   const byShims: LeastSquares = {
     rows: fit.determined,
     targets: fit.determined.map((direction) => dot(direction, fitted)),
@@ -59,7 +69,10 @@ function setByJack(task: ShimTask, fit: RigidFit, fitted: readonly number[]): re
   return broken ? null : best.point;
 }
 
-/** The change of an upper pad nearest to the realised move; of equally near ones the fewest pieces, then the thinner. */
+/**
+ * The change of an upper pad nearest to the realised move; of equally near ones the fewest pieces, then the thinner.
+ * It lies within an increment, unless the stack's own limits keep it farther off.
+ */
 function follow(
   { place, row }: PlaceRow,
   amounts: readonly number[],
@@ -67,8 +80,13 @@ function follow(
   budget: SearchBudget,
 ): ChosenStack | null {
   const needMm = dot(row, amounts);
-  const reachMm = Math.min(task.maximumMisfitMm, task.incrementMm) + sameThicknessMm;
-  const near = changesWithin(place.stack, task.incrementMm, needMm - reachMm, needMm + reachMm, budget)
+  const withinMm = (mm: number) => {
+    const reachMm = mm + sameThicknessMm;
+    return changesWithin(place.stack, task.incrementMm, needMm - reachMm, needMm + reachMm, budget);
+  };
+  const close = withinMm(Math.min(task.maximumMisfitMm, task.incrementMm));
+  const changes = close.length > 0 ? close : withinMm(task.maximumMisfitMm);
+  const near = changes
     .map((change) => ({ place, change, misfitMm: change.changeMm - needMm }))
     .sort(
       (a, b) =>

@@ -1,7 +1,10 @@
 import { ComputeError } from "../compute-error.ts";
 
-/** Trials that one component, and one call, may spend on the choice of shims: no call holds the service up. */
-const mostPerComponent = 400_000;
+/**
+ * Trials that one component, and one call, may spend on the choice of shims: no call holds the service up. A trial is
+ * the look at one option for one stack; larger pieces of work count as the trials they take as long as.
+ */
+const mostPerComponent = 1_000_000;
 const mostPerCall = 2_000_000;
 
 /** Trials spent in one call. */
@@ -17,12 +20,12 @@ export class SearchBudget {
   spend(trials: number): void {
     this.spentOnComponent += trials;
     this.spent += trials;
-    const over =
-      this.spentOnComponent > mostPerComponent
-        ? mostPerComponent
-        : this.spent > mostPerCall
-          ? mostPerCall
-          : null;
+    // Told so that what is not a number is too much as well.
+    const over = !(this.spentOnComponent <= mostPerComponent)
+      ? mostPerComponent
+      : !(this.spent <= mostPerCall)
+        ? mostPerCall
+        : null;
     if (over !== null) {
       throw new ComputeError("too_many_choices", `The choice of shims needs more than ${over} trials.`, {
         limit: over,

@@ -1,51 +1,79 @@
 import { dot, narrow, wholeSpace } from "./least-squares-in-order.ts";
 import type { SearchBudget } from "./search-budget.ts";
 
-/** Something chosen at one place, and its effect: effects add up over the places. */
-interface Option {
+/** Something chosen at one place. Its effect, rise and pushes add up over the places. */
+export interface SearchOption {
   readonly effect: readonly number[];
+  readonly rise: number;
+  readonly pushes: readonly number[];
+}
+
+/** What can be chosen at one place. */
+export interface SearchPlace<Option extends SearchOption> {
+  readonly options: readonly Option[];
+  /** Their effects lie in the span of these. */
+  readonly columns: readonly (readonly number[])[];
+  /** From the options before it: false where an option can be part of no choice that begins with them. */
+  readonly allowed: (before: readonly Option[]) => (option: Option) => boolean;
 }
 
 /**
- * Visits every choice of one option per place whose summed effect e has |e|² ≤ bound(), which the visitor may lower as
- * it finds better ones. Depth first, each place's options in the order given. A branch is left when no choice at the
- * places still open can bring |e|² within the bound: their effects lie in the span of `columns`, so the part of the sum
- * outside that span stays (the sphere decoder's bound of U. Fincke and M. Pohst, Mathematics of Computation 44 (1985)
- * 463–471, from memory, in orthogonal projections). Nothing within the bound is missed.
+ * Visits every choice of one option per place, each allowed beside those before it, whose summed effect e, rise r and
+ * pushes p have |e|² + max(0, r) ≤ bound() and p ≤ `most`. The visitor may lower the bound as it finds better ones.
+ * Depth first, each place's options in the order given. A branch is left when no choice at the places still open can
+ * keep these: |e|² is at least that of the part of the sum outside the span of their columns (the sphere decoder's bound
+ * of U. Fincke and M. Pohst, Mathematics of Computation 44 (1985) 463–471, from memory, in orthogonal projections),
+ * rises and pushes at least their least. Nothing within the bounds is missed.
  * @throws ComputeError too_many_choices
  */
-export function searchChoices<Choice extends Option>(
-  places: readonly {
-    readonly options: readonly Choice[];
-    readonly columns: readonly (readonly number[])[];
-  }[],
+export function searchChoices<Option extends SearchOption>(
+  places: readonly SearchPlace<Option>[],
   size: number,
+  most: readonly number[],
   bound: () => number,
-  visit: (choices: readonly Choice[]) => void,
+  visit: (choices: readonly Option[]) => void,
   budget: SearchBudget,
 ): void {
-  const staying = places.map((_, depth) =>
-    outside(
-      places.slice(depth + 1).flatMap(({ columns }) => columns),
-      size,
-    ),
-  );
-  const chosen: Choice[] = [];
+  const later = places.map((_, depth) => {
+    const open = places.slice(depth + 1);
+    const leastOf = (value: (option: Option) => number) =>
+      open.reduce((sum, { options }) => sum + leastIn(options, value), 0);
+    return {
+      staying: outside(
+        open.flatMap(({ columns }) => columns),
+        size,
+      ),
+      leastRise: leastOf(({ rise }) => rise),
+      leastPushes: most.map((_, t) => leastOf(({ pushes }) => pushes[t] ?? 0)),
+    };
+  });
+  const chosen: Option[] = [];
 
-  const descend = (depth: number, sum: readonly number[]): void => {
+  const descend = (depth: number, sum: readonly number[], rise: number, pushes: readonly number[]): void => {
     const place = places[depth];
-    if (!place) return visit(chosen);
+    const rest = later[depth];
+    if (!place || !rest) return visit(chosen);
     budget.spend(place.options.length);
+    const allowed = place.allowed(chosen);
     for (const option of place.options) {
+      if (!allowed(option)) continue;
+      const pushed = pushes.map((push, t) => push + (option.pushes[t] ?? 0));
+      if (pushed.some((push, t) => push + (rest.leastPushes[t] ?? 0) > (most[t] ?? 0))) continue;
       const next = sum.map((value, k) => value + (option.effect[k] ?? 0));
-      const least = (staying[depth] ?? []).reduce((total, direction) => total + dot(direction, next) ** 2, 0);
-      if (least > bound()) continue;
+      const risen = rise + option.rise;
+      const least = rest.staying.reduce((total, direction) => total + dot(direction, next) ** 2, 0);
+      if (least + Math.max(0, risen + rest.leastRise) > bound()) continue;
       chosen.push(option);
-      descend(depth + 1, next);
+      descend(depth + 1, next, risen, pushed);
       chosen.pop();
     }
   };
-  descend(0, new Array<number>(size).fill(0));
+  const none = most.map(() => 0);
+  descend(0, new Array<number>(size).fill(0), 0, none);
+}
+
+function leastIn<Option>(options: readonly Option[], value: (option: Option) => number): number {
+  return options.reduce((least, option) => Math.min(least, value(option)), Infinity);
 }
 
 /** Orthonormal directions outside the span of `columns`. */

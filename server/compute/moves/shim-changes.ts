@@ -13,6 +13,10 @@ export interface ShimChange {
 /** Thicknesses this near are one thickness: far below any gauge, far above rounding. */
 export const sameThicknessMm = 1e-9;
 
+/** What listing one change, and one set of pieces to take out, is worth in trials of the search. */
+const trialsPerWay = 10;
+const trialsPerRemoval = 4;
+
 /**
  * The changes of one stack that lie within `from` to `to`, thinnest first, with shims cut to any whole multiple of
  * `incrementMm`: any of its pieces may come out (a pack whose pieces are not known is one piece: it stays and is added
@@ -35,8 +39,11 @@ export function changesWithin(
   for (const { sumMm, pieces, left } of removalsFrom(stack, budget)) {
     const fewest = Math.max(0, Math.ceil((lowMm + sumMm) / incrementMm));
     const most = Math.floor((highMm + sumMm) / incrementMm);
-    budget.spend(Math.max(0, most - fewest + 1));
-    for (let count = fewest; count <= most; count++) {
+    const ways = Math.max(0, most - fewest + 1);
+    budget.spend(trialsPerWay * ways);
+    // Counted by ways: beyond 2^53 adding 1 to a count would not end.
+    for (let way = 0; way < ways; way++) {
+      const count = fewest + way;
       if (left + (count > 0 ? 1 : 0) > stack.maxCount) continue;
       const addMm = count > 0 ? [count * incrementMm] : [];
       const handled = pieces.length + addMm.length;
@@ -72,7 +79,7 @@ function removalsFrom(stack: ShimStack, budget: SearchBudget): Iterable<Removal>
       const removal = { sumMm: sumMm + piece, pieces: [...pieces, piece], left: left - 1 };
       if (!removals.has(keyOf(removal))) removals.set(keyOf(removal), removal);
     }
-    budget.spend(removals.size);
+    budget.spend(trialsPerRemoval * removals.size);
   }
   return removals.values();
 }

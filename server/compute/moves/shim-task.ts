@@ -1,5 +1,7 @@
+import type { Hindrance } from "./ideal-move.ts";
 import type { LeastSquares } from "./least-squares-in-order.ts";
 import type { PlacedLimit } from "./move-limits.ts";
+import type { RigidFit } from "./rigid-fit.ts";
 import type { ShimChange } from "./shim-changes.ts";
 import type { Pull } from "./station-pull.ts";
 import type { Place } from "./support-places.ts";
@@ -14,9 +16,15 @@ export interface ShimTask {
   /** Places that bear load, and upper pads, which follow. The change at each is row·amounts. */
   readonly loaded: readonly PlaceRow[];
   readonly following: readonly PlaceRow[];
+  /** How changes at the loaded places become the move. */
+  readonly fit: RigidFit;
   readonly ideal: readonly number[];
-  /** Best move within travel and within stack limits widened by the misfit: none that shims can realise is better. */
+  /**
+   * Best move within travel and within stack limits, widened by the misfit where there can be one: none that shims can
+   * realise is better. And the limits that hold it back, with what a millimetre short of each costs at least.
+   */
   readonly bestImaginable: readonly number[];
+  readonly hindrances: readonly Hindrance[];
   readonly incrementMm: number;
   readonly maximumMisfitMm: number;
 }

@@ -1,23 +1,32 @@
 import { ComputeError } from "../compute-error.ts";
+import { asIdeal, movesOf, stackChangeOf } from "./component-answer.ts";
 import { explainUnreachable } from "./explain-unreachable.ts";
-import { fitShims } from "./fit-shims.ts";
+import { fitShims, type FittedShims } from "./fit-shims.ts";
 import { idealMoveOf, planesTogether, type IdealMove } from "./ideal-move.ts";
-import type { ComponentMove, LimitPlace, StackChange, SupportMove, Unreachable } from "./move-plan.ts";
+import type { ComponentMove, LimitPlace, Unreachable } from "./move-plan.ts";
 import type { MoveComponent, MoveProblem, MoveStation } from "./move-problem.ts";
 import { worstBeyond } from "./predict-station.ts";
 import { moveAt, noMove, sumOfMoves, type RigidMove } from "./rigid-freedom.ts";
+import { boreShiftOf, rollTakenOut, type RollAnswer } from "./roll.ts";
 import type { SearchBudget } from "./search-budget.ts";
-import type { ChosenStack } from "./shim-task.ts";
+import { shiftedBy } from "./station-shifts.ts";
 import { placesOf, type Place } from "./support-places.ts";
+import { planesTooSteep, tiltOf } from "./tilt.ts";
 
 /** A component's answer, and what the plan of the whole machine is made of. */
 export interface SolvedComponent {
+  /** Of the component in its problem. */
+  readonly index: number;
   readonly component: MoveComponent;
+  /** Its own, where the moves before this one leave them. */
   readonly stations: readonly MoveStation[];
   readonly answer: ComponentMove;
   readonly places: readonly Place[];
   /** The ideal moves of its planes; none when it may not move or no move keeps all limits. */
   readonly ideals: readonly IdealMove[];
+  /** The move of its supports. */
+  readonly supportMove: RigidMove;
+  /** The move of its bores: the same, and what taking out a roll adds. */
   readonly realised: RigidMove;
   readonly moved: boolean;
 }
@@ -27,73 +36,95 @@ const noMoveMm = 1e-12;
 
 /**
  * Moves one component: the best rigid move, the real shims for it, and the move that those make. `stations` are its
- * own. Without an increment to cut shims to, every change is the ideal one, and so is the realised move.
+ * own, where the moves before leave them. Without an increment to cut shims to, every change is the ideal one, and so
+ * is the realised move.
  * @throws ComputeError supports_insufficient, too_many_choices, not_converged
  */
 export function solveComponent(
   problem: MoveProblem,
-  component: MoveComponent,
+  index: number,
   stations: readonly MoveStation[],
   budget: SearchBudget,
 ): SolvedComponent {
-  const { cutIncrementMm, maximumMisfitMm, level } = problem;
-  const places = component.supports.flatMap(placesOf);
+  const component = problem.components[index];
+  if (!component) throw new RangeError("A component is solved by an index of the problem's.");
+  const { roll } = component;
+  const places = component.supports.flatMap((support, at) => placesOf(support, at, roll));
+  const still = { index, component, stations, places };
   const held = whyHeld(problem, component);
-  if (held) return stayPut(component, stations, places, level, held);
+  if (held) return stayPut(still, problem.level, held);
   if (component.supports.length === 0) {
-    throw new ComputeError(
-      "supports_insufficient",
-      "A component that may move rests on one support or more.",
-      {
-        at: ["supports"],
-      },
-    );
+    const detail = "A component that may move rests on one support or more.";
+    throw new ComputeError("supports_insufficient", detail, { at: ["supports"] });
   }
 
-  const answers = planesTogether(places).map((together) =>
-    idealMoveOf(component, stations, places, together),
-  );
-  const limits = answers.flatMap((answer) => (answer.possible ? [] : answer.conflict));
-  const contradiction = answers.some(({ possible }) => !possible);
-  if (contradiction) return stayPut(component, stations, places, level, { cause: "contradiction", limits });
+  // The roll comes out whatever the move: the stations are served from where that leaves them.
+  const level = roll ? [boreShiftOf(roll, roll.radians)] : [];
+  const served = stations.map((station) => shiftedBy(station, level));
+  const answers = planesTogether(places).map((together) => idealMoveOf(component, served, places, together));
+  if (answers.some(({ possible }) => !possible)) {
+    const limits = answers.flatMap((answer) => (answer.possible ? [] : answer.conflict));
+    return stayPut(still, problem.level, { cause: "contradiction", limits });
+  }
   const ideals = answers.flatMap((answer) => (answer.possible ? [answer.move] : []));
   const idealMove = togetherOf(
     ideals,
     ideals.map(({ amounts }) => amounts),
   );
+  const chosen = chooseStacks(problem, still, served, ideals, idealMove, budget);
+  return { ...still, ideals, ...realise(problem, still, served, ideals, idealMove, chosen) };
+}
 
-  const chosen =
-    cutIncrementMm === null
-      ? {
-          amounts: ideals.map(({ amounts }) => amounts),
-          stacks: places.map((place) => asIdeal(place, idealMove)),
-        }
-      : fitShims(
-          component,
-          stations,
-          places,
-          ideals,
-          { incrementMm: cutIncrementMm, maximumMisfitMm },
-          budget,
-        );
-  const realisedMove = chosen ? togetherOf(ideals, chosen.amounts) : noMove;
-  const worst = worstBeyond(stations, realisedMove, level);
-  const realised = movesOf(component, realisedMove);
-  const unreachable = worst || !chosen ? explainUnreachable(component, stations, ideals, level, worst) : null;
+type Still = Pick<SolvedComponent, "index" | "component" | "stations" | "places">;
+
+function chooseStacks(
+  { cutIncrementMm, maximumMisfitMm }: MoveProblem,
+  { component, places }: Still,
+  served: readonly MoveStation[],
+  ideals: readonly IdealMove[],
+  idealMove: RigidMove,
+  budget: SearchBudget,
+): FittedShims | null {
+  if (cutIncrementMm === null) {
+    return {
+      amounts: ideals.map(({ amounts }) => amounts),
+      stacks: places.map((place) => asIdeal(place, idealMove)),
+    };
+  }
+  const supply = { incrementMm: cutIncrementMm, maximumMisfitMm };
+  return fitShims(component, served, places, ideals, supply, budget);
+}
+
+function realise(
+  { level }: MoveProblem,
+  { component, stations, places }: Still,
+  served: readonly MoveStation[],
+  ideals: readonly IdealMove[],
+  idealMove: RigidMove,
+  chosen: FittedShims | null,
+): Pick<SolvedComponent, "supportMove" | "realised" | "moved" | "answer"> {
+  const { id, roll, supports } = component;
+  const supportMove = chosen ? togetherOf(ideals, chosen.amounts) : noMove;
+  const stacks = places.map((place) => stackChangeOf(component, place, idealMove, chosen?.stacks ?? []));
+  const zMmOf = (supportId: string) => supports.find((support) => support.id === supportId)?.zMm ?? 0;
+  const turned: RollAnswer | null = roll && rollTakenOut(roll, stacks, supportMove, zMmOf);
+  const realised = turned ? sumOfMoves([supportMove, () => turned.boreShift]) : supportMove;
+  const worst = worstBeyond(stations, realised, level);
+  const unreachable = worst || !chosen ? explainUnreachable(component, served, ideals, level, worst) : null;
+  const moves = movesOf(component, supportMove);
   return {
-    component,
-    stations,
-    places,
-    ideals,
-    realised: realisedMove,
-    moved: realised.some(({ hMm, vMm }) => hMm !== 0 || vMm !== 0),
+    supportMove,
+    realised,
+    moved: moves.some(({ hMm, vMm }) => hMm !== 0 || vMm !== 0) || stacks.some((each) => each.changeMm !== 0),
     answer: {
-      id: component.id,
+      id,
       fixed: false,
       ideal: movesOf(component, idealMove),
-      realised,
-      stacks: places.map((place) => stackChangeOf(component, place, idealMove, chosen?.stacks ?? [])),
-      unreachable,
+      realised: moves,
+      stacks,
+      unreachable: unreachable ?? tooSteep(component, stations, realised),
+      tilt: tiltAnswer(component, stations, realised),
+      roll: turned,
     },
   };
 }
@@ -109,31 +140,31 @@ function whyHeld({ referenceIds }: MoveProblem, component: MoveComponent): Held 
   return stationId === undefined || component.allowReferenceMove ? null : { cause: "reference", stationId };
 }
 
-function stayPut(
-  component: MoveComponent,
-  stations: readonly MoveStation[],
-  places: readonly Place[],
-  level: number,
-  held: Held,
-): SolvedComponent {
+function stayPut(still: Still, level: number, held: Held): SolvedComponent {
+  const { component, stations, places } = still;
+  const { id, roll } = component;
   const worst = worstBeyond(stations, noMove, level);
   const unreachable: Unreachable | null = worst || held.cause === "contradiction" ? { worst, ...held } : null;
-  const still = movesOf(component, noMove);
-  const stacks = places.map((place) => stackChangeOf(component, place, noMove, []));
+  const moves = movesOf(component, noMove);
   return {
-    component,
-    stations,
-    places,
+    ...still,
     ideals: [],
+    supportMove: noMove,
     realised: noMove,
     moved: false,
     answer: {
-      id: component.id,
+      id,
       fixed: held.cause !== "contradiction",
-      ideal: still,
-      realised: still,
-      stacks,
-      unreachable,
+      ideal: moves,
+      realised: moves,
+      stacks: places.map((place) => stackChangeOf(component, place, null, [])),
+      unreachable: unreachable ?? tooSteep(component, stations, noMove),
+      tilt: tiltAnswer(component, stations, noMove),
+      roll: roll && {
+        foundRadians: roll.radians,
+        predictedRadians: roll.radians,
+        boreShift: boreShiftOf(roll, 0),
+      },
     },
   };
 }
@@ -147,37 +178,22 @@ function togetherOf(ideals: readonly IdealMove[], amounts: readonly (readonly nu
   );
 }
 
-const movesOf = ({ supports }: MoveComponent, move: RigidMove): SupportMove[] =>
-  supports.map(({ id, zMm }) => ({ supportId: id, ...move(zMm) }));
-
-/** The change that a move of the bore asks of a place. */
-function changeFor({ direction, zMm }: Place, move: RigidMove): number {
-  const { hMm, vMm } = move(zMm);
-  return direction.h * hMm + direction.v * vMm;
+function tiltAnswer(
+  { tiltTolerance }: MoveComponent,
+  stations: readonly MoveStation[],
+  move: RigidMove,
+): ComponentMove["tilt"] {
+  const found = tiltTolerance && tiltOf(stations, noMove);
+  const predicted = tiltTolerance && tiltOf(stations, move);
+  return found && predicted ? { found, predicted } : null;
 }
 
-function asIdeal(place: Place, ideal: RigidMove): ChosenStack {
-  const change = { changeMm: changeFor(place, ideal), addMm: [], removeMm: [], handled: 0 };
-  return { place, change, misfitMm: 0 };
-}
-
-function stackChangeOf(
-  { supports }: MoveComponent,
-  place: Place,
-  ideal: RigidMove,
-  chosen: readonly ChosenStack[],
-): StackChange {
-  const stack = chosen.find((each) => each.place === place);
-  const changeMm = stack?.change.changeMm ?? 0;
-  return {
-    supportId: supports[place.support]?.id ?? "",
-    place: place.name,
-    idealMm: changeFor(place, ideal),
-    changeMm,
-    fromMm: place.stack.thicknessMm,
-    toMm: place.stack.thicknessMm + changeMm,
-    addMm: stack?.change.addMm ?? [],
-    removeMm: stack?.change.removeMm ?? [],
-    misfitMm: stack?.misfitMm ?? 0,
-  };
+function tooSteep(
+  { tiltTolerance }: MoveComponent,
+  stations: readonly MoveStation[],
+  move: RigidMove,
+): Unreachable | null {
+  const tilt = tiltTolerance && tiltOf(stations, move);
+  const planes = tilt ? planesTooSteep(tilt, tiltTolerance) : [];
+  return planes.length > 0 ? { worst: null, cause: "tilt", planes } : null;
 }

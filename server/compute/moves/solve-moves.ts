@@ -1,59 +1,85 @@
 import { assertFinite } from "../compute-error.ts";
 import { collectAdvice } from "./collect-advice.ts";
 import type { ComponentMove, MovePlan, PredictedStation } from "./move-plan.ts";
-import type { MoveComponent, MoveProblem } from "./move-problem.ts";
+import type { MoveProblem } from "./move-problem.ts";
 import { planSteps } from "./plan-steps.ts";
 import { predictStation } from "./predict-station.ts";
 import { noMove } from "./rigid-freedom.ts";
 import { SearchBudget } from "./search-budget.ts";
 import { solveComponent, type SolvedComponent } from "./solve-component.ts";
+import { solvingOrder } from "./solving-order.ts";
+import { shiftedBy, stationShiftsOf } from "./station-shifts.ts";
 
-/** Runs over the components; a caller that gathers every refusal brings its own. */
+/** Runs over the components, by index, in the order given; a caller that gathers every refusal brings its own. */
 export type ForEachComponent = (
-  components: readonly MoveComponent[],
-  solve: (component: MoveComponent) => SolvedComponent,
+  order: readonly number[],
+  solve: (index: number) => SolvedComponent,
 ) => SolvedComponent[];
 
 /**
  * The moves of a whole machine: for each component the best rigid move inside its limits and the real shims for it;
- * where every station then lies; the steps in their order; what to measure again; what else to know.
- * Lengths in mm. Ids are unique, every reference exists and every station belongs to one component at most.
+ * where every station then lies; the steps in their order; what to measure again; what else to know. Each component is
+ * solved with its stations where the moves before its own leave them.
+ * Lengths in mm. Ids are unique, every reference exists, every station belongs to one component at most and nothing
+ * carries itself.
  * Work: per component linear in its stations and limits; the choice of shims is bounded by a budget.
  * @throws ComputeError supports_insufficient, too_many_choices, not_converged, tolerance_invalid, combination_invalid,
  * result_overflow
  */
 export function solveMoves(
   problem: MoveProblem,
-  forEachComponent: ForEachComponent = (components, solve) => components.map(solve),
+  forEachComponent: ForEachComponent = (order, solve) => order.map(solve),
 ): MovePlan {
+  const { components, stations, level } = problem;
   const budget = new SearchBudget();
-  const stationById = new Map(problem.stations.map((station) => [station.id, station]));
-  const solved = forEachComponent(problem.components, (component) => {
+  const shiftOf = stationShiftsOf(problem);
+  const stationById = new Map(stations.map((station) => [station.id, station]));
+  const before: SolvedComponent[] = [];
+  const inOrder = forEachComponent(solvingOrder(components), (index) => {
     budget.startComponent();
-    const stations = component.stationIds.flatMap((id) => stationById.get(id) ?? []);
-    const one = solveComponent(problem, component, stations, budget);
+    const own = (components[index]?.stationIds ?? []).flatMap((id) => stationById.get(id) ?? []);
+    const asMoved = own.map((station) =>
+      shiftedBy(
+        station,
+        before.map((each) => shiftOf(each.index, each.realised, station)),
+      ),
+    );
+    const one = solveComponent(problem, index, asMoved, budget);
     assertAllFinite(one.answer);
+    before.push(one);
     return one;
   });
-  const carrier = new Map(solved.flatMap((each) => each.stations.map(({ id }) => [id, each] as const)));
-  const predicted = problem.stations.map((station) =>
-    predictStation(station, carrier.get(station.id)?.realised ?? noMove, problem.level),
-  );
+
+  const predicted = stations.map((station) => {
+    const shifts = inOrder.map((each) => shiftOf(each.index, each.realised, station));
+    return predictStation(shiftedBy(station, shifts), noMove, level);
+  });
   predicted.forEach(assertPredicted);
+  const asSent = [...inOrder].sort((a, b) => a.index - b.index);
+  const shifted = stations
+    .filter((station, k) => {
+      const there = predicted[k]?.deviation;
+      return there?.hMm !== station.deviation.hMm || there.vMm !== station.deviation.vMm;
+    })
+    .map(({ id }) => id);
   return {
-    components: solved.map(({ answer }) => answer),
+    components: asSent.map(({ answer }) => answer),
     predicted,
-    steps: planSteps(problem, solved),
-    remeasureIds: remeasureOf(problem, solved),
-    advice: collectAdvice(problem, solved),
+    steps: planSteps(problem, inOrder, shiftOf),
+    remeasureIds: remeasureOf(problem, inOrder, shifted),
+    advice: collectAdvice(problem, asSent, shiftOf),
   };
 }
 
-/** Reference stations first; then, in the order sent, the stations of every component that moved. */
-function remeasureOf({ stations, referenceIds }: MoveProblem, solved: readonly SolvedComponent[]): string[] {
+/** Reference stations first; then, in the order sent, the stations of every component that moved, and all shifted. */
+function remeasureOf(
+  { stations, referenceIds }: MoveProblem,
+  solved: readonly SolvedComponent[],
+  shiftedIds: readonly string[],
+): string[] {
   const moved = solved.filter((each) => each.moved);
   if (moved.length === 0) return [];
-  const movedIds = new Set(moved.flatMap(({ component }) => component.stationIds));
+  const movedIds = new Set([...moved.flatMap(({ component }) => component.stationIds), ...shiftedIds]);
   return [...new Set([...referenceIds, ...stations.map(({ id }) => id).filter((id) => movedIds.has(id))])];
 }
 

@@ -1,5 +1,6 @@
 import { clockDirection } from "../bore/clock-direction.ts";
-import type { FootPlace, JointKeyPlace, MoveSupport, Plane, ShimStack } from "./move-problem.ts";
+import type { FootPlace, JointKeyPlace, MoveSupport, Plane, Roll, ShimStack } from "./move-problem.ts";
+import { footOffsetMm } from "./roll.ts";
 
 /** A place of a support that holds a stack of shims. */
 export interface Place {
@@ -9,6 +10,8 @@ export interface Place {
   readonly zMm: number;
   /** Change of the stack for a move of the bore by 1 in h and in v. */
   readonly direction: Readonly<Record<Plane, number>>;
+  /** Change asked beside that move, to take out a roll. */
+  readonly offsetMm: number;
   /** False for an upper pad: it follows the realised move and has no say in it. */
   readonly bearsLoad: boolean;
   /** The place changed alike, if it has a stack too: the other foot (roll is kept), the opposed key (its fit is kept). */
@@ -24,8 +27,9 @@ export interface Place {
  * - Pads at clock angle φ: −(h·sin φ + v·cos φ); those at 90 to 270 degrees bear load. Straight up by v on pads at 135
  *   and 225 degrees is +v·cos 45° each (common practice, no source).
  */
-export function placesOf(support: MoveSupport, index: number): Place[] {
+export function placesOf(support: MoveSupport, index: number, roll: Roll | null = null): Place[] {
   const at = { support: index, zMm: support.zMm };
+  const offsetOf = (place: string) => footOffsetMm(roll, support.id, place);
   switch (support.form) {
     case "feet": {
       const side = support.keys === "outside" ? 1 : -1;
@@ -35,7 +39,7 @@ export function placesOf(support: MoveSupport, index: number): Place[] {
         "key-left": [side, 0],
         "key-right": [-side, 0],
       };
-      return stackedPlaces(at, directions, support.stacks);
+      return stackedPlaces(at, directions, support.stacks, offsetOf);
     }
     case "joint_keys": {
       const directions: Record<JointKeyPlace, [h: number, v: number]> = {
@@ -43,14 +47,22 @@ export function placesOf(support: MoveSupport, index: number): Place[] {
         "key-right": [0, 1],
         "key-bottom": [1, 0],
       };
-      return stackedPlaces(at, directions, support.stacks);
+      return stackedPlaces(at, directions, support.stacks, offsetOf);
     }
     case "pads":
       return support.pads.map(({ id, clockDeg, stack }) => {
         const { h, v } = clockDirection(clockDeg);
         // A hair of rounding (an angle sent as 450.0000000001 − 360) does not unload a pad.
         const bearsLoad = v <= 1e-12;
-        return { ...at, name: id, direction: { h: 0 - h, v: 0 - v }, bearsLoad, twin: null, stack };
+        return {
+          ...at,
+          name: id,
+          direction: { h: 0 - h, v: 0 - v },
+          offsetMm: 0,
+          bearsLoad,
+          twin: null,
+          stack,
+        };
       });
   }
 }
@@ -66,12 +78,23 @@ function stackedPlaces<Name extends string>(
   at: Pick<Place, "support" | "zMm">,
   directions: Readonly<Record<Name, readonly [h: number, v: number]>>,
   stacks: Readonly<Partial<Record<Name, ShimStack>>>,
+  offsetOf: (place: string) => number,
 ): Place[] {
   return (Object.keys(directions) as Name[]).flatMap((name) => {
     const stack = stacks[name];
     const [h, v] = directions[name];
     return stack
-      ? [{ ...at, name, direction: { h, v }, bearsLoad: true, twin: twins[name] ?? null, stack }]
+      ? [
+          {
+            ...at,
+            name,
+            direction: { h, v },
+            offsetMm: offsetOf(name),
+            bearsLoad: true,
+            twin: twins[name] ?? null,
+            stack,
+          },
+        ]
       : [];
   });
 }

@@ -6,6 +6,8 @@ import type { Limit } from "./quadratic-program.ts";
 const remainderBelow = 1e-9;
 /** A limit met this nearly counts as met with equality, relative to the numbers in it. */
 const metWithin = 1e-9;
+/** Numbers, mm, count as this large at least: at points nearer to 0 nothing is told apart any more. */
+const leastScaleMm = 1e-3;
 
 /**
  * Verifies the conditions of Karush, Kuhn and Tucker for least squares problems taken in order, at a point known to
@@ -26,14 +28,18 @@ export function verifyOptimum(
     const downhill = negativeGradient(problem, point);
     const within = (vector: readonly number[]) => held.free.map((direction) => dot(vector, direction));
     const target = within(downhill.direction);
-    const { weights, remainder } = nonnegativeLeastSquares(
-      open.map((j) => within(limits[j]?.row ?? [])),
-      target,
-    );
-    if (lengthOf(remainder) > remainderBelow * downhill.scale) return null;
+    const negligible = remainderBelow * downhill.scale;
+    const { weights, remainder } =
+      lengthOf(target) <= negligible
+        ? { weights: [], remainder: target }
+        : nonnegativeLeastSquares(
+            open.map((j) => within(limits[j]?.row ?? [])),
+            target,
+          );
+    if (lengthOf(remainder) > negligible) return null;
     const pushing = open
       .map((limit, k) => ({ limit, multiplier: weights[k] ?? 0 }))
-      .filter(({ multiplier }) => multiplier > remainderBelow * downhill.scale)
+      .filter(({ multiplier }) => multiplier > negligible)
       .sort((a, b) => b.multiplier - a.multiplier);
     binding ??= pushing;
     open = open.filter((j) => !pushing.some(({ limit }) => limit === j));
@@ -45,7 +51,7 @@ export function verifyOptimum(
 
 function isMet(limit: Limit | undefined, point: readonly number[]): boolean {
   if (!limit) return false;
-  const scale = Math.max(1e-3, Math.abs(limit.most), lengthOf(point));
+  const scale = Math.max(leastScaleMm, Math.abs(limit.most), lengthOf(point));
   return Math.abs(dot(limit.row, point) - limit.most) <= metWithin * scale;
 }
 
@@ -56,5 +62,5 @@ function negativeGradient({ rows, targets }: LeastSquares, point: readonly numbe
   const direction = point.map((_, k) =>
     rows.reduce((sum, row, i) => sum + (row[k] ?? 0) * (missing[i] ?? 0), 0),
   );
-  return { direction, scale: size * (size * lengthOf(point) + lengthOf(targets)) };
+  return { direction, scale: size * (size * Math.max(leastScaleMm, lengthOf(point)) + lengthOf(targets)) };
 }
