@@ -16,8 +16,8 @@ export function boreAnswerOf(bore: BoreRequest, fit: BoreFit, convert: Converter
     ...ofWall(fit, convert),
     covariance: covarianceOf(fit, offset),
     expandedUncertainty: uncertaintyOf(fit, offset),
-    contacts: null,
-    ellipse: null,
+    contacts: fit.form === "rotating_target" || !fit.contacts ? null : [...fit.contacts],
+    ellipse: ellipseOf(fit, convert),
     statistics: statisticsOf(fit, offset),
     warnings: fit.warnings.map(({ code, detail }) => ({ code, detail })),
   };
@@ -49,6 +49,18 @@ function ofWall(fit: BoreFit, { axial, bore, offset }: Converters) {
     arc: { ...fit.arc },
     taper: fit.taper === null ? null : { ...fit.taper },
     tilt: tilt === null ? null : { h: slopeOf(tilt.h), v: slopeOf(tilt.v) },
+  };
+}
+
+function ellipseOf(fit: BoreFit, { bore, offset }: Converters): BoreFitResult["ellipse"] {
+  if (fit.form === "rotating_target" || !fit.ellipse) return null;
+  const { majorMm, minorMm, ovalityMm, ovalityExpandedMm, majorClockDeg } = fit.ellipse;
+  return {
+    major: majorMm === null ? null : bore.fromMm(majorMm),
+    minor: minorMm === null ? null : bore.fromMm(minorMm),
+    ovality: offset.fromMm(ovalityMm),
+    ovalityExpandedUncertainty: ovalityExpandedMm === null ? null : offset.fromMm(ovalityExpandedMm),
+    majorClockDeg,
   };
 }
 

@@ -1,11 +1,22 @@
 import { describe, expect, it } from "vitest";
 import type { Fault } from "../../shared/error-codes.ts";
-import { badWire, everyFormMm, faultsOfThose, faultyBores, pointsBore, wireBore } from "../../tests/support/bore-requests.ts";
+import {
+  badWire,
+  everyFormMm,
+  faultsOfThose,
+  faultyBores,
+  pointsBore,
+  wireBore,
+} from "../../tests/support/bore-requests.ts";
 import { boreFitKind } from "./bore-fit.ts";
 
 const beside = (body: unknown, schemaFaults: readonly Fault[] = []) =>
   boreFitKind.faultsBesideSchema!(body, schemaFaults).map(({ pointer, code }) => `${pointer} ${code}`);
-const schemaFault = (pointer: string): Fault => ({ pointer, code: "unknown_field", detail: "Not known here." });
+const schemaFault = (pointer: string): Fault => ({
+  pointer,
+  code: "unknown_field",
+  detail: "Not known here.",
+});
 
 describe("boreFitKind.faultsBesideSchema", () => {
   it("finds the faults of the sound bores beside one that the schema refuses", () => {
@@ -37,7 +48,6 @@ describe("boreFitKind.faultsBesideSchema", () => {
     const body = { ...everyFormMm, units: { axial: "mm" }, bores: [...faultyBores] };
     expect(beside(body, [schemaFault("/units/bore")])).toEqual([
       "/bores/1/id duplicate_id",
-      "/bores/2/method not_available",
       "/bores/5/method combination_invalid",
       "/bores/5/wire/wireDiameter required",
     ]);

@@ -38,7 +38,7 @@ describe("boreFitKind.answer: refusals", () => {
   it("says of a fault what was sent", () => {
     const faults = faultsOf({ ...everyFormMm, bores: [...faultyBores] });
     expect(faults.find(({ code }) => code === "duplicate_id")?.value).toBe("brg-1");
-    expect(faults.find(({ code }) => code === "not_available")?.value).toBe("minimum_zone");
+    expect(faults.find(({ pointer }) => pointer === "/bores/5/method")?.value).toBe("ellipse");
     for (const { detail } of faults) expect(detail).toMatch(/^\S.*\.$/);
   });
 
@@ -77,7 +77,7 @@ describe("boreFitKind.answer: refusals", () => {
     ]);
   });
 
-  it("says which criteria it does not compute yet, and which a form never has", () => {
+  it("says which forms have no criterion but least squares", () => {
     const methods = ["minimum_zone", "maximum_inscribed", "minimum_circumscribed", "ellipse"] as const;
     for (const method of methods) {
       expect(
@@ -87,13 +87,32 @@ describe("boreFitKind.answer: refusals", () => {
           { ...targetBore, method },
           { ...wireBore, method },
         ]),
-      ).toEqual([
-        "/bores/0/method not_available",
-        "/bores/1/method not_available",
-        "/bores/2/method combination_invalid",
-        "/bores/3/method combination_invalid",
-      ]);
+      ).toEqual(["/bores/2/method combination_invalid", "/bores/3/method combination_invalid"]);
     }
+  });
+
+  it("names what a criterion does not take", () => {
+    const known = { ...taperBore, taper: { halfAngleDeg: 5 } };
+    const { taper: _taper, ...planes } = taperBore;
+    const half = { ...pointsBore, outliers: null, points: pointsBore.points.slice(0, 5) };
+    expect(
+      ofBores([
+        { ...taperBore, id: "a", method: "minimum_zone" },
+        { ...known, id: "b", method: "ellipse" },
+        { ...known, id: "c", method: "minimum_circumscribed" },
+        { ...planes, id: "d", method: "maximum_inscribed" },
+        { ...half, id: "e", method: "maximum_inscribed" },
+        { ...half, id: "f", method: "ellipse" },
+        { ...half, id: "g", method: "ellipse", points: half.points.slice(0, 4) },
+      ]),
+    ).toEqual([
+      "/bores/0/taper combination_invalid",
+      "/bores/1/taper combination_invalid",
+      "/bores/3/points combination_invalid",
+      "/bores/4/points no_inscribed_circle",
+      "/bores/5/points coverage_insufficient",
+      "/bores/6/points too_few_points",
+    ]);
   });
 
   it("asks for the wire's diameter only where its surface was touched", () => {

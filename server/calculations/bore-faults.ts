@@ -3,23 +3,14 @@ import { limits } from "../../shared/limits.ts";
 import { pointerOf } from "../../shared/pointer.ts";
 import type { BoreRequest } from "../../shared/schemas/bore-fits.ts";
 
-/** Members of one bore that are each right and do not go together, or that this engine does not compute. */
+/** Members of one bore that are each right and do not go together. */
 export function memberFaults(bore: BoreRequest, index: number): Fault[] {
   const faults: Fault[] = [];
   const { method = "least_squares" } = bore;
-  if (method !== "least_squares") {
+  if (method !== "least_squares" && bore.form !== "points" && bore.form !== "turned_gauge") {
     const pointer = pointerOf(["bores", index, "method"]);
-    const circle = bore.form === "points" || bore.form === "turned_gauge";
-    faults.push(
-      circle
-        ? { pointer, code: "not_available", detail: `${method} is not computed yet.`, value: method }
-        : {
-            pointer,
-            code: "combination_invalid",
-            detail: `${bore.form} takes least_squares only.`,
-            value: method,
-          },
-    );
+    const detail = `${bore.form} takes least_squares only.`;
+    faults.push({ pointer, code: "combination_invalid", detail, value: method });
   }
   if (
     bore.form === "wire" &&

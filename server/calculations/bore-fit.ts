@@ -10,6 +10,8 @@ import {
 import { seenSchema, unitsSchema } from "../../shared/schemas/common.ts";
 import { convertersFor, type Units } from "../../shared/units.ts";
 import { fitPreparedBore, prepareBore } from "../compute/bore/fit-bore.ts";
+import { fitPreparedCriterion, prepareCriterion } from "../compute/bore/fit-criterion.ts";
+import type { BoreInput } from "../compute/bore/bore-input.ts";
 import { boreAnswerOf } from "./bore-answer.ts";
 import { boresIn, duplicateFaults, memberFaults, readingsFault, readingsInCall } from "./bore-faults.ts";
 import { boreInputOf, type CallSettings } from "./bore-input.ts";
@@ -18,6 +20,8 @@ import { attemptEach, computeEach, faultOf } from "./collect-faults.ts";
 
 /** Readings fitted in less time than a thread takes to be worth it. */
 const readingsInPlace = 5_000;
+/** A criterion that compares every centre takes as long as least squares of this many readings, and as many times each. */
+const searchCost = { each: 500, perReading: 20 };
 const defaultLevel = 0.95;
 
 export interface BoreFitAnswer {
@@ -32,9 +36,17 @@ export const boreFitKind: CalculationKind<BoreFitRequest, BoreFitAnswer> = {
   kind: "bore-fit",
   request: boreFitRequest,
   answer: answerOf,
-  isLong: (request) => readingsInCall(request) > readingsInPlace,
+  isLong: (request) => readingsInCall(request) + searchesIn(request) > readingsInPlace,
   faultsBesideSchema,
 };
+
+/** What the searches of a call add to its readings. */
+function searchesIn({ bores }: BoreFitRequest): number {
+  return bores.reduce((sum, bore) => {
+    if ((bore.method ?? "least_squares") === "least_squares") return sum;
+    return sum + searchCost.each + searchCost.perReading * readingsInCall({ bores: [bore] });
+  }, 0);
+}
 
 function answerOf(request: BoreFitRequest): BoreFitAnswer {
   const { units, seen, level = defaultLevel, bores } = request;
@@ -59,7 +71,7 @@ function fitOne(
   units: Units,
 ): BoreFitResult {
   const convert = convertersFor(units);
-  const prepared = prepareBore(boreInputOf(bore, call, convert));
+  const prepared = prepare(bore, boreInputOf(bore, call, convert));
   const refusals = prepared.kind === "refused" ? prepared.refusals : [];
   const faults = [
     ...(duplicate ? [duplicate] : []),
@@ -67,7 +79,14 @@ function fitOne(
     ...refusals.map((refusal) => faultOf(refusal, ["bores", index])),
   ];
   if (faults.length > 0) throw new CalculationRefusal(faults);
-  return boreAnswerOf(bore, fitPreparedBore(prepared), convert);
+  const fit = prepared.kind === "criterion" ? fitPreparedCriterion(prepared) : fitPreparedBore(prepared);
+  return boreAnswerOf(bore, fit, convert);
+}
+
+/** By its criterion; a form that takes least squares only is looked at by that, its method refused beside. */
+function prepare({ method = "least_squares" }: BoreRequest, input: BoreInput) {
+  const walled = input.form === "points" || input.form === "turned_gauge";
+  return walled && method !== "least_squares" ? prepareCriterion(input, method) : prepareBore(input);
 }
 
 /**

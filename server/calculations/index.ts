@@ -5,6 +5,7 @@ import { axisDeviationKind } from "./axis-deviation.ts";
 import { boreFitKind } from "./bore-fit.ts";
 import { coldTargetKind } from "./cold-target.ts";
 import { confirmationKind } from "./confirmation.ts";
+import { measurementPlanKind } from "./measurement-plan.ts";
 import { repeatabilityStudyKind } from "./repeatability-study.ts";
 import { shimMoveKind } from "./shim-move.ts";
 
@@ -20,4 +21,5 @@ export const calculationKinds: Readonly<Record<CalculationKindName, AnyKind>> = 
   "cold-target": coldTargetKind,
   confirmation: confirmationKind,
   "repeatability-study": repeatabilityStudyKind,
+  "measurement-plan": measurementPlanKind,
 };

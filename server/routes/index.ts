@@ -10,6 +10,7 @@ import { engineOperations } from "./engine.ts";
 import { healthOperations } from "./health.ts";
 import { keyOperations } from "./keys.ts";
 import { memberOperations } from "./members.ts";
+import { measurementPlanOperations } from "./measurement-plans.ts";
 import { metaOperations } from "./meta.ts";
 import { repeatabilityStudyOperations } from "./repeatability-studies.ts";
 import { sessionOperations } from "./sessions.ts";
@@ -25,6 +26,7 @@ export const operations: readonly Operation[] = [
   ...coldTargetOperations,
   ...confirmationOperations,
   ...repeatabilityStudyOperations,
+  ...measurementPlanOperations,
   ...calculationOperations,
   ...keyOperations,
   ...memberOperations,

@@ -222,13 +222,10 @@ export const boreFitResult = z
     exclusions: z.array(z.object({ index: z.int(), ratio: z.number() })).meta({
       description: "Readings put aside, in that order, with |r|/u ÷ (1.4826 × median) at that moment.",
     }),
-    contacts: z
-      .array(z.int())
-      .nullable()
-      .meta({
-        description:
-          "Readings within 1e-9 radius of a limiting circle, counted from 0 and rising: the outer and the inner one for minimum_zone. Null for least_squares and ellipse, which have none.",
-      }),
+    contacts: z.array(z.int()).nullable().meta({
+      description:
+        "Readings within 1e-9 radius of a limiting circle, counted from 0 and rising: the outer and the inner one for minimum_zone. Null for least_squares and ellipse, which have none.",
+    }),
     covariance: covarianceAnswer.nullable().meta({
       description: "Of the centre (h, v), in the square of the offset unit; null where nothing tells it.",
     }),
@@ -279,12 +276,9 @@ export const boreFitResult = z
         readingsUsed: z.int(),
         parameters: z.int(),
         rms: z.number().meta({ description: "√(Σr²/n) of the readings in use." }),
-        chiSquare: z
-          .number()
-          .nullable()
-          .meta({
-            description: "Σ(r/u)²; null where no uncertainty is stated, and for the limiting circles.",
-          }),
+        chiSquare: z.number().nullable().meta({
+          description: "Σ(r/u)²; null where no uncertainty is stated, and for the limiting circles.",
+        }),
         varianceInflation: z.number().nullable().meta({
           description:
             "max(1, χ²/(n − p)), by which the stated variances were enlarged; null where none are stated.",

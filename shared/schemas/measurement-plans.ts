@@ -84,12 +84,10 @@ export const reachableSchema = z
       .strictObject({
         ranges: z
           .array(
-            z
-              .strictObject({ fromDeg: clockDeg, toDeg: clockDeg })
-              .meta({
-                id: "ClockRange",
-                description: "Clockwise from one to the other, over 12 o'clock if need be.",
-              }),
+            z.strictObject({ fromDeg: clockDeg, toDeg: clockDeg }).meta({
+              id: "ClockRange",
+              description: "Clockwise from one to the other, over 12 o'clock if need be.",
+            }),
           )
           .max(limits.rangesPerBore),
         stepDeg: fixedQuantity(
@@ -205,11 +203,9 @@ export const boreMeasurementPlan = z
       .array(z.object({ clockDeg: z.number(), readings: z.int() }))
       .meta({ description: "Clockwise, [0, 360)." }),
     addCount: z.int(),
-    after: centrePrediction
-      .nullable()
-      .meta({
-        description: "By those read and added; null where addedMax is too few to determine the centre.",
-      }),
+    after: centrePrediction.nullable().meta({
+      description: "By those read and added; null where addedMax is too few to determine the centre.",
+    }),
     best: centrePrediction.meta({ description: "By those read and all that can be reached." }),
     least: z
       .object({
@@ -221,7 +217,7 @@ export const boreMeasurementPlan = z
       .meta({
         id: "LeastCount",
         description:
-          "No choice does with fewer readings added than count. by: those read do not suffice; the even-ring bound Σ1/u² ≥ 2/u(centre)²; the continuous (E-optimal) relaxation. Null where none was found to do.",
+          "No choice does with fewer readings added than count. by: those read do not suffice, or are fewer than the unknowns; the even-ring bound Σ1/u² ≥ 2/u(centre)²; the continuous (E-optimal) relaxation. Null where none was found to do.",
       }),
     evenRingReadings: z
       .int()

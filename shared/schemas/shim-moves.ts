@@ -18,8 +18,6 @@ import {
 import { componentSchema } from "./move-components.ts";
 import { callerId, clockDeg, quantity } from "./quantity.ts";
 
-const notYet = "Refused as not_available by this engine version.";
-
 export const moveStationSchema = z
   .strictObject({
     id: callerId,
@@ -68,7 +66,10 @@ const shimSupplySchema = z
         }),
       )
       .max(limits.stockPerCall)
-      .meta({ description: `Thicknesses at hand. ${notYet}` })
+      .meta({
+        description:
+          "Thicknesses at hand, shared by all stacks of all components of the call and never overdrawn, in the order in which they are moved. quantity absent: unlimited. With cutToSize as well a piece may come from either.",
+      })
       .optional(),
     cutToSize: z
       .strictObject({ increment: quantity("offset", "shim", "Shims are cut to whole multiples of it.") })
@@ -77,7 +78,10 @@ const shimSupplySchema = z
       .optional(),
     reuse: z
       .boolean()
-      .meta({ description: `Whether pieces taken out go back to stock. true: ${notYet}` })
+      .meta({
+        description:
+          "Whether pieces taken out go back to stock, for the same component and those moved after it. false when absent.",
+      })
       .optional(),
   })
   .meta({ id: "ShimSupply" });
@@ -109,7 +113,10 @@ export const shimMoveRequest = z
     shims: shimSupplySchema.nullable().optional(),
     objective: z
       .enum(["least_squares", "minimax"])
-      .meta({ description: `least_squares (default): least Σ(d/T)². minimax: ${notYet}` })
+      .meta({
+        description:
+          "least_squares (default): least Σ(|d|/T)². minimax: of each component the largest |d|/T least, |d| radial where the tolerance is round, of h and v apart where each has its own.",
+      })
       .optional(),
     maximumIncrement: quantity(
       "offset",
@@ -160,7 +167,7 @@ const stackChange = z
 const unreachable = z
   .object({
     cause: z
-      .enum(["fixed", "reference", "contradiction", "limit", "blocked", "rigid", "shims", "tilt"])
+      .enum(["fixed", "reference", "contradiction", "limit", "blocked", "rigid", "shims", "stock", "tilt"])
       .meta({ description: "The kind of reason, for a program." }),
     reason: z.string().meta({ description: "In words, with the station that is left worst." }),
     limit: z
@@ -245,6 +252,20 @@ export const shimMoveResult = z
       .meta({ description: "Every station as the realised moves leave it." }),
     steps: z.array(stepAnswer),
     remeasure: z.array(z.string()).meta({ description: "Ids of stations, in order, after the last move." }),
+    search: z
+      .object({
+        method: z.enum(["alone", "enumeration", "mixed_integer_program", "in_turn"]).meta({
+          description:
+            "alone: each component by itself, the stock is enough for all. enumeration, mixed_integer_program: all components together, for the stock they share. in_turn: each with what those before it leave.",
+        }),
+        proved: z.boolean().meta({ description: "Whether no better choice exists." }),
+        gap: z.number().nullable().meta({
+          description:
+            "How much better a choice could be at most, in what is made least; 0 where proved, null where not known.",
+        }),
+      })
+      .meta({ id: "ShimSearch", description: "How the shims were chosen; absent where none were." })
+      .optional(),
     advice: z.array(warningSchema),
   })
   .meta({ id: "ShimMoveResult" });

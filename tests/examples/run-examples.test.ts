@@ -11,6 +11,7 @@ import type { axisDeviationResponse } from "../../shared/schemas/axis-deviations
 import type { boreFitResponse } from "../../shared/schemas/bore-fits.ts";
 import type { coldTargetResponse } from "../../shared/schemas/cold-targets.ts";
 import type { confirmationResponse } from "../../shared/schemas/confirmations.ts";
+import type { measurementPlanResponse } from "../../shared/schemas/measurement-plans.ts";
 import type { repeatabilityStudyResponse } from "../../shared/schemas/repeatability-studies.ts";
 import type { shimMoveResponse } from "../../shared/schemas/shim-moves.ts";
 import type { z } from "zod";
@@ -114,6 +115,14 @@ function repeatabilityStudyLines({ units, result }: z.infer<typeof repeatability
   return [...found, ...result.warnings.map(({ code, detail }) => `  ${code}: ${detail}`)];
 }
 
+function measurementPlanLines({ units, result }: z.infer<typeof measurementPlanResponse>): string[] {
+  return result.bores.flatMap(({ id, status, add, addCount, after, warnings }) => [
+    `${id}: ${status}; add ${addCount}, then U ${after ? fixed(after.expandedUncertainty.radial, units.offset) : "not known"}`,
+    ...add.map(({ clockDeg, readings }) => `  at ${fixed(clockDeg, "deg", 1)}: ${readings}`),
+    ...warnings.map(({ code, detail }) => `  ${code}: ${detail}`),
+  ]);
+}
+
 /** What a script must print of a stored answer, beside the record's id. */
 const linesOf: Readonly<Record<string, (answer: never) => string[]>> = {
   "bore-fits": boreFitLines,
@@ -123,6 +132,7 @@ const linesOf: Readonly<Record<string, (answer: never) => string[]>> = {
   "cold-targets": coldTargetLines,
   confirmations: confirmationLines,
   "repeatability-studies": repeatabilityStudyLines,
+  "measurement-plans": measurementPlanLines,
 };
 
 const resources = Object.keys(linesOf);

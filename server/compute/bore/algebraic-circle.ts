@@ -41,6 +41,22 @@ export function fitAlgebraicCircle({ count, x, y, weight }: LocalFrame): {
     ys += w * py * square;
     ss += w * square * square;
   }
+  const { a, b } = taubinCentre(xx, xy, yy, xs, ys, ss);
+  return { a: meanX + a, b: meanY + b };
+}
+
+/**
+ * Taubin's centre about the points' own mean, from their mean products: x², xy, y², and with s = x² + y² those of x·s,
+ * y·s and s·s. Not finite where they show no curvature.
+ */
+export function taubinCentre(
+  xx: number,
+  xy: number,
+  yy: number,
+  xs: number,
+  ys: number,
+  ss: number,
+): { readonly a: number; readonly b: number } {
   const s = xx + yy;
   const determinant = xx * yy - xy * xy;
   const variance = ss - s * s;
@@ -61,7 +77,7 @@ export function fitAlgebraicCircle({ count, x, y, weight }: LocalFrame): {
   }
   const divisor = 2 * (root * root - root * s + determinant);
   return {
-    a: meanX + (xs * (yy - root) - ys * xy) / divisor,
-    b: meanY + (ys * (xx - root) - xs * xy) / divisor,
+    a: (xs * (yy - root) - ys * xy) / divisor,
+    b: (ys * (xx - root) - xs * xy) / divisor,
   };
 }

@@ -14,7 +14,9 @@ export type FitWarningCode =
   | "readings_at_number_resolution"
   | "readings_excluded"
   | "few_readings_for_outliers"
-  | "diameter_far_from_nominal";
+  | "diameter_far_from_nominal"
+  | "criterion_unsuited_to_arc"
+  | "another_centre_as_good";
 
 /** Half-widths at `level`: factor × standard uncertainty. */
 export interface ExpandedUncertainty {
@@ -73,6 +75,23 @@ export interface WallFit extends Common {
   readonly taper: { readonly halfAngleDeg: number; readonly expandedUncertaintyDeg: number | null } | null;
   /** Slopes of the centre line of a bore read at two or more planes, mm per mm. */
   readonly tilt: { readonly h: number; readonly v: number } | null;
+  /** Readings on the limiting circle or circles, by index, rising; only where the criterion has such. */
+  readonly contacts?: readonly number[];
+  /** Only where an ellipse was fitted. */
+  readonly ellipse?: EllipseAxes;
+}
+
+/** The axes of a bore that is oval. */
+export interface EllipseAxes {
+  /** Diameters; null where the gauge's zero does not tell them. */
+  readonly majorMm: number | null;
+  readonly minorMm: number | null;
+  /** Major − minor diameter. */
+  readonly ovalityMm: number;
+  /** Half-width at the level of the fit; null where nothing tells it. */
+  readonly ovalityExpandedMm: number | null;
+  /** Clock direction of the major axis, [0, 180); null where the ovality is no larger than its own uncertainty. */
+  readonly majorClockDeg: number | null;
 }
 
 /** A bore found from the spots of a turned target: its centre relative to the beam, no size. */

@@ -94,7 +94,11 @@ function measureFar(
  * Bounds of the second derivatives of g in the far chart up to curvature κ, all |p| ≤ 1. With N = |κp − u| ≥ 1 − κ:
  * g_θθ = p·u/N − κ(p·u⊥)²/N³, g_θκ = (p·u⊥)·N_κ/N² with |N_κ| ≤ 1, and g_κκ = ∫₀¹ x²·N‴(κx) dx with |N‴| ≤ 3/N⁴.
  */
-export function farBends(curvature: number): { readonly xx: number; readonly xy: number; readonly yy: number } {
+export function farBends(curvature: number): {
+  readonly xx: number;
+  readonly xy: number;
+  readonly yy: number;
+} {
   const n = 1 - curvature;
   return { xx: 1 / n + curvature / n ** 3, xy: 1 / n ** 2, yy: 1 / n ** 4 };
 }

@@ -45,7 +45,7 @@ export function describeWall(input: WallInput, readings: WallReadings, choice: W
     covariance,
     expandedUncertainty,
     roundnessMm,
-    residualsMm: Array.from(residualsMm),
+    residualsMm,
     used,
     exclusions,
     arc: arcCoverage(readings, used, centre),
@@ -72,7 +72,7 @@ export function describeWall(input: WallInput, readings: WallReadings, choice: W
 }
 
 /** Root mean square, and peak to valley, of the residuals in use. */
-function scatterOf(residualsMm: Float64Array, used: readonly boolean[]) {
+function scatterOf(residualsMm: readonly number[], used: readonly boolean[]) {
   let least = Infinity;
   let most = -Infinity;
   let squares = 0;

@@ -11,8 +11,19 @@ const readingsLeftOver = 2;
 /** A median below this many number spacings is rounding, not scatter: the rule has nothing to measure by. */
 const spacings = 64;
 
-export interface WallChoice {
-  readonly solution: WallSolution;
+export type WallChoice = Choice<WallSolution>;
+
+/** What the rule must know of a fit. */
+export interface JudgedFit {
+  /** Of every reading sent, in use or not. */
+  readonly residualsMm: readonly number[];
+  readonly radiusMm: number;
+  readonly spacingMm: number;
+}
+
+/** A least-squares fit of all readings but those put aside. */
+export interface Choice<Fit> {
+  readonly solution: Fit;
   readonly used: readonly boolean[];
   readonly exclusions: readonly Exclusion[];
 }
@@ -21,24 +32,21 @@ export interface WallChoice {
  * While the largest |r|/u passes threshold × 1.4826 × the median of |r|/u (about zero) of the readings in use, puts
  * that one reading aside (the first of equals) and fits again. Stops at a median of 0, at two readings more than
  * parameters, or when half are out. One fit per reading put aside.
- * @throws ComputeError what `solveWall` refuses
  */
-export function solveWithoutOutliers(
+export function excludeOutliers<Fit extends JudgedFit>(
   readings: WallReadings,
-  first: FittableWall,
   { threshold }: OutlierRule,
-  taper: Taper | null,
-  member: string,
-): WallChoice {
+  parameters: number,
+  first: Fit,
+  solveAt: (indices: Int32Array, before: Fit) => Fit,
+): Choice<Fit> {
   const n = readings.hMm.length;
   const used = new Array<boolean>(n).fill(true);
   const exclusions: Exclusion[] = [];
-  let solution = solveWall(readings, first, member);
-  while (
-    n - exclusions.length > parametersOf(solution.model) + readingsLeftOver &&
-    2 * exclusions.length < n
-  ) {
-    const standardised = solution.residualsMm.map(
+  let solution = first;
+  while (n - exclusions.length > parameters + readingsLeftOver && 2 * exclusions.length < n) {
+    const standardised = Float64Array.from(
+      solution.residualsMm,
       (residual, i) => Math.abs(residual) / (readings.uMm?.[i] ?? 1),
     );
     const median = medianOf(standardised.filter((_, i) => used[i]!));
@@ -51,14 +59,32 @@ export function solveWithoutOutliers(
     if (ratio <= threshold) break;
     used[worst] = false;
     exclusions.push({ index: worst, ratio });
-    const fittable = modelFor(readings, taper, indicesOf(used), member);
-    if (fittable instanceof Error) throw fittable;
-    solution = solveWall(readings, fittable, member);
+    solution = solveAt(indicesOf(used), solution);
   }
   return { solution, used, exclusions };
 }
 
-function indicesOf(used: readonly boolean[]): Int32Array {
+/**
+ * The rule for circles, cones and tilted cylinders.
+ * @throws ComputeError what `solveWall` refuses
+ */
+export function solveWithoutOutliers(
+  readings: WallReadings,
+  first: FittableWall,
+  rule: OutlierRule,
+  taper: Taper | null,
+  member: string,
+): WallChoice {
+  const solution = solveWall(readings, first, member);
+  return excludeOutliers(readings, rule, parametersOf(solution.model), solution, (indices) => {
+    const fittable = modelFor(readings, taper, indices, member);
+    if (fittable instanceof Error) throw fittable;
+    return solveWall(readings, fittable, member);
+  });
+}
+
+/** The indices of the readings in use. */
+export function indicesOf(used: readonly boolean[]): Int32Array {
   return Int32Array.from(used.flatMap((inUse, index) => (inUse ? [index] : [])));
 }
 

@@ -2,11 +2,15 @@ import { ComputeError } from "../compute-error.ts";
 import type { BoreFit, SpotFit, WallFit } from "./bore-fit.ts";
 import type { BoreInput, RotatingTargetInput, Taper, WallInput } from "./bore-input.ts";
 import { describeWall } from "./describe-wall.ts";
-import { solveWithoutOutliers } from "./exclude-outliers.ts";
+import { solveWithoutOutliers, type WallChoice } from "./exclude-outliers.ts";
 import { fitRotatingTarget, gatherSpots, spotRefusal, type TargetReadings } from "./fit-rotating-target.ts";
 import { requireFiniteFit } from "./require-finite-fit.ts";
-import { modelFor, solveWall, type FittableWall } from "./solve-wall.ts";
+import { solvePlainCircle, startPlainCircle, type PlainCircleStart } from "./plain-circle.ts";
+import { modelFor, solveWall, type FittableWall, type WallSolution } from "./solve-wall.ts";
 import { gatherWall, readingsMember, type WallReadings } from "./wall-readings.ts";
+
+/** Centre and radius. */
+const circleParameters = 3;
 
 /** A bore's readings in the downstream view, ready to fit; or everything that can be seen to forbid it. */
 export type PreparedBore =
@@ -16,6 +20,12 @@ export type PreparedBore =
       readonly input: WallInput;
       readonly readings: WallReadings;
       readonly fittable: FittableWall;
+    }
+  | {
+      readonly kind: "circle";
+      readonly input: WallInput;
+      readonly readings: WallReadings;
+      readonly start: PlainCircleStart;
     }
   | { readonly kind: "target"; readonly input: RotatingTargetInput; readonly readings: TargetReadings };
 
@@ -40,6 +50,8 @@ export function prepareBore(input: BoreInput): PreparedBore {
     return refused([...refusals, ...spotRefusal(readings)]) ?? { kind: "target", input, readings };
   }
   const { readings, refusals } = gatherWall(input);
+  const start = isPlain(input, readings) ? startPlainCircle(readings) : null;
+  if (start !== null) return refused(refusals) ?? { kind: "circle", input, readings, start };
   // A taper without every z is refused already: what else is wrong shows as if there were none.
   const taper = readings.zMm === null ? null : taperOf(input);
   const fittable = modelFor(readings, taper, null, readingsMember[input.form]);
@@ -57,9 +69,29 @@ export function fitPreparedBore(prepared: PreparedBore): BoreFit {
       throw prepared.refusals[0];
     case "target":
       return requireFiniteFit(fitRotatingTarget(prepared.input, prepared.readings));
+    case "circle":
+      return requireFiniteFit(fitPlainCircle(prepared.input, prepared.readings, prepared.start));
     case "wall":
       return requireFiniteFit(fitWall(prepared.input, prepared.readings, prepared.fittable));
   }
+}
+
+/** One circle for all readings: in one plane, or with a taper known to be none. */
+function isPlain(input: WallInput, { hMm, zMm }: WallReadings): boolean {
+  if (hMm.length < circleParameters || (input.form !== "wire" && input.outliers !== null)) return false;
+  const taper = taperOf(input);
+  if (taper !== null) return taper.form === "known" && taper.halfAngleDeg === 0;
+  return zMm === null || zMm.every((z) => z === zMm[0]);
+}
+
+/** By the quick path where it proves its answer, else by the general one: to rounding they answer alike. */
+function fitPlainCircle(input: WallInput, readings: WallReadings, start: PlainCircleStart): WallFit {
+  const member = readingsMember[input.form];
+  const solution = solvePlainCircle(readings, start);
+  if (solution !== null) return describeWall(input, readings, choiceOfAll(solution));
+  const fittable = modelFor(readings, taperOf(input), null, member);
+  if (fittable instanceof ComputeError) throw fittable;
+  return fitWall(input, readings, fittable);
 }
 
 function fitWall(input: WallInput, readings: WallReadings, fittable: FittableWall): WallFit {
@@ -71,12 +103,12 @@ function fitWall(input: WallInput, readings: WallReadings, fittable: FittableWal
       solveWithoutOutliers(readings, fittable, input.outliers, taperOf(input), member),
     );
   }
-  const used = new Array<boolean>(readings.hMm.length).fill(true);
-  return describeWall(input, readings, {
-    solution: solveWall(readings, fittable, member),
-    used,
-    exclusions: [],
-  });
+  return describeWall(input, readings, choiceOfAll(solveWall(readings, fittable, member)));
+}
+
+function choiceOfAll(solution: WallSolution): WallChoice {
+  const used = new Array<boolean>(solution.residualsMm.length).fill(true);
+  return { solution, used, exclusions: [] };
 }
 
 function taperOf(input: WallInput): Taper | null {

@@ -14,7 +14,7 @@ export interface TargetReadings {
   readonly spotV: Float64Array;
   readonly turnCos: Float64Array;
   readonly turnSin: Float64Array;
-  readonly uMm: Float64Array | null;
+  readonly uMm: readonly number[] | null;
 }
 
 /** Two centre coordinates and two of the mounting error. */

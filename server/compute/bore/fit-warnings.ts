@@ -1,4 +1,5 @@
 import { chiSquareQuantile } from "../statistics/chi-square.ts";
+import { rememberPairs } from "../statistics/remember-pairs.ts";
 import type { FitWarning } from "./bore-fit.ts";
 
 /** Times the centre uncertainty of an even full ring from which an arc is called weak. */
@@ -12,6 +13,8 @@ const scatterLevel = 0.95;
 const outlierReadings = 8;
 /** Bores wear and deform by far less than this share of their diameter; units and slips differ by more. */
 const nominalShare = 0.05;
+
+const quantileOf = rememberPairs(chiSquareQuantile);
 
 /** The centre is known much worse than its number of readings would give on an even full ring. */
 export function warnWeak(dilution: number, code: "weak_arc" | "weak_angles"): FitWarning[] {
@@ -37,7 +40,7 @@ export function warnRedundancy(redundancy: number): FitWarning[] {
 export function warnScatter(chiSquare: number | null, redundancy: number): FitWarning[] {
   // The quantile lies above the mean, which is the redundancy. With none left over χ² is rounding and has no quantile.
   if (chiSquare === null || redundancy === 0 || chiSquare <= redundancy) return [];
-  const limit = chiSquareQuantile(scatterLevel, redundancy);
+  const limit = quantileOf(scatterLevel, redundancy);
   if (chiSquare <= limit) return [];
   const detail = `Chi-square ${chiSquare.toPrecision(4)} passes ${limit.toPrecision(4)}, its ${scatterLevel} quantile for ${redundancy} degrees of freedom: readings or stated uncertainties are in doubt; the covariance is enlarged.`;
   return [{ code: "scatter_exceeds_uncertainty", detail }];

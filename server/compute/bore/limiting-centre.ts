@@ -4,7 +4,7 @@ import { farCurvature, nearReach, placeOf } from "./centre-charts.ts";
 import type { CentreProblem, Place } from "./centre-problem.ts";
 import type { LimitingMethod } from "./circle-method.ts";
 import { circumscribedCentre } from "./circumscribed-circle.ts";
-import { hullEdges } from "./convex-hull.ts";
+import { convexHull, hullEdges } from "./convex-hull.ts";
 import type { Region } from "./descend-centre.ts";
 import type { LocalFrame } from "./local-frame.ts";
 import { searchCentre } from "./search-centre.ts";
@@ -70,9 +70,8 @@ function inscribedCentre(
   const guess = algebraicCentre(problem, frame);
   const start = inside(guess) ? guess : { x: 0, y: 0 };
   const rivals = { outer: Int32Array.of(count), inner: allOf(count) };
-  const starts = [{ region, ...start }];
   const { best, tie, cells } = searchCentre(
-    { problem, rivals, regions: [region], edges, starts, tieWithin },
+    { problem, rivals, regions: [region], edges, start: { region, ...start }, tieWithin },
     member,
   );
   return { centre: placeOf(best.chart, best.x, best.y), tie, cells };
@@ -96,7 +95,9 @@ function zoneCentre(
   const sectors = Array.from({ length: farSectors }, (_, k) =>
     far((2 * Math.PI * k) / farSectors, Math.PI / farSectors),
   );
-  const all = allOf(problem.count);
+  const inner = allOf(problem.count);
+  // Without a taper only corners of the hull can be outermost.
+  const outer = problem.added === null ? Int32Array.from(convexHull(problem.x, problem.y)) : inner;
   const guess = algebraicCentre(problem, frame);
   const distance = Math.hypot(guess.x, guess.y);
   const direction = Math.atan2(guess.y, guess.x);
@@ -107,10 +108,10 @@ function zoneCentre(
   const { best, tie, cells } = searchCentre(
     {
       problem,
-      rivals: { outer: all, inner: all },
+      rivals: { outer, inner },
       regions: [...sectors, near],
       edges: null,
-      starts: [start],
+      start,
       tieWithin,
     },
     member,

@@ -98,8 +98,8 @@ export function spreadRefusal(frame: LocalFrame, member: string): ComputeError |
   return null;
 }
 
-function pick(column: Float64Array, indices: Int32Array | null, into: Float64Array): void {
-  if (indices === null) into.set(column);
+function pick(column: readonly number[], indices: Int32Array | null, into: Float64Array): void {
+  if (indices === null) for (let i = 0; i < into.length; i++) into[i] = column[i]!;
   else for (let i = 0; i < into.length; i++) into[i] = column[indices[i]!]!;
 }
 
@@ -123,7 +123,7 @@ function largest(column: Float64Array): number {
 }
 
 /** Planes closer than this × the points' own extent, or than rounding of z, are one plane. */
-function planes(zMm: Float64Array | null, indices: Int32Array | null, scaleMm: number, z: Float64Array) {
+function planes(zMm: readonly number[] | null, indices: Int32Array | null, scaleMm: number, z: Float64Array) {
   if (zMm === null) return { z: null, zMm: 0 };
   pick(zMm, indices, z);
   const samePlaneMm = Math.max(lineRatio * scaleMm, spacings * largest(z) * Number.EPSILON);
@@ -134,7 +134,11 @@ function planes(zMm: Float64Array | null, indices: Int32Array | null, scaleMm: n
 }
 
 /** Fills `weight` and returns the variance that a weight of 1 stands for. */
-function fillWeights(uMm: Float64Array | null, indices: Int32Array | null, weight: Float64Array): number {
+function fillWeights(
+  uMm: readonly number[] | null,
+  indices: Int32Array | null,
+  weight: Float64Array,
+): number {
   if (uMm === null) {
     weight.fill(1);
     return 1;

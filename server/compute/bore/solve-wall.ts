@@ -20,7 +20,7 @@ export interface WallSolution {
   /** Variance of the centre that an even full ring of these weights would have. */
   readonly evenRingCofactor: number;
   /** Distance from the axis − radius there, of every reading sent. */
-  readonly residualsMm: Float64Array;
+  readonly residualsMm: readonly number[];
   /** Spacing of numbers at the largest coordinate in use. */
   readonly spacingMm: number;
   readonly iterations: number;
@@ -100,28 +100,32 @@ function tooFew(count: number, parameters: number, member: string): ComputeError
   return new ComputeError("too_few_points", detail, { at: [member] });
 }
 
-/** A cone ends at its tip: no wall has a radius of zero or less. */
-function refuseTip({ z, count }: LocalFrame, radius: number, tangent: number, toPlane: number): void {
-  let least = radius - toPlane * tangent;
-  for (let i = 0; z !== null && i < count; i++) least = Math.min(least, radius + z[i]! * tangent);
+/**
+ * A cone ends at its tip: no wall has a radius of zero or less. Radius and tangent are those of the frame, at its z.
+ * @throws ComputeError radius_not_positive
+ */
+export function refuseTip({ z, count }: LocalFrame, atFrame: number, tangent: number, toPlane: number): void {
+  let least = atFrame - toPlane * tangent;
+  for (let i = 0; z !== null && i < count; i++) least = Math.min(least, atFrame + z[i]! * tangent);
   if (least > 0) return;
   const detail = "With this taper the radius is not positive in the station's plane or at a reading.";
   throw new ComputeError("radius_not_positive", detail, { at: ["taper"] });
 }
 
-function residualsOf(
+/** Distance from the axis − radius there, mm, of every reading, in use or not, in the order sent. */
+export function residualsOf(
   { hMm, vMm, zMm }: WallReadings,
-  { theta, meanExcess }: SurfaceFit,
+  { theta, meanExcess }: Pick<SurfaceFit, "theta" | "meanExcess">,
   { tangent, free }: SurfaceModel,
   { origin, originRest, scaleMm }: LocalFrame,
-): Float64Array {
+): number[] {
   const a = theta[0]!;
   const b = theta[1]!;
   const opening = free === "taper" ? theta[2]! : tangent;
   const slopeX = free === "tilt" ? theta[2]! : 0;
   const slopeY = free === "tilt" ? theta[3]! : 0;
   const originDistance = Math.hypot(a, b);
-  const residuals = new Float64Array(hMm.length);
+  const residuals = new Array<number>(hMm.length);
   for (let i = 0; i < residuals.length; i++) {
     const z = zMm === null ? 0 : (zMm[i]! - origin.zMm) / scaleMm;
     const px = (hMm[i]! - origin.hMm - originRest.hMm) / scaleMm - slopeX * z;

@@ -9,9 +9,9 @@ export function statedUncertainties(
   boreUncertaintyMm: number | null,
   member: string,
   refusals: ComputeError[],
-): Float64Array | null {
+): number[] | null {
   const n = readings.length;
-  const uMm = new Float64Array(n);
+  const uMm = new Array<number>(n);
   let stated = 0;
   for (let i = 0; i < n; i++) {
     const own = readings[i]!.uMm ?? boreUncertaintyMm;

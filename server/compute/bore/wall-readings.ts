@@ -1,17 +1,19 @@
 import { ComputeError } from "../compute-error.ts";
 import type { PointsInput, Seen, TurnedGaugeInput, WallInput, WireInput } from "./bore-input.ts";
 import { clockDirection } from "./clock-direction.ts";
-import { columns } from "./columns.ts";
 import { statedUncertainties } from "./stated-uncertainties.ts";
 
-/** Wall points in columns, downstream view, in the order sent. */
+/**
+ * Wall points in columns, downstream view, in the order sent. Plain arrays: a typed one of a few dozen numbers takes
+ * longer to allocate than to fit.
+ */
 export interface WallReadings {
-  readonly hMm: Float64Array;
-  readonly vMm: Float64Array;
+  readonly hMm: readonly number[];
+  readonly vMm: readonly number[];
   /** From the station's plane; null where not every point states it. */
-  readonly zMm: Float64Array | null;
+  readonly zMm: readonly number[] | null;
   /** Null where no uncertainty is stated. */
-  readonly uMm: Float64Array | null;
+  readonly uMm: readonly number[] | null;
 }
 
 export interface GatheredWall {
@@ -52,13 +54,16 @@ function fromPoints(input: PointsInput): GatheredWall {
   const { points, seen } = input;
   const side = sign(seen);
   const n = points.length;
-  const [hMm, vMm, zMm] = columns(n, 3) as [Float64Array, Float64Array, Float64Array];
+  const hMm = new Array<number>(n);
+  const vMm = new Array<number>(n);
+  let zMm: number[] | null = null;
   let withZ = 0;
   for (let i = 0; i < n; i++) {
     const point = points[i]!;
     hMm[i] = side * point.hMm;
     vMm[i] = point.vMm;
     if (point.zMm === null) continue;
+    zMm ??= new Array<number>(n).fill(0);
     zMm[i] = point.zMm;
     withZ++;
   }
@@ -81,7 +86,7 @@ function fromPoints(input: PointsInput): GatheredWall {
     );
   }
   const uMm = statedUncertainties(points, input.readingUncertaintyMm, "points", refusals);
-  return { readings: { hMm, vMm, zMm: n > 0 && withZ === n ? zMm : null, uMm }, refusals };
+  return { readings: { hMm, vMm, zMm: withZ === n ? zMm : null, uMm }, refusals };
 }
 
 function fromGauge(input: TurnedGaugeInput): GatheredWall {
@@ -89,7 +94,8 @@ function fromGauge(input: TurnedGaugeInput): GatheredWall {
   const side = sign(seen);
   const growth = sense === "larger_is_farther" ? 1 : -1;
   const n = readings.length;
-  const [hMm, vMm] = columns(n, 2) as [Float64Array, Float64Array];
+  const hMm = new Array<number>(n);
+  const vMm = new Array<number>(n);
   const refusals: ComputeError[] = [];
   for (let i = 0; i < n; i++) {
     const { clockDeg, readingMm } = readings[i]!;
@@ -116,10 +122,10 @@ function fromWire(input: WireInput): GatheredWall {
   const { readingUncertaintyMm } = input;
   return {
     readings: {
-      hMm: Float64Array.from(sides, ({ h, distanceMm }) => h * distanceMm),
-      vMm: Float64Array.from(sides, ({ v, distanceMm }) => v * distanceMm - input.sagMm),
+      hMm: sides.map(({ h, distanceMm }) => h * distanceMm),
+      vMm: sides.map(({ v, distanceMm }) => v * distanceMm - input.sagMm),
       zMm: null,
-      uMm: readingUncertaintyMm === null ? null : new Float64Array(sides.length).fill(readingUncertaintyMm),
+      uMm: readingUncertaintyMm === null ? null : sides.map(() => readingUncertaintyMm),
     },
     refusals: sides
       .filter(({ distanceMm }) => !(distanceMm > 0))

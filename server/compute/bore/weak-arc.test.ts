@@ -91,6 +91,28 @@ describe("arcCoverage", () => {
     );
   });
 
+  it("is the same for readings in order, clockwise or not, from any start, once or twice round, some twice", () => {
+    const ordered = fc.record({
+      angles: fc.array(fc.double({ min: 0, max: 360, noNaN: true }), { minLength: 1, maxLength: 40 }),
+      start: fc.nat(39),
+      way: fc.constantFrom("clockwise", "anticlockwise"),
+      rounds: fc.constantFrom(1, 2),
+      twice: fc.boolean(),
+    });
+    fc.assert(
+      fc.property(ordered, ({ angles, start, way, rounds, twice }) => {
+        const once = angles.sort((a, b) => a - b).flatMap((angle) => (twice ? [angle, angle] : [angle]));
+        const turned = [...once.slice(start % once.length), ...once.slice(0, start % once.length)];
+        const round = way === "clockwise" ? turned : turned.reverse();
+        const sent = rounds === 1 ? round : [...round, ...round];
+        const used = sent.map((_, i) => i === 0 || i % 5 !== 3);
+        const { largestGapDeg } = arcCoverage(readingsAt(sent), used, origin);
+        near(largestGapDeg, gapBySorting(sent.filter((_, i) => used[i])), 1e-9);
+      }),
+      { numRuns: 1000 },
+    );
+  });
+
   it("covers a whole turn less one step, and nothing with one reading or all at one angle", () => {
     const cover = (angles: readonly number[]) =>
       arcCoverage(

@@ -1,4 +1,5 @@
 import { flowKey, wrapWords, type KeyEntry } from "../flow-key.ts";
+import { moveShape } from "../move-shape.ts";
 import { lettering, onClock, type Figure, type Point, type Shape } from "../shape.ts";
 import { stepAtMost } from "../pick-step.ts";
 import { writeFactor, writeTick } from "../write-number.ts";
@@ -40,7 +41,11 @@ export function drawBoreSection(model: BoreSectionModel, width: number): Figure 
   return {
     width,
     height: height + 1,
-    shapes: [...section.map((shape) => moveRight(shape, shiftRight)), ...key.shapes, ...noteShapes],
+    shapes: [
+      ...section.map((shape) => moveShape(shape, { x: shiftRight, y: 0 })),
+      ...key.shapes,
+      ...noteShapes,
+    ],
     title: `Bore section ${model.id}`,
     alternative: describeBoreSection(model),
   };
@@ -157,19 +162,4 @@ function notesOf(model: BoreSectionModel, scale: BoreSectionScale): string[] {
       : `Residuals exaggerated ${writeFactor(scale.exaggeration)} times against the circle as drawn: ${ring}.`;
   const arrow = scale.centreScale === null ? [] : [`Arrow from the ${model.originWords} to the centre.`];
   return ["Seen looking downstream.", against, ...arrow];
-}
-
-function moveRight(shape: Shape, by: number): Shape {
-  const move = (point: Point): Point => ({ x: point.x + by, y: point.y });
-  switch (shape.kind) {
-    case "line":
-      return { ...shape, from: move(shape.from), to: move(shape.to) };
-    case "path":
-      return { ...shape, points: shape.points.map(move) };
-    case "circle":
-    case "arc":
-      return { ...shape, centre: move(shape.centre) };
-    case "text":
-      return { ...shape, at: move(shape.at) };
-  }
 }
