@@ -5,7 +5,13 @@ import express, { Router } from "express";
 const dist = fileURLToPath(new URL("../../console/dist/", import.meta.url));
 const page = `${dist}index.html`;
 
-/** The built console. Its pages' addresses all serve the one page; its hashed assets may be kept for ever. */
+/** What is the API's own, however it is spelt: never a page. */
+const notAPage = /^\/+(v\d+|docs)\b/i;
+
+/**
+ * The built console. The addresses of its pages all serve the one page, to whoever asks for a page by name: a program
+ * that takes anything is told that there is nothing. Hashed assets may be kept for ever.
+ */
 export function serveConsole(): Router {
   const router = Router();
   router.use(
@@ -16,8 +22,9 @@ export function serveConsole(): Router {
     express.static(dist, { index: false, redirect: false, cacheControl: false, dotfiles: "ignore" }),
   );
   router.get("/{*path}", (request, response, next) => {
-    const isPage = !request.path.includes(".") && !/^\/(v\d+|docs)(\/|$)/.test(request.path);
-    if (!isPage || !request.accepts("html") || !existsSync(page)) {
+    const isPage = !request.path.includes(".") && !notAPage.test(request.path);
+    const wantsPage = request.path === "/" || (request.get("Accept") ?? "").includes("text/html");
+    if (!isPage || !wantsPage || !existsSync(page)) {
       next();
       return;
     }

@@ -145,8 +145,13 @@ describe("defaults of the stack that must not show", () => {
       "/v1/calculations;x",
       "/v1/%2e%2e/v1/keys",
     ]) {
-      const { status } = await app.call().get(path).set("Authorization", `Bearer ${works.tokens.admin}`);
-      expect(status).toBe(404);
+      for (const accept of ["*/*", "application/json", "text/html"]) {
+        const answer = await app
+          .call()
+          .get(path)
+          .set({ Authorization: `Bearer ${works.tokens.admin}`, Accept: accept });
+        expect([path, accept, answer.status]).toEqual([path, accept, 404]);
+      }
     }
   });
 
