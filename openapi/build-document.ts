@@ -161,7 +161,7 @@ function problemExample(code: ProblemCode, status: number, title: string, fix: s
 
 /** Codes that method, access and body bring by themselves. */
 function impliedCodes(operation: Operation, access: Access): ProblemCode[] {
-  const codes: ProblemCode[] = ["unknown_parameter", "invalid_header"];
+  const codes: ProblemCode[] = ["unknown_parameter", "invalid_header", "not_acceptable"];
   if (operation.limit !== "none") codes.push("rate_limited");
   if (operation.query) codes.push("invalid_parameter");
   if (access.by !== "anyone")
@@ -191,7 +191,10 @@ function impliedCodes(operation: Operation, access: Access): ProblemCode[] {
       "required",
       "unknown_field",
       "wrong_type",
+      "number_not_exact",
       "out_of_range",
+      "too_few_items",
+      "too_many_items",
       "text_invalid",
       "choice_unknown",
     );

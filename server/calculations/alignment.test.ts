@@ -92,7 +92,7 @@ describe("alignmentKind.answer", () => {
       ],
       stations: [...base.stations, base.stations[0]!],
       axis: { method: "two_station", through: ["brg-1", "ghost"] },
-      objective: "minimax",
+      couplings: [{ component: "ghost", support: "feet-aft", station: "cas-2", h: 0, v: 0.1 }],
     };
     expect(places(faultsOf(request))).toEqual(
       [
@@ -101,7 +101,7 @@ describe("alignmentKind.answer", () => {
         "/stations/1/id unknown_reference",
         "/stations/4/id duplicate_id",
         "/axis/through/1 unknown_reference",
-        "/objective not_available",
+        "/couplings/0/component unknown_reference",
       ].sort(),
     );
   });

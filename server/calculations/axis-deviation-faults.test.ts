@@ -78,12 +78,21 @@ describe("axisDeviationKind.answer: refusals", () => {
     ]);
   });
 
-  it("says which methods it does not compute yet", () => {
+  it("points at each reference station whose weight is missing, where a weight counts", () => {
+    const stations = base.stations.map((station, index) =>
+      index === 2 ? { ...station, weight: 3 } : station,
+    );
     for (const method of ["minimum_zone", "least_absolute"] as const) {
-      expect(places(faultsOf({ ...base, axis: { ...base.axis, method } }))).toEqual([
-        "/axis/method not_available",
+      const axis = { ...base.axis, method };
+      expect(places(faultsOf({ ...base, axis, stations }))).toEqual([
+        "/stations/0/weight weights_incomplete",
+        "/stations/3/weight weights_incomplete",
+      ]);
+      expect(places(faultsOf({ ...base, axis: { ...axis, through: ["brg-1", "shr-2"] } }))).toEqual([
+        "/axis/through reference_count",
       ]);
     }
+    expect(faultsOf({ ...base, stations })).toEqual([]);
   });
 });
 

@@ -22,5 +22,6 @@ export function readAxisStation(
     target: vector(station.target ?? { h: 0, v: 0 }),
     targetUncertainty: vector(station.targetUncertainty ?? { h: 0, v: 0 }),
     tolerance: station.tolerance ? readTolerance(station.tolerance, offset) : null,
+    weight: station.weight ?? null,
   };
 }

@@ -78,6 +78,16 @@ function expectSameInMm(got: AxisDeviationResult, units: Units, wanted: AxisDevi
   expect(got.summary.conforms).toBe(wanted.summary.conforms);
 }
 
+type Planes = Record<"h" | "v", number>;
+interface PlaneProof {
+  readonly objective: number;
+  readonly lowerBound: number;
+  readonly multipliers: readonly { readonly id: string; readonly multiplier: number }[];
+}
+type CylinderProof = {
+  readonly multipliers: readonly { readonly id: string; readonly h: number; readonly v: number }[];
+};
+
 describe("axisDeviationKind.answer", () => {
   it("answers axis, stations in the order sent, and a summary, in the shape of its schema", () => {
     const { units, level, result } = answer(base) as {
@@ -139,6 +149,98 @@ describe("axisDeviationKind.answer", () => {
     );
     const plain = answer({ ...base, axis: { ...base.axis, zone: "planes" } }).result;
     expect(plain.axis.warnings.map(({ code }) => code)).not.toContain("zone_not_used");
+  });
+
+  it("answers what minimum_zone attains in each plane, with its contacts by id and its proof", () => {
+    const { axis } = answer({ ...base, axis: { ...base.axis, method: "minimum_zone" } }).result;
+    // Three stations all touch. By hand, in h: 0.01, 0.02, −0.02 at 0, 5150, 6900; in v: −0.04, 0.03, 0.02.
+    const share = 5150 / 6900;
+    const bend = { h: 0.02 - 0.01 - share * (-0.02 - 0.01), v: 0.03 + 0.04 - share * (0.02 + 0.04) };
+    const all = ["brg-1", "shr-2", "brg-2"];
+    expect(axis.contacts).toEqual({ h: all, v: all });
+    const { zoneWidth, optimality } = axis as {
+      zoneWidth: Planes;
+      optimality: Record<"h" | "v", PlaneProof>;
+    };
+    for (const plane of ["h", "v"] as const) {
+      relative(zoneWidth[plane], Math.abs(bend[plane]));
+      relative(optimality[plane].objective, Math.abs(bend[plane]) / 2);
+      relative(optimality[plane].lowerBound, Math.abs(bend[plane]) / 2);
+      expect(optimality[plane].multipliers.map(({ id }) => id)).toEqual(all);
+      const signs = optimality[plane].multipliers.map(({ multiplier }) => Math.sign(multiplier));
+      expect(signs).toEqual([-1, 1, -1].map((sign) => sign * Math.sign(bend[plane])));
+    }
+    for (const absent of ["chiSquare", "dof", "scatter", "sumAbsolute"])
+      expect(axis).not.toHaveProperty(absent);
+  });
+
+  it("answers a cylinder by one diameter, one list of contacts and one proof; a sum likewise", () => {
+    const cylinder = (method: "minimum_zone" | "least_absolute") =>
+      answer({ ...base, axis: { ...base.axis, method, zone: "cylinder" } }).result;
+    const zone = cylinder("minimum_zone");
+    const farthest = Math.max(...zone.stations.filter((s) => s.reference).map((s) => s.deviation.radial));
+    relative(zone.axis.zoneWidth as number, 2 * farthest);
+    expect(zone.axis.contacts).toEqual(["brg-1", "shr-2", "brg-2"]);
+    expect((zone.axis.optimality as CylinderProof).multipliers.map(({ id }) => id)).toEqual(
+      zone.axis.contacts,
+    );
+    const sum = cylinder("least_absolute");
+    expect(sum.axis.contacts).toEqual(["brg-1", "brg-2"]);
+    relative(sum.axis.sumAbsolute as number, sum.stations[2]!.deviation.radial);
+    expect(sum.axis).not.toHaveProperty("zoneWidth");
+  });
+
+  it("answers distances without their weights, and the objective with them", () => {
+    const stations = base.stations.map((station, i) => (i === 1 ? station : { ...station, weight: i + 1 }));
+    for (const method of ["minimum_zone", "least_absolute"] as const) {
+      const { axis, stations: found } = answer({ ...base, axis: { ...base.axis, method }, stations }).result;
+      const used = found.filter(({ reference }) => reference).map(({ deviation }) => Math.abs(deviation.v));
+      const heavy = [1, 3, 4].map((weight, i) => weight * used[i]!);
+      const { objective } = (axis.optimality as Record<"v", PlaneProof>).v;
+      const add = (values: number[]) => values.reduce((total, value) => total + value, 0);
+      if (method === "minimum_zone") {
+        relative((axis.zoneWidth as Planes).v, 2 * Math.max(...used));
+        relative(objective, Math.max(...heavy));
+      } else {
+        relative((axis.sumAbsolute as Planes).v, add(used));
+        relative(objective, add(heavy));
+      }
+      expect(axis.warnings).toEqual([]);
+    }
+  });
+
+  it("tells that a weight counts at reference stations only", () => {
+    const stations = base.stations.map((station, i) => ({ ...station, weight: i + 1 }));
+    const { axis } = answer({ ...base, axis: { ...base.axis, method: "minimum_zone" }, stations }).result;
+    expect(axis.warnings.map(({ code }) => code)).toEqual(["weights_not_used"]);
+  });
+
+  it.each(
+    (["minimum_zone", "least_absolute"] as const).flatMap((method) =>
+      (["planes", "cylinder"] as const).flatMap((zone) =>
+        unitChoices.offset.map((offset, i) => ({ method, zone, offset, axial: unitChoices.axial[i]! })),
+      ),
+    ),
+  )("gives the same $method ($zone) in $axial and $offset", ({ method, zone, offset, axial }) => {
+    const through = base.stations.map(({ id }) => id);
+    const request = { ...base, axis: { method, zone, through } };
+    const units: Units = { axial, bore: "mm", offset };
+    const [got, wanted] = [answer(inUnits(request, units)).result, answer(request).result];
+    const [f, a] = [millimetresPer[offset], millimetresPer[axial]];
+    relative(got.axis.v.at0 * f, wanted.axis.v.at0, 0.1);
+    relative((got.axis.v.slope * f) / a, wanted.axis.v.slope, 1e-4);
+    relative(got.axis.covariance!.hv[0]![0]! * f * f, wanted.axis.covariance!.hv[0]![0]!, 1e-5);
+    relative((got.axis.covariance!.h[1]![1]! * f * f) / a / a, wanted.axis.covariance!.h[1]![1]!);
+    expect(got.axis.contacts).toEqual(wanted.axis.contacts);
+    const extents = ({ axis }: AxisDeviationResult) =>
+      [axis.zoneWidth ?? axis.sumAbsolute].flatMap((extent) =>
+        typeof extent === "number" ? [extent] : [extent!.h, extent!.v],
+      );
+    extents(wanted).forEach((extent, i) => relative(extents(got)[i]! * f, extent));
+    got.stations.forEach((station, i) => {
+      relative(station.deviation.radial * f, wanted.stations[i]!.deviation.radial, 0.1);
+      expect(station.verdict).toBe(wanted.stations[i]!.verdict);
+    });
   });
 
   it("gives the same answer to the last bit again", () => {

@@ -8,6 +8,7 @@ import type { Axis, AxisDeviations, Matrix2, StationDeviation } from "../compute
 import { deviationsFromAxis } from "../compute/axis/deviations-from-axis.ts";
 import { axisDeviationFaults, axisDeviationFaultsBesideSchema } from "./axis-deviation-faults.ts";
 import { readAxisStation } from "./axis-deviation-input.ts";
+import { answerOptimum } from "./axis-optimum-answer.ts";
 import { CalculationRefusal, type CalculationKind } from "./calculation-kind.ts";
 import { writeDeviation } from "./write-deviation.ts";
 
@@ -39,6 +40,7 @@ export const axisDeviationKind: CalculationKind<AxisDeviationRequest, AxisDeviat
     const through = axis.through ?? [];
     const found = deviationsFromAxis({
       method: axis.method,
+      zone: axis.zone ?? "planes",
       reference: through.map((id) => stations.findIndex((station) => station.id === id)),
       stations: stations.map((station) => readAxisStation(station, convert)),
       level,
@@ -60,7 +62,7 @@ export const axisDeviationKind: CalculationKind<AxisDeviationRequest, AxisDeviat
 };
 
 function answerAxis(
-  { method, h, v, covariance, chiSquare, scatterMm, dof, warnings }: Axis,
+  { method, h, v, covariance, chiSquare, scatterMm, dof, optimum, warnings }: Axis,
   through: string[],
   unused: AxisAnswer["warnings"],
   { axial, offset }: Converters,
@@ -87,6 +89,7 @@ function answerAxis(
     ...(chiSquare ? { chiSquare: { ...chiSquare } } : {}),
     ...(scatterMm ? { scatter: { h: offset.fromMm(scatterMm.h), v: offset.fromMm(scatterMm.v) } } : {}),
     ...(dof === null ? {} : { dof }),
+    ...(optimum ? answerOptimum(method, optimum, through, offset) : {}),
     warnings: [...warnings, ...unused],
   };
 }
@@ -135,6 +138,10 @@ function summarise(
 
 /** Members that say something to another method: told, so that nobody believes they counted. */
 function unusedMembers({ axis, stations }: AxisDeviationRequest): AxisAnswer["warnings"] {
+  if (axis.method === "minimum_zone" || axis.method === "least_absolute") {
+    const idle = stations.some(({ id, weight }) => weight !== undefined && !axis.through?.includes(id));
+    return idle ? [{ code: "weights_not_used", detail: "A weight counts at a reference station only." }] : [];
+  }
   return [
     ...(axis.zone === "cylinder"
       ? [{ code: "zone_not_used", detail: `${axis.method} has no zone: h and v are fitted apart.` }]

@@ -102,6 +102,11 @@ function causeInWords(
         because: "The ideal move would do; the shims that can be cut do not",
         limit: pointerOf(["shims"]),
       };
+    case "stock":
+      return {
+        because: "The ideal move would do; the shims at hand do not",
+        limit: pointerOf(["shims", "stock"]),
+      };
   }
 }
 
@@ -109,9 +114,13 @@ function causeInWords(
 export function adviceInWords(wording: Wording, advice: Advice): string {
   switch (advice.code) {
     case "shims_not_chosen":
-      return "No shims were chosen: every change is the ideal one. Send cutToSize for real shims.";
+      return "No shims were chosen: every change is the ideal one. Send stock, or cutToSize, for real shims.";
     case "shim_practice":
       return "At most four pieces in a stack, thin ones between thick ones, one material, flat and without burrs.";
+    case "optimality_not_proved":
+      return advice.gap === null
+        ? "Components whose moves shift each other's stations share stock that is short: each was given the best of what those before it leave, and no better choice of all together was looked for."
+        : `The search ended before its end was proved: a better choice of shims may exist, by ${Number(advice.gap.toPrecision(3))} at most in what is made least.`;
     case "stack_over_four_pieces":
       return `${advice.componentId}: more than four pieces at ${listed(advice.places)}. Replace them by fewer, thicker ones.`;
     case "set_by_jack": {

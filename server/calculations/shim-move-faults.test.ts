@@ -154,19 +154,13 @@ describe("shimMoveKind.answer: refusals", () => {
     );
   });
 
-  it("says at its own place what this engine version does not compute", () => {
+  it("takes shims from stock, their reuse, and minimax", () => {
     const request: ShimMoveRequest = {
       ...base,
-      shims: { stock: [{ thickness: 0.05 }], reuse: true },
+      shims: { stock: [{ thickness: 0.05, quantity: 4 }, { thickness: 0.1 }], reuse: true },
       objective: "minimax",
     };
-    const faults = faultsOf(request);
-    expect(new Set(faults.map(({ code }) => code))).toEqual(new Set(["not_available"]));
-    expect(faults.map(({ pointer }) => pointer).sort()).toEqual([
-      "/objective",
-      "/shims/reuse",
-      "/shims/stock",
-    ]);
+    expect(faultsOf(request)).toEqual([]);
   });
 
   it("takes pieces that add up but for their rounding, and an empty stock beside shims cut to size", () => {
@@ -183,9 +177,7 @@ describe("shimMoveKind.answer: refusals", () => {
     expect(faultsOf({ ...base, components, shims: { stock: [], cutToSize: { increment: 0.01 } } })).toEqual(
       [],
     );
-    expect(places(faultsOf({ ...base, components, shims: { stock: [] } }))).toEqual([
-      "/shims/stock not_available",
-    ]);
+    expect(faultsOf({ ...base, components, shims: { stock: [] } })).toEqual([]);
   });
 
   it("refuses to split moves into more parts than one call takes", () => {
@@ -216,11 +208,7 @@ describe("shimMoveKind.faultsBesideSchema", () => {
       shims: { stock: "much" },
     };
     expect(beside(body)).toEqual(
-      [
-        "/components/0/stations/1 unknown_reference",
-        "/objective not_available",
-        "/reference/1 unknown_reference",
-      ].sort(),
+      ["/components/0/stations/1 unknown_reference", "/reference/1 unknown_reference"].sort(),
     );
   });
 

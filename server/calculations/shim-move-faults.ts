@@ -19,7 +19,6 @@ import {
   idsOf,
   listOf,
   membersOf,
-  notAvailable,
   notPositive,
   unknownReference,
 } from "./common-faults.ts";
@@ -39,7 +38,7 @@ interface Readable {
   readonly indicatorIds: readonly (string | null)[];
   readonly indicators: readonly (IndicatorRequest | null)[];
   readonly reference: readonly string[];
-  readonly call: Pick<ShimMoveRequest, "shims" | "objective" | "couplings">;
+  readonly call: Pick<ShimMoveRequest, "couplings">;
 }
 
 /** Every fault of the domain in a request that passed its schema. */
@@ -79,8 +78,6 @@ export function shimMoveFaultsBesideSchema(body: unknown): Fault[] {
     indicators: sound(indicatorSchema, lists.indicators),
     reference: wholeCall.reference.safeParse(sent["reference"]).data ?? [],
     call: {
-      shims: wholeCall.shims.safeParse(sent["shims"]).data,
-      objective: wholeCall.objective.safeParse(sent["objective"]).data,
       couplings: wholeCall.couplings.safeParse(sent["couplings"]).data,
     },
   });
@@ -116,7 +113,6 @@ function faultsOf(read: Readable): Fault[] {
         ? []
         : [unknownReference(["indicators", index, "component"], "component")],
     ),
-    ...callFaults(read.call),
   ];
 }
 
@@ -131,33 +127,5 @@ function stationFaults(
     ...asymmetry(station.covariance, [...at, "covariance"]),
     ...notPositive(covariance, [...at, "covariance"]),
     ...(tolerance ? findToleranceFaults(tolerance).map((error) => faultOf(error, at)) : []),
-  ];
-}
-
-/** What of the call as a whole this engine version does not compute. */
-function callFaults({ shims, objective }: Readable["call"]): Fault[] {
-  const { stock, cutToSize, reuse } = shims ?? {};
-  // An empty stock beside shims cut to size takes nothing away; alone it would mean that there are no shims at all.
-  const stockCounts = stock !== undefined && (stock.length > 0 || !cutToSize);
-  return [
-    ...(stockCounts
-      ? [
-          notAvailable(
-            ["shims", "stock"],
-            "Shims are chosen cut to size; a stock of them is not chosen from.",
-          ),
-        ]
-      : []),
-    ...(reuse === true
-      ? [
-          notAvailable(
-            ["shims", "reuse"],
-            "Pieces taken out are not chosen again; send false, or leave it out.",
-          ),
-        ]
-      : []),
-    ...(objective === "minimax"
-      ? [notAvailable(["objective"], "minimax is not computed by this engine version; use least_squares.")]
-      : []),
   ];
 }

@@ -39,7 +39,14 @@ export function readMoveProblem(request: ShimMoveRequest, convert: Converters): 
       h,
       v,
     })),
+    aim: request.objective ?? "least_squares",
     cutIncrementMm: shims?.cutToSize ? offset.toMm(shims.cutToSize.increment) : null,
+    stock:
+      shims?.stock?.map(({ thickness, quantity }) => ({
+        thicknessMm: offset.toMm(thickness),
+        quantity: quantity ?? Infinity,
+      })) ?? null,
+    reuse: shims?.reuse ?? false,
     maximumMisfitMm: maximumMisfit === undefined ? maximumMisfitDefaultMm : offset.toMm(maximumMisfit),
     maximumIncrementMm: orElse(maximumIncrement, offset, null),
     incrementsMax: limits.incrementsPerCall,

@@ -43,7 +43,7 @@ export const shimMoveKind: CalculationKind<ShimMoveRequest, ShimMoveAnswer> = {
     const result = writePlan(plan, wordingFor(request, convert.offset), convert);
     return { units: request.units, level: problem.level, result, cautions };
   },
-  isLong: ({ shims }) => Boolean(shims?.cutToSize ?? shims?.stock),
+  isLong: ({ shims, objective }) => Boolean(shims?.cutToSize ?? shims?.stock) || objective === "minimax",
   faultsBesideSchema: shimMoveFaultsBesideSchema,
 };
 
@@ -58,6 +58,7 @@ function writePlan(plan: MovePlan, wording: Wording, convert: Converters): ShimM
     })),
     steps: plan.steps.map((step) => writeStep(step, offset)),
     remeasure: [...plan.remeasureIds],
+    ...(plan.search ? { search: plan.search } : {}),
     advice: plan.advice.map((advice) => ({ code: advice.code, detail: adviceInWords(wording, advice) })),
   };
 }

@@ -97,6 +97,11 @@ describe("the error catalogue", () => {
     const parts: Readonly<Record<string, RegExp>> = {
       createBoreFit: /^server\/(compute\/bore|calculations\/bore-)/,
       createAxisDeviation: /^server\/(compute\/(axis|conformity)|calculations\/axis-)/,
+      createConfirmation: /^server\/(compute\/(confirmation|conformity)|calculations\/confirmation)/,
+      createRepeatabilityStudy:
+        /^server\/(compute\/(repeatability|conformity|statistics)|calculations\/repeatability-)/,
+      createMeasurementPlan: /^server\/(compute\/planning|calculations\/measurement-plan)/,
+      createColdTarget: /^server\/(compute\/(beam|targets)|calculations\/cold-target)/,
       createShimMove: /^server\/(compute\/(moves|conformity)|calculations\/(shim-|component-))/,
     };
     const untold = Object.entries(parts).flatMap(([operationId, part]) => {

@@ -118,3 +118,46 @@ describeCases<Regression, object>(
   // Polynomials and lines through the origin are no axis.
   ({ input }) => input.powers.join() === "0,1",
 );
+
+/** The line of y over x that is best by another criterion than least squares, in the h plane. */
+function bestLine(method: "minimum_zone" | "least_absolute", x: readonly number[], y: readonly number[]) {
+  const reference = x.map((_, index) => index);
+  const { axis } = deviationsFromAxis(axisInput(method, reference, stationsOnLine(x, y, null)));
+  if (axis.optimum?.zone !== "planes") throw new Error("Each plane has its own evidence.");
+  const { objectiveMm, extentMm, unique } = axis.optimum.h;
+  return { intercept: axis.h.at0Mm, slope: axis.h.slope, objective: objectiveMm, extent: extentMm, unique };
+}
+
+interface Minimax {
+  readonly z: number[];
+  readonly h: number[];
+}
+
+describeCases<Minimax, object>("axis deviations: line-minimax", ["line-minimax"], (reference) => {
+  const { z, h } = reference.input;
+  const zone = bestLine("minimum_zone", z, h);
+  const sum = bestLine("least_absolute", z, h);
+  const got = { ...zone, max_abs: zone.extent / 2, l1_sum_abs: sum.extent };
+  expect(mismatches(reference, got)).toEqual([]);
+});
+
+interface Robust {
+  readonly x: number[];
+  readonly y: number[];
+}
+
+describeCases<Robust, { l1?: [number, number]; l1_sum_abs?: number; l1_unique?: boolean }>(
+  "axis deviations: robust-line, its least sum of absolute residuals",
+  ["robust-line"],
+  ({ input: { x, y }, recomputed }) => {
+    const sum = bestLine("least_absolute", x, y);
+    const got = [sum.intercept, sum.slope, sum.objective];
+    [...recomputed!.l1!, recomputed!.l1_sum_abs!].forEach((wanted, i) => {
+      expect(Math.abs(got[i]! - wanted)).toBeLessThan(1e-12);
+    });
+    expect(sum.unique).toBe(recomputed!.l1_unique);
+  },
+  // Least median of squares and Huber's weights are no criterion of an axis: only the L1 line can be asked for. The
+  // cases of l1-regression are no lines at all: they have three and four unknowns.
+  ({ recomputed }) => recomputed?.l1 !== undefined,
+);

@@ -59,6 +59,8 @@ interface AxisAnswer {
     v: Line;
     covariance: { h: LineCovariance; v: LineCovariance } | null;
     chiSquare?: { h: number; v: number };
+    zoneWidth?: { h: number; v: number };
+    sumAbsolute?: { h: number; v: number };
   };
   stations: { id: string; deviation: { h: number; v: number } }[];
 }
@@ -99,6 +101,35 @@ async function fitAxis(
   );
   return answer;
 }
+
+describeCases<{ z: number[]; h: number[] }, object>(
+  "POST /v1/axis-deviations by minimum_zone and least_absolute",
+  ["line-minimax"],
+  async (reference) => {
+    const { z, h } = reference.input;
+    const zone = await fitAxis(stationsOf(z, h), "minimum_zone");
+    const sum = await fitAxis(stationsOf(z, h), "least_absolute");
+    const got = {
+      intercept: zone.axis.h.at0,
+      slope: zone.axis.h.slope,
+      max_abs: (zone.axis.zoneWidth?.h ?? NaN) / 2,
+      l1_sum_abs: sum.axis.sumAbsolute?.v,
+    };
+    expect(mismatches(reference, got)).toEqual([]);
+  },
+);
+
+describeCases<{ x: number[]; y: number[] }, { l1?: [number, number] }>(
+  "POST /v1/axis-deviations by least_absolute",
+  ["robust-line"],
+  async ({ input, recomputed }) => {
+    const { axis } = await fitAxis(stationsOf(input.x, input.y), "least_absolute");
+    expect(Math.abs(axis.h.at0 - (recomputed?.l1?.[0] ?? NaN))).toBeLessThan(1e-12);
+    expect(Math.abs(axis.h.slope - (recomputed?.l1?.[1] ?? NaN))).toBeLessThan(1e-12);
+  },
+  // The other robust criteria (least median of squares, Huber's) are no method of the service.
+  ({ recomputed }) => recomputed?.l1 !== undefined,
+);
 
 const spread = (covariance: LineCovariance) => ({
   u_intercept: Math.sqrt(covariance[0][0]),

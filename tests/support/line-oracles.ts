@@ -42,18 +42,20 @@ export function zoneOfTriples(stations: readonly OracleStation[]): number {
   return most;
 }
 
+/** Every line h = a + b·z through two stations. */
+export function linesOfPairs(stations: readonly OracleStation[]): OracleLine[] {
+  return stations.flatMap((a, i) =>
+    stations.slice(i + 1).flatMap((b): OracleLine[] => {
+      const slope = (b.h - a.h) / (b.z - a.z);
+      return a.z === b.z ? [] : [[a.h - slope * a.z, slope, 0, 0]];
+    }),
+  );
+}
+
 /** The least Σ weight·|h − a − b·z|, by brute force: some line through two stations has it. */
 export function sumOfPairs(stations: readonly OracleStation[]): number {
   const flat = stations.map((station) => ({ ...station, v: 0 }));
-  let least = Infinity;
-  for (const [i, a] of flat.entries()) {
-    for (const b of flat.slice(i + 1)) {
-      if (a.z === b.z) continue;
-      const slope = (b.h - a.h) / (b.z - a.z);
-      least = Math.min(least, sumOf(flat, [a.h - slope * a.z, slope, 0, 0]));
-    }
-  }
-  return least;
+  return Math.min(...linesOfPairs(flat).map((line) => sumOf(flat, line)));
 }
 
 let loaded: ReturnType<typeof loadHighs> | null = null;

@@ -15,13 +15,20 @@ export interface AxisStation {
   /** Standard uncertainties of the target; 0 where it is exact. */
   readonly targetUncertainty: PlaneVector;
   readonly tolerance: Tolerance | null;
+  /** Multiplies the station's distance in minimum_zone and least_absolute; null or absent where not stated. */
+  readonly weight?: number | null;
 }
 
 export type AxisMethod =
   "two_station" | "least_squares" | "minimum_zone" | "least_absolute" | "line_of_sight";
 
+/** What minimum_zone and least_absolute measure by: h and v apart, or the radial distance. */
+export type AxisZone = "planes" | "cylinder";
+
 export interface AxisInput {
   readonly method: AxisMethod;
+  /** Of minimum_zone and least_absolute; planes when absent. */
+  readonly zone?: AxisZone;
   /** Indices into `stations` of those that set the axis. */
   readonly reference: readonly number[];
   readonly stations: readonly AxisStation[];

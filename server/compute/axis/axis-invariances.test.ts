@@ -240,6 +240,7 @@ describe("deviationsFromAxis", () => {
       tolerance: fc.option(fc.record({ form: fc.constant("radial" as const), halfWidthMm: wild }), {
         nil: null,
       }),
+      weight: fc.option(fc.double({ min: 1e-12, max: 1e12, noNaN: true }), { nil: null }),
     });
     const finite = (value: unknown): boolean =>
       typeof value === "number"
@@ -248,12 +249,13 @@ describe("deviationsFromAxis", () => {
     fc.assert(
       fc.property(
         fc.array(wildStation, { minLength: 2, maxLength: 6 }),
-        fc.constantFrom("two_station", "least_squares", "line_of_sight"),
-        (stations, method) => {
-          const count = { two_station: 2, least_squares: stations.length, line_of_sight: 0 }[method];
+        fc.constantFrom("two_station", "least_squares", "minimum_zone", "least_absolute", "line_of_sight"),
+        fc.constantFrom("planes", "cylinder"),
+        (stations, method, zone) => {
+          const count = { two_station: 2, line_of_sight: 0 }[method as string] ?? stations.length;
           const reference = Array.from({ length: count }, (_, i) => i);
           try {
-            expect(finite(deviationsFromAxis(axisInput(method, reference, stations)))).toBe(true);
+            expect(finite(deviationsFromAxis(axisInput(method, reference, stations, { zone })))).toBe(true);
           } catch (error) {
             expect(error).toMatchObject({ name: "ComputeError" });
           }

@@ -23,6 +23,27 @@ export interface Warning {
   readonly detail: string;
 }
 
+/** What an axis of minimum_zone or least_absolute attains in one plane, or in both at once, and the proof of it. */
+export interface LineEvidence {
+  /** What was least: the largest weight × distance of a reference station, or the sum of them. */
+  readonly objectiveMm: number;
+  /** No axis comes below it, from the multipliers. */
+  readonly lowerBoundMm: number;
+  /** Without weights: twice the largest distance of a reference station, or the sum of their distances. */
+  readonly extentMm: number;
+  /** Places among the reference stations of those that touch the zone, or that the axis passes through. */
+  readonly contacts: readonly number[];
+  /** Of those contacts that have any. In one plane the other member is 0. */
+  readonly multipliers: readonly { readonly place: number; readonly h: number; readonly v: number }[];
+  readonly unique: boolean;
+  /** Whether other contacts than those that the covariance was taken from would do as well. */
+  readonly spareContacts: boolean;
+}
+
+export type AxisOptimum =
+  | { readonly zone: "planes"; readonly h: LineEvidence; readonly v: LineEvidence }
+  | { readonly zone: "cylinder"; readonly both: LineEvidence };
+
 export interface Axis {
   readonly method: AxisMethod;
   readonly h: Line;
@@ -35,6 +56,8 @@ export interface Axis {
   readonly scatterMm: PerPlane | null;
   /** n − 2, of `chiSquare` or `scatterMm`. */
   readonly dof: number | null;
+  /** Of minimum_zone and least_absolute only. */
+  readonly optimum: AxisOptimum | null;
   readonly warnings: readonly Warning[];
 }
 

@@ -3,9 +3,10 @@ import type { PlaneCovariance } from "../plane.ts";
 import { chiSquareQuantile } from "../statistics/chi-square.ts";
 import { axisCovariance } from "./axis-covariance.ts";
 import type { AxisInput } from "./axis-input.ts";
-import type { Axis, PerPlane, Warning } from "./axis-result.ts";
+import type { Axis, AxisOptimum, PerPlane, Warning } from "./axis-result.ts";
 import type { ErrorSource, Scatter } from "./error-source.ts";
 import type { PlaneFits } from "./fit-plane.ts";
+import { optimumWarnings } from "./optimum-warnings.ts";
 
 /** Above this quantile the residuals say that the stated uncertainties are too small, or that a station moved. */
 const chiSquareLevel = 0.95;
@@ -13,6 +14,12 @@ const chiSquareLevel = 0.95;
 const noRedundancy: Warning = {
   code: "no_redundancy",
   detail: "Two reference stations without covariances: nothing shows how well the axis is known.",
+};
+
+const uncertaintyUnknown: Warning = {
+  code: "uncertainty_unknown",
+  detail:
+    "A reference station that sets the axis states no covariance: nothing shows how well the axis is known.",
 };
 
 /**
@@ -25,6 +32,7 @@ export function describeAxis(
   fits: PlaneFits,
   scatter: Scatter | null,
   sources: readonly ErrorSource[] | null,
+  optimum: AxisOptimum | null,
 ): Axis {
   const dof = method === "least_squares" && reference.length > 2 ? reference.length - 2 : null;
   const chiSquare = dof !== null && sources && !scatter ? chiSquareOf(fits, reference, sources) : null;
@@ -36,8 +44,10 @@ export function describeAxis(
     chiSquare,
     scatterMm: scatter?.mm ?? null,
     dof,
+    optimum,
     warnings: [
-      ...(sources ? [] : [noRedundancy]),
+      ...(sources ? [] : [optimum ? uncertaintyUnknown : noRedundancy]),
+      ...(optimum ? optimumWarnings(method, optimum, sources !== null) : []),
       ...(chiSquare && dof !== null ? chiSquareWarnings(chiSquare, dof) : []),
     ],
   };
@@ -69,7 +79,7 @@ function chiSquareWarnings(chiSquare: PerPlane, dof: number): Warning[] {
     }));
 }
 
-function requireFinite({ h, v, covariance, chiSquare }: Omit<Axis, "warnings">): void {
+function requireFinite({ h, v, covariance, chiSquare, optimum }: Omit<Axis, "warnings">): void {
   const values = [
     h.at0Mm,
     h.slope,
@@ -77,6 +87,8 @@ function requireFinite({ h, v, covariance, chiSquare }: Omit<Axis, "warnings">):
     v.slope,
     ...(covariance ? [covariance.h, covariance.v, covariance.hv].flat(2) : []),
     ...(chiSquare ? [chiSquare.h, chiSquare.v] : []),
+    ...(optimum?.zone === "planes" ? [optimum.h.extentMm, optimum.v.extentMm] : []),
+    ...(optimum?.zone === "cylinder" ? [optimum.both.extentMm] : []),
   ];
   for (const value of values) assertFinite(value, "A number of the axis");
 }

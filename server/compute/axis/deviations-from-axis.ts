@@ -3,10 +3,11 @@ import type { AxisInput } from "./axis-input.ts";
 import type { AxisDeviations, PerPlane } from "./axis-result.ts";
 import { describeAxis } from "./describe-axis.ts";
 import { describeStation } from "./describe-station.ts";
-import { errorSources, variancesOf, type Scatter } from "./error-source.ts";
-import { findFaults } from "./find-faults.ts";
+import { errorSources, noError, variancesOf, type ErrorSource, type Scatter } from "./error-source.ts";
+import { findFaults, isContactMethod } from "./find-faults.ts";
 import { fitPlane, type PlaneFit, type PlaneFits } from "./fit-plane.ts";
 import { leastSquaresGains, noGains, twoStationGains, type LineGains } from "./line-gains.ts";
+import { fitOptimalAxis } from "./optimal-axis.ts";
 import { propagateErrors } from "./propagate-errors.ts";
 
 /**
@@ -15,25 +16,29 @@ import { propagateErrors } from "./propagate-errors.ts";
  *
  * two_station passes through both. least_squares weighs each plane by 1/variance (centre and target together) when
  * every reference station states a covariance, else alike, and then takes the scatter s of each plane from its
- * residuals, n − 2 degrees of freedom. line_of_sight is the beam itself. Axis = G·observations, deviation =
+ * residuals, n − 2 degrees of freedom. minimum_zone and least_absolute: see `fitOptimalAxis`; there G holds the contact
+ * stations fixed, and only theirs need a covariance. line_of_sight is the beam itself. Axis = G·observations, deviation =
  * A·observations, covariance A·Σ·Aᵀ with the h–v terms: a reference station's deviation is correlated with the axis
  * that it helped to set. Lengths in mm. O(stations × reference stations).
- * @throws ComputeError the first of `findFaults`; rank_deficient; result_overflow
+ * @throws ComputeError the first of `findFaults`; rank_deficient; not_converged; result_overflow
  */
 export function deviationsFromAxis(input: AxisInput): AxisDeviations {
   const [fault] = findFaults(input);
   if (fault) throw fault;
   const { reference, stations } = input;
-  const fits = fitBothPlanes(input);
+  const optimal = isContactMethod(input.method) ? fitOptimalAxis(input) : null;
+  const fits = optimal?.fits ?? fitBothPlanes(input);
   const allStated = reference.every((index) => stations[index]!.covariance);
-  const scatter = allStated ? null : scatterOf(reference, fits);
+  const scatter = allStated || optimal ? null : scatterOf(reference, fits);
   const sources = errorSources(input, scatter);
-  const known = reference.flatMap((index) => sources[index] ?? []);
-  const referenceSources = known.length === reference.length ? known : null;
+  const referenceSources = sourcesOfAxis(
+    fits,
+    reference.map((index) => sources[index] ?? null),
+  );
   const errorOf = referenceSources && propagateErrors(fits, referenceSources);
   const placeInReference = new Map(reference.map((index, place) => [index, place]));
   return {
-    axis: describeAxis(input, fits, scatter, referenceSources),
+    axis: describeAxis(input, fits, scatter, referenceSources, optimal?.optimum ?? null),
     stations: stations.map((station, index) => {
       const source = sources[index];
       const place = placeInReference.get(index) ?? null;
@@ -41,6 +46,21 @@ export function deviationsFromAxis(input: AxisInput): AxisDeviations {
       return describeStation(input, fits, index, place !== null, error);
     }),
   };
+}
+
+/**
+ * The errors of the reference stations; null when that of a station with a part in the axis is not known. A station
+ * without any part needs none.
+ */
+function sourcesOfAxis(
+  fits: PlaneFits,
+  references: readonly (ErrorSource | null)[],
+): readonly ErrorSource[] | null {
+  const gains = [fits.h.gains, fits.v.gains, fits.h.crossGains, fits.v.crossGains];
+  const hasPart = (place: number) =>
+    gains.some((one) => one !== null && (one.shares[place] !== 0 || one.moments[place] !== 0));
+  const known = references.flatMap((source, place) => source ?? (hasPart(place) ? [] : noError));
+  return known.length === references.length ? known : null;
 }
 
 function fitBothPlanes(input: AxisInput): PlaneFits {

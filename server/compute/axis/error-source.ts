@@ -16,6 +16,15 @@ export interface ErrorSource {
   readonly total: PlaneCovariance;
 }
 
+/** That of an observation without any part in what is asked. */
+export const noError: ErrorSource = {
+  measured: { hhMm2: 0, hvMm2: 0, vvMm2: 0 },
+  dof: null,
+  isScatter: false,
+  target: { h: 0, v: 0 },
+  total: { hhMm2: 0, hvMm2: 0, vvMm2: 0 },
+};
+
 /** Standard deviation of one observation in each plane, estimated from the residuals of an unweighted fit. */
 export interface Scatter {
   readonly mm: PerPlane;

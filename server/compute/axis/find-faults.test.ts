@@ -28,17 +28,33 @@ describe("findFaults, and deviationsFromAxis that throws the first", () => {
     ["least_squares", []],
     ["least_squares", [1]],
     ["line_of_sight", [0]],
+    ["minimum_zone", [0, 1]],
+    ["least_absolute", [0, 1]],
   ] as [AxisMethod, number[]][])("%s does not take the reference stations %j", (method, reference) => {
     expect(refusals(axisInput(method, reference, three))).toThrow(
       withCode("reference_count", "axis", "through"),
     );
   });
 
-  it.each(["minimum_zone", "least_absolute"] as const)("%s is not computed yet", (method) => {
-    expect(refusals(axisInput(method, [0, 1, 2], three))).toThrow(
-      withCode("not_available", "axis", "method"),
-    );
-  });
+  it.each(["minimum_zone", "least_absolute"] as const)(
+    "%s takes weights at all reference stations or none",
+    (method) => {
+      const weighted = three.map((station, index) => (index === 1 ? station : { ...station, weight: 2 }));
+      expect(refusals(axisInput(method, [0, 1, 2], weighted))).toThrow(
+        withCode("weights_incomplete", "stations", 1, "weight"),
+      );
+      const elsewhere = [...three, stationAt(3, 0, 0, { weight: 2 })];
+      expect(refusals(axisInput(method, [0, 1, 2], elsewhere))).not.toThrow();
+    },
+  );
+
+  it.each(["minimum_zone", "least_absolute"] as const)(
+    "%s takes covariances at some stations only",
+    (method) => {
+      const stations = three.map((station, index) => (index === 1 ? station : { ...station, ...u(0.001) }));
+      expect(refusals(axisInput(method, [0, 1, 2], stations))).not.toThrow();
+    },
+  );
 
   it("refuses reference stations at one z, however far from 0", () => {
     for (const z of [0, 1, 6900, 1e9]) {

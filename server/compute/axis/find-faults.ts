@@ -18,6 +18,11 @@ const referenceCounts: Readonly<Record<AxisMethod, { readonly min: number; reado
   line_of_sight: { min: 0, max: 0 },
 };
 
+/** Whether the stations that touch the zone, or that the axis passes through, set the axis: covariances weigh nothing. */
+export function isContactMethod(method: AxisMethod): method is "minimum_zone" | "least_absolute" {
+  return method === "minimum_zone" || method === "least_absolute";
+}
+
 /** Everything that is wrong with an axis input, each at its place; empty when it can be computed. */
 export function findFaults(input: AxisInput): ComputeError[] {
   return [
@@ -30,20 +35,13 @@ export function findFaults(input: AxisInput): ComputeError[] {
   ];
 }
 
-/** What the method alone refuses: its number of reference stations, and what is not computed yet. */
+/** What the method alone refuses: its number of reference stations. */
 export function findMethodFaults(method: AxisMethod, referenceCount: number): ComputeError[] {
   const { min, max } = referenceCounts[method];
-  const faults: ComputeError[] = [];
-  if (method === "minimum_zone" || method === "least_absolute") {
-    const detail = `${method} is not computed by this engine version; use two_station, least_squares or line_of_sight.`;
-    faults.push(new ComputeError("not_available", detail, { at: ["axis", "method"] }));
-  }
-  if (referenceCount < min || referenceCount > max) {
-    const wanted = min === max ? String(min) : `${min} or more`;
-    const detail = `${method} takes ${wanted} reference stations; ${referenceCount} named.`;
-    faults.push(new ComputeError("reference_count", detail, { at: ["axis", "through"] }));
-  }
-  return faults;
+  if (referenceCount >= min && referenceCount <= max) return [];
+  const wanted = min === max ? String(min) : `${min} or more`;
+  const detail = `${method} takes ${wanted} reference stations; ${referenceCount} named.`;
+  return [new ComputeError("reference_count", detail, { at: ["axis", "through"] })];
 }
 
 /** What one station refuses whatever the axis: its covariance and its tolerance. */
@@ -81,6 +79,10 @@ export function findReferenceFaults(
   const weighs = method === "two_station" || method === "least_squares";
   const unstated = references.filter(({ station }) => !station.covariance);
   const incomplete = weighs && unstated.length < references.length ? unstated : [];
+  const unweighted = isContactMethod(method)
+    ? references.filter(({ station }) => (station.weight ?? null) === null)
+    : [];
+  const weightsIncomplete = unweighted.length < references.length ? unweighted : [];
   const weightless =
     method === "least_squares" ? references.filter(({ station }) => hasZeroVariance(station)) : [];
   return [
@@ -90,6 +92,14 @@ export function findReferenceFaults(
         "Covariances are given for other reference stations, not for this one.",
         index,
       ),
+    ),
+    ...weightsIncomplete.map(
+      ({ index }) =>
+        new ComputeError(
+          "weights_incomplete",
+          "A weight is given for other reference stations, not for this one.",
+          { at: ["stations", index, "weight"] },
+        ),
     ),
     ...weightless.map(({ index }) =>
       covarianceFault(

@@ -28,29 +28,51 @@ export function propagateErrors(
   const table = tabulateSources(references);
   const h = new Float64Array(last + 1);
   const v = new Float64Array(last + 1);
+  const cross =
+    fits.h.crossGains && fits.v.crossGains ? { h: fits.h.crossGains, v: fits.v.crossGains } : null;
+  const rows: Rows = {
+    h,
+    v,
+    cross: cross && { hOfV: new Float64Array(last + 1), vOfH: new Float64Array(last + 1) },
+  };
   return (zMm, source, place) => {
     // The last row is the station's own observation; a reference station has it among the others already.
     writeSource(table, last, source);
     writeSensitivities(fits.h.gains, zMm, place, h);
     writeSensitivities(fits.v.gains, zMm, place, v);
-    const covariance = covarianceOf(table, h, v);
-    return { covariance, dof: leastDof(table, h, v, covariance) };
+    if (cross && rows.cross) {
+      writeAxisPart(cross.h, zMm, rows.cross.hOfV);
+      writeAxisPart(cross.v, zMm, rows.cross.vOfH);
+    }
+    const covariance = covarianceOf(table, rows);
+    return { covariance, dof: leastDof(table, rows, covariance) };
   };
+}
+
+/** Rows of A: of the deviation in each plane, of the observations in that plane, and in the other where it depends on them. */
+interface Rows {
+  readonly h: Float64Array;
+  readonly v: Float64Array;
+  readonly cross: { readonly hOfV: Float64Array; readonly vOfH: Float64Array } | null;
 }
 
 /** A row of A: +1 for the station's own observation, less the gains of the axis at z. */
 function writeSensitivities(gains: LineGains, zMm: number, place: number | null, row: Float64Array): void {
+  writeAxisPart(gains, zMm, row);
+  row[place ?? row.length - 1]! += 1;
+}
+
+/** Less the gains of the axis at z; 0 for the station's own observation. */
+function writeAxisPart(gains: LineGains, zMm: number, row: Float64Array): void {
   const last = row.length - 1;
   writeGainsAt(gains, zMm, row.subarray(0, last));
   for (let j = 0; j < last; j += 1) row[j] = -row[j]!;
   row[last] = 0;
-  row[place ?? last]! += 1;
 }
 
 function covarianceOf(
   { measuredHH, measuredHV, measuredVV, targetH, targetV }: SourceTable,
-  h: Float64Array,
-  v: Float64Array,
+  { h, v, cross }: Rows,
 ): PlaneCovariance {
   let hhMm2 = 0;
   let hvMm2 = 0;
@@ -60,18 +82,23 @@ function covarianceOf(
     hvMm2 += h[j]! * v[j]! * measuredHV[j]!;
     vvMm2 += v[j]! * v[j]! * (measuredVV[j]! + targetV[j]!);
   }
-  return { hhMm2, hvMm2, vvMm2 };
+  if (!cross) return { hhMm2, hvMm2, vvMm2 };
+  const { hOfV, vOfH } = cross;
+  for (let j = 0; j < h.length; j += 1) {
+    const totalHH = measuredHH[j]! + targetH[j]!;
+    const totalVV = measuredVV[j]! + targetV[j]!;
+    const mixed = measuredHV[j]!;
+    hhMm2 += hOfV[j]! * (2 * h[j]! * mixed + hOfV[j]! * totalVV);
+    vvMm2 += vOfH[j]! * (2 * v[j]! * mixed + vOfH[j]! * totalHH);
+    hvMm2 += h[j]! * totalHH * vOfH[j]! + hOfV[j]! * (mixed * vOfH[j]! + totalVV * v[j]!);
+  }
+  return { hhMm2: Math.max(0, hhMm2), hvMm2, vvMm2: Math.max(0, vvMm2) };
 }
 
-function leastDof(
-  table: SourceTable,
-  h: Float64Array,
-  v: Float64Array,
-  { hhMm2, hvMm2, vvMm2 }: PlaneCovariance,
-): number | null {
+function leastDof(table: SourceTable, rows: Rows, { hhMm2, hvMm2, vvMm2 }: PlaneCovariance): number | null {
   if (table.dof.every((dof) => dof === Infinity)) return null;
   const worst = Math.atan2(2 * hvMm2, hhMm2 - vvMm2) / 2;
-  const along = (alongH: number, alongV: number) => dofAlong(table, h, v, alongH, alongV) ?? Infinity;
+  const along = (alongH: number, alongV: number) => dofAlong(table, rows, alongH, alongV) ?? Infinity;
   const least = Math.min(
     along(1, 0),
     along(0, 1),
@@ -81,20 +108,14 @@ function leastDof(
 }
 
 /** Degrees of freedom of the deviation's variance along one direction of the cross-section. */
-function dofAlong(
-  table: SourceTable,
-  h: Float64Array,
-  v: Float64Array,
-  alongH: number,
-  alongV: number,
-): number | null {
+function dofAlong(table: SourceTable, { h, v, cross }: Rows, alongH: number, alongV: number): number | null {
   const { measuredHH, measuredHV, measuredVV, targetH, targetV, isScatter, dof } = table;
   const count = h.length;
   const shares = new Float64Array(count + 2);
   // After the sources: the scatter, one estimate that stands for many of them, and the targets, which count as known.
   for (let j = 0; j < count; j += 1) {
-    const a = alongH * h[j]!;
-    const b = alongV * v[j]!;
+    const a = alongH * h[j]! + (cross ? alongV * cross.vOfH[j]! : 0);
+    const b = alongV * v[j]! + (cross ? alongH * cross.hOfV[j]! : 0);
     const share = a * a * measuredHH[j]! + 2 * a * b * measuredHV[j]! + b * b * measuredVV[j]!;
     shares[isScatter[j] ? count : j]! += share;
     shares[count + 1]! += a * a * targetH[j]! + b * b * targetV[j]!;

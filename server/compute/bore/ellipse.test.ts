@@ -142,7 +142,7 @@ describe("method ellipse", () => {
     near(scaleMm * major, 6.518722302526588, 1e-11);
     near(scaleMm * minor, 3.031886001736263, 1e-11);
     near(axisRad, 0.3596242710415488, 1e-11);
-    near(objective * scaleMm * scaleMm, 1.3733055397799, 1e-12);
+    near(objective * scaleMm * scaleMm, 1.37330553977792, 1e-12);
   });
 
   it("has as covariance the scatter of the bore read again and again", () => {

@@ -1,7 +1,7 @@
 import { drawArrow } from "../draw-arrow.ts";
 import { drawVerdictMark, type Verdict } from "../draw-verdict-mark.ts";
 import { flowKey, wrapWords, type KeyEntry } from "../flow-key.ts";
-import { stepAtMost, ticksBetween } from "../pick-step.ts";
+import { ticksBetween } from "../pick-step.ts";
 import { lettering, textWidth, type Figure, type Point, type Shape } from "../shape.ts";
 import { writeFactor, writeTick } from "../write-number.ts";
 import { describePlanElevation } from "./describe-plan-elevation.ts";
@@ -95,14 +95,24 @@ function datum(tip: Point): Shape {
   return { kind: "path", pen: "narrow", points, closed: true, fill: "ink" };
 }
 
+/** As many ticks of z as have room for their numbers: a step is a round number, so their count is only about one asked for. */
+function legibleTicks(low: number, high: number, scale: PlanElevationScale): number[] {
+  const perZ = (scale.right - scale.left) / (high - low || 1);
+  for (let count = 12; count > 1; count -= 1) {
+    const ticks = ticksBetween(low, high, count);
+    const step = (ticks[1] ?? 1) - (ticks[0] ?? 0);
+    const longest = Math.max(...ticks.map((tick) => textWidth(writeTick(tick, step))));
+    if (step * perZ >= longest + 4) return ticks;
+  }
+  return ticksBetween(low, high, 1);
+}
+
 /** The z rule under the plan, with the sense of flow. */
 function drawRule(model: PlanElevationModel, scale: PlanElevationScale): Shape[] {
   const zs = model.stations.map((station) => station.z);
   const [low, high] = [Math.min(...zs), Math.max(...zs)];
   const y = scale.plan.bottom;
-  const longest = Math.max(...zs.map((z) => textWidth(writeTick(z, stepAtMost(high - low || 1)))));
-  const count = Math.max(2, Math.floor((scale.right - scale.left) / (longest + 8)));
-  const ticks = ticksBetween(low, high, count);
+  const ticks = legibleTicks(low, high, scale);
   const step = (ticks[1] ?? 1) - (ticks[0] ?? 0);
   const baseline = y + 2 + lettering.height;
   const second = baseline + lettering.height * 1.7;

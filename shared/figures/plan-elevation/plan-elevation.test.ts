@@ -231,3 +231,21 @@ describe("the words and the table of plan and elevation", () => {
     expect(table?.columns.every((column) => column.align === "start" || column.unit === "mm")).toBe(true);
   });
 });
+
+describe("the numbers along z", () => {
+  const far = modelOf([
+    { id: "brg-1", z: 0, h: 0, v: 0 },
+    { id: "brg-2", z: 6900, h: 0, v: 0 },
+  ]);
+
+  it.each([80, 120, 172, 220, 300, 400])("do not run into each other on a sheet %d mm wide", (width) => {
+    const numbers = drawPlanElevation(far, width)
+      .shapes.filter((shape) => shape.kind === "text")
+      .filter(({ text, anchor }) => anchor === "middle" && /^\d+$/.test(text));
+    expect(numbers.length).toBeGreaterThan(2);
+    for (const [index, next] of numbers.slice(1).entries()) {
+      const last = numbers[index]!;
+      expect(next.at.x - last.at.x).toBeGreaterThan((textWidth(last.text) + textWidth(next.text)) / 2 + 1); // mm
+    }
+  });
+});

@@ -5,7 +5,7 @@ const leastShown = 10 ** -decimals;
 
 /** A probability; what would be written as nothing is written as less than the last place. */
 export function probabilityCell(probability: number | null): Cell {
-  if (probability !== null && probability < leastShown) return textCell(`< ${leastShown}`);
+  if (probability !== null && probability < leastShown) return textCell(`< ${leastShown.toFixed(decimals)}`);
   return numberCell(probability, decimals);
 }
 
