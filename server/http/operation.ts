@@ -63,7 +63,8 @@ export interface Operation<Body = unknown, Query = unknown> {
   readonly query?: z.ZodObject & z.ZodType<Query>;
   readonly body?: z.ZodType<Body>;
   /** Domain faults of the sound parts of a body that fails its schema elsewhere. */
-  readonly faultsBesideSchema?: ((body: unknown, schemaFaults: readonly Fault[]) => readonly Fault[]) | undefined;
+  readonly faultsBesideSchema?:
+    ((body: unknown, schemaFaults: readonly Fault[]) => readonly Fault[]) | undefined;
   readonly requestExamples?: () => ExampleSet;
   readonly response: SuccessResponse;
   /** Beyond those that access, body and method bring by themselves. */

@@ -129,7 +129,8 @@ describe("the OpenAPI document", () => {
 /** The schemas of the document refer to its components; they are validated with those at hand. */
 function compile(schema: object) {
   const ajv = new Ajv2020({ strict: false, allErrors: true });
-  addFormats.default(ajv);
+  const { default: add } = addFormats as unknown as { default: (to: Ajv2020) => void };
+  add(ajv);
   ajv.addSchema({ $id: "document", components: document.components }, "document");
   return ajv.compile(
     JSON.parse(JSON.stringify(schema).replaceAll("#/components/", "document#/components/")) as object,
