@@ -77,15 +77,23 @@ export function survey({ weighted = false, most = 12 }: Survey = {}): fc.Arbitra
     });
 }
 
+/** Whole numbers, or a 0 as often as not: readings that tie. */
+const coarse = fc.oneof(
+  fc.integer({ min: 0, max: 3 }),
+  fc.constant(0),
+  fc.integer({ min: 0, max: 1000 }).map((thousandths) => thousandths / 1000),
+);
+
 /** Surveys read coarsely, on few z: ties, stations at one z, lines through many stations. */
-export const coarseSurvey: fc.Arbitrary<AxisStation[]> = fc
-  .array(
-    fc.record({
-      z: fc.integer({ min: 0, max: 5 }),
-      h: fc.integer({ min: 0, max: 3 }),
-      v: fc.integer({ min: 0, max: 3 }),
-    }),
-    { minLength: 3, maxLength: 12 },
-  )
-  .filter((parts) => new Set(parts.map(({ z }) => z)).size > 1)
-  .map((parts) => parts.map(({ z, h, v }) => stationAt(100 * z, h, v)));
+export const coarseSurvey: fc.Arbitrary<AxisStation[]> = coarseOf(12);
+export const longCoarseSurvey: fc.Arbitrary<AxisStation[]> = coarseOf(40);
+
+function coarseOf(most: number): fc.Arbitrary<AxisStation[]> {
+  return fc
+    .array(fc.record({ z: fc.integer({ min: 0, max: 5 }), h: coarse, v: coarse }), {
+      minLength: 3,
+      maxLength: most,
+    })
+    .filter((parts) => new Set(parts.map(({ z }) => z)).size > 1)
+    .map((parts) => parts.map(({ z, h, v }) => stationAt(100 * z, h, v)));
+}

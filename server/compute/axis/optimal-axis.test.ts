@@ -4,6 +4,7 @@ import { stationAt } from "../../../tests/support/axis-stations.ts";
 import { largestOf, nelderMead, sumOf } from "../../../tests/support/line-oracles.ts";
 import {
   coarseSurvey,
+  longCoarseSurvey,
   evidenceOf,
   lineOf,
   optimalCases,
@@ -133,7 +134,7 @@ describe.each(optimalCases)("deviationsFromAxis: %s, %s", (method, zone) => {
   it("answers coarse readings, with their ties and stations at one z, by a proved axis or a refusal by code", () => {
     const outcomes: string[] = [];
     fc.assert(
-      fc.property(coarseSurvey, (stations) => {
+      fc.property(fc.oneof(coarseSurvey, longCoarseSurvey), (stations) => {
         try {
           const { objectiveMm, lowerBoundMm } = evidenceOf(solveOptimal(method, zone, stations)).v;
           expect(objectiveMm - lowerBoundMm).toBeLessThanOrEqual(1e-9 * objectiveMm + 1e-13);
@@ -143,7 +144,7 @@ describe.each(optimalCases)("deviationsFromAxis: %s, %s", (method, zone) => {
           outcomes.push(error.code);
         }
       }),
-      { numRuns: 300 },
+      { numRuns: 500 },
     );
     const proved = outcomes.filter((outcome) => outcome === "proved").length;
     // A sum of radial distances may be flat, or pass through stations that hold it by their full weight: rarely.
