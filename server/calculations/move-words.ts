@@ -89,7 +89,10 @@ function causeInWords(
     }
     case "rigid":
       return {
-        because: "No least-squares move of the part as one rigid piece brings all its bores inside",
+        because:
+          wording.request.objective === "minimax"
+            ? "No move of the part as one rigid piece brings all its bores inside"
+            : "No least-squares move of the part as one rigid piece brings all its bores inside",
         limit: null,
       };
     case "tilt":
@@ -118,9 +121,9 @@ export function adviceInWords(wording: Wording, advice: Advice): string {
     case "shim_practice":
       return "At most four pieces in a stack, thin ones between thick ones, one material, flat and without burrs.";
     case "optimality_not_proved":
-      return advice.gap === null
+      return advice.betterBy === null
         ? "Components whose moves shift each other's stations share stock that is short: each was given the best of what those before it leave, and no better choice of all together was looked for."
-        : `The search ended before its end was proved: a better choice of shims may exist, by ${Number(advice.gap.toPrecision(3))} at most in what is made least.`;
+        : `The search ended before its end was proved: a better choice of shims may exist, by ${Number(advice.betterBy.toPrecision(3))} at most in what is made least.`;
     case "stack_over_four_pieces":
       return `${advice.componentId}: more than four pieces at ${listed(advice.places)}. Replace them by fewer, thicker ones.`;
     case "set_by_jack": {

@@ -8,6 +8,7 @@ import { convertersFor, type Converter, type Dimension, type Units } from "../..
 import type { PlaneVector } from "../compute/plane.ts";
 import type { ComponentMove, MovePlan, StackChange, Step, SupportMove } from "../compute/moves/move-plan.ts";
 import type { Tilt } from "../compute/moves/tilt.ts";
+import type { ChoiceSearch } from "../compute/moves/share-stock.ts";
 import { solveMoves } from "../compute/moves/solve-moves.ts";
 import { CalculationRefusal, type CalculationKind } from "./calculation-kind.ts";
 import { attempt } from "./collect-faults.ts";
@@ -58,10 +59,12 @@ function writePlan(plan: MovePlan, wording: Wording, convert: Converters): ShimM
     })),
     steps: plan.steps.map((step) => writeStep(step, offset)),
     remeasure: [...plan.remeasureIds],
-    ...(plan.search ? { search: plan.search } : {}),
+    ...(plan.search ? { search: writeSearch(plan.search) } : {}),
     advice: plan.advice.map((advice) => ({ code: advice.code, detail: adviceInWords(wording, advice) })),
   };
 }
+
+const writeSearch = ({ method, proved, betterBy }: ChoiceSearch) => ({ method, proved, gap: betterBy });
 
 function writeComponent(
   { id, fixed, ideal, realised, stacks, tilt, roll, unreachable }: ComponentMove,

@@ -84,6 +84,8 @@ export function idempotencyKeyOf(request: Request): string | null {
 
 function verifyReply(operation: Operation, deps: Deps, reply: Reply): void {
   if (!deps.verifyReplies || !operation.response.schema || reply.status !== operation.response.status) return;
+  // A page for people stands beside the answer that the document describes.
+  if (reply.headers?.["Content-Type"]?.startsWith("text/html")) return;
   const parsed = operation.response.schema.safeParse(reply.body);
   if (!parsed.success)
     throw new Error(`${operation.operationId} answers against its schema: ${parsed.error.message}`);

@@ -1,5 +1,7 @@
 import type { Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { computations } from "../../console/src/config/paths.ts";
+import { guidePages } from "../../console/src/features/guide/guide-pages.ts";
 import { recordOutage } from "../../server/demo/record-outage.ts";
 import { noMisdeeds, openConsole, openPage, signIn, type ConsoleInBrowser } from "../support/browser.ts";
 
@@ -12,6 +14,7 @@ describe("every page", () => {
   afterAll(() => opened.close());
 
   const atRest = "Cautions";
+  const guide = ["/guide", ...guidePages.map(({ slug }) => `/guide/${slug}`)];
 
   it.each(["/sign-in", "/invitation#token=not-used", "/invitation", "/nowhere"])(
     "%s asks nothing of another origin and breaks no policy, for a stranger",
@@ -23,15 +26,31 @@ describe("every page", () => {
     },
   );
 
+  it("lets a stranger read the whole guide, asks nothing of another origin and breaks no policy", async () => {
+    const { page, misdeeds } = await openPage(opened.browser, opened.service.url);
+    for (const path of guide) {
+      await page.goto(opened.service.url + path, { waitUntil: "networkidle" });
+      await page.getByRole("navigation", { name: "Guide", exact: true }).waitFor();
+      expect([path, await page.getByRole("alert").count()]).toEqual([path, 0]);
+      expect([path, await page.getByRole("link", { name: "Sign in" }).count()]).toEqual([path, 1]);
+    }
+    expect(misdeeds).toEqual(noMisdeeds);
+    await page.goto(`${opened.service.url}/guide/worked-example`);
+    await page.getByRole("img", { name: /^Figure 2\. Plan and elevation/ }).waitFor();
+    await page.goto(`${opened.service.url}/guide/codes#too_few_points`);
+    await page.getByRole("link", { name: "too_few_points" }).click();
+    await page.waitForURL(`${opened.service.url}/v1/problems/too_few_points`);
+    expect(await page.getByRole("heading", { level: 1 }).innerText()).toBe("too_few_points");
+  });
+
   it("asks nothing of another origin and breaks no policy, signed in", async () => {
     const { page, misdeeds } = await openPage(opened.browser, opened.service.url);
     await signIn(page, opened);
     const records = await recordPaths(page);
     expect(records.length).toBeGreaterThanOrEqual(6);
-    const tried = ["bore-fits", "axis-deviations", "shim-moves"].map(
-      (resource) => `/try?endpoint=${resource}`,
-    );
-    for (const path of ["/", "/calculations?kind=bore-fit&status=failed", "/keys", ...tried, ...records]) {
+    const tried = Object.values(computations).map(({ resource }) => `/try?endpoint=${resource}`);
+    const own = ["/", "/calculations?kind=bore-fit&status=failed", "/keys", "/self-test"];
+    for (const path of [...own, ...tried, ...records]) {
       await page.goto(opened.service.url + path, { waitUntil: "networkidle" });
       await page.getByRole("heading", { level: 1 }).waitFor();
       if (path.startsWith("/calculations/")) await page.getByLabel("Title block").waitFor();
@@ -48,7 +67,18 @@ describe("every page", () => {
     await page.setViewportSize({ width, height: 800 });
     await signIn(page, opened);
     const records = await recordPaths(page);
-    for (const path of ["/calculations", "/keys", "/try", ...records]) {
+    for (const path of ["/calculations", "/keys", "/try", "/self-test", ...records]) {
+      await page.goto(opened.service.url + path, { waitUntil: "networkidle" });
+      await page.getByRole("heading", { level: 1 }).waitFor();
+      const scrollWidth = await page.evaluate<number>("document.documentElement.scrollWidth");
+      expect([path, scrollWidth]).toEqual([path, width]);
+    }
+  });
+
+  it.each([380, 768, 1280])("fits the guide into a window %d pixels wide", async (width) => {
+    const { page } = await openPage(opened.browser, opened.service.url);
+    await page.setViewportSize({ width, height: 800 });
+    for (const path of guide) {
       await page.goto(opened.service.url + path, { waitUntil: "networkidle" });
       await page.getByRole("heading", { level: 1 }).waitFor();
       const scrollWidth = await page.evaluate<number>("document.documentElement.scrollWidth");

@@ -50,7 +50,7 @@ export function ellipseByAngles(points: readonly Pair[], start: OracleEllipse, u
       return [(h - x) / u[i]!, (v - y) / u[i]!];
     });
   const squares = (values: readonly number[]) => residualsOf(values).reduce((sum, r) => sum + r * r, 0);
-  for (let round = 0; round < 400; round++) {
+  for (let round = 0; round < 100; round++) {
     const [, , p, q, turn] = ellipseOf(unknowns);
     const [cos, sin] = [Math.cos(turn), Math.sin(turn)];
     const jacobian = Matrix.zeros(2 * n, n + 5);

@@ -53,7 +53,7 @@ describe("every page", () => {
     renderConsole("/calculations");
     await screen.findByText("No calculations yet");
     const links = within(screen.getByRole("navigation", { name: "Main" })).getAllByRole("link");
-    expect(links.map((link) => link.textContent)).toEqual(["Calculations", "Documents"]);
+    expect(links.map((link) => link.textContent)).toEqual(["Calculations", "Guide", "Documents"]);
     expect(links[0]?.getAttribute("aria-current")).toBe("page");
   });
 

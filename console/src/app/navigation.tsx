@@ -5,18 +5,18 @@ import { useMay, useMember } from "../lib/use-session.ts";
 
 const look = "block border-b-2 py-1";
 
-/** The pages that the member's role can use, and the documents, which the server serves itself. */
+/** The pages that the member's role can use, the guide, and the documents, which the server serves itself. */
 export function Navigation() {
   const member = useMember();
   const mayCompute = useMay("calculations:write");
   const mayReadKeys = useMay("keys:read");
-  if (!member) return null;
   return (
     <nav aria-label="Main">
       <ul className="flex flex-wrap gap-x-6 gap-y-1">
-        <PageLink to={paths.calculations}>Calculations</PageLink>
+        {member && <PageLink to={paths.calculations}>Calculations</PageLink>}
         {mayCompute && <PageLink to={paths.tryCall}>Try a call</PageLink>}
         {mayReadKeys && <PageLink to={paths.keys}>Keys</PageLink>}
+        <PageLink to={paths.guide}>Guide</PageLink>
         {/* On a narrow screen the footer's link has to do. */}
         <li className="max-sm:hidden">
           <a href={serverPaths.docs} className={joinClasses(look, "border-transparent hover:border-rule")}>

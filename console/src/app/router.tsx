@@ -1,7 +1,10 @@
 import { createBrowserRouter, Navigate, type RouteObject } from "react-router-dom";
 import { Skeleton } from "../components/ui/skeleton.tsx";
 import { paths } from "../config/paths.ts";
+import { guidePages } from "../features/guide/guide-pages.ts";
+import { loadPage } from "../features/guide/load-page.ts";
 import { RequireSession } from "../features/session/components/require-session.tsx";
+import { SessionIfAny } from "../features/session/components/session-if-any.tsx";
 import { Layout } from "./layout.tsx";
 import { ErrorPage } from "./routes/error-page.tsx";
 import { NotFoundPage } from "./routes/not-found-page.tsx";
@@ -25,6 +28,34 @@ const memberPages: RouteObject[] = [
     path: paths.keys,
     lazy: async () => ({ Component: (await import("./routes/keys-page.tsx")).KeysPage }),
   },
+  {
+    path: paths.selfTest,
+    lazy: async () => ({ Component: (await import("./routes/self-test-page.tsx")).SelfTestPage }),
+  },
+];
+
+/** Pages that anybody may read; a member who does stays signed in. */
+const openPages: RouteObject[] = [
+  {
+    path: paths.guide,
+    lazy: async () => ({ Component: (await import("./routes/guide-page.tsx")).GuidePage }),
+  },
+  ...guidePages.map((page) => ({
+    path: paths.guidePage(page.slug),
+    lazy: async () => {
+      const [{ GuideSheet }, Content] = await Promise.all([
+        import("../features/guide/components/guide-sheet.tsx"),
+        loadPage[page.slug](),
+      ]);
+      return {
+        element: (
+          <GuideSheet page={page}>
+            <Content />
+          </GuideSheet>
+        ),
+      };
+    },
+  })),
 ];
 
 /** Every page of the console in the one frame. Each is loaded when it is first opened. */
@@ -38,6 +69,7 @@ export const routes: RouteObject[] = [
         errorElement: <ErrorPage />,
         children: [
           { element: <RequireSession />, children: memberPages },
+          { element: <SessionIfAny />, children: openPages },
           {
             path: paths.signIn,
             lazy: async () => ({ Component: (await import("./routes/sign-in-page.tsx")).SignInPage }),

@@ -10,6 +10,9 @@ export const paths = {
   calculation: (id: string): string => `/calculations/${encodeURIComponent(id)}`,
   tryCall: "/try",
   keys: "/keys",
+  selfTest: "/self-test",
+  guide: "/guide",
+  guidePage: (slug: string): string => `/guide/${slug}`,
 } as const;
 
 /** Pages that the server serves itself. */
@@ -27,6 +30,9 @@ export const apiPaths = {
   calculation: (id: string): string => `/v1/calculations/${encodeURIComponent(id)}`,
   replay: (id: string): string => `/v1/calculations/${encodeURIComponent(id)}/replay`,
   meta: "/v1/meta",
+  problems: "/v1/problems",
+  problem: (code: string): string => `/v1/problems/${encodeURIComponent(code)}`,
+  selfTest: "/v1/engine/self-test",
 } as const;
 
 /** What can be computed: its name, its place in the address, and where it is posted. */
@@ -41,5 +47,10 @@ export const computations: Record<CalculationKind, { name: string; resource: str
     name: "Repeatability study",
     resource: "repeatability-studies",
     path: "/v1/repeatability-studies",
+  },
+  "measurement-plan": {
+    name: "Measurement plan",
+    resource: "measurement-plans",
+    path: "/v1/measurement-plans",
   },
 };

@@ -11,7 +11,12 @@ export const sampleId = (number: number): string =>
 
 export const organisation = { id: sampleId(1), name: "Fellgate Works" };
 
-export const sampleMeta = { engineVersion: "1.0.0", cautions: [...cautions] };
+export const sampleMeta = {
+  engineVersion: "1.0.0",
+  engineChangelog:
+    "# Changes of the engine\n\nWhat changed stands here.\n\n## 1.0.0\n\nFirst version.\n\n- **Bore fits** by `least_squares`,\n  from points.\n",
+  cautions: [...cautions],
+};
 
 export function sampleSession(role: Role, overrides: Partial<Session> = {}): Session {
   return {

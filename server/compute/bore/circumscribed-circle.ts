@@ -2,27 +2,32 @@ import { ComputeError } from "../compute-error.ts";
 import type { CentreProblem, Place } from "./centre-problem.ts";
 
 const roundsMax = 10_000;
-/** A circle that grows by less has met rounding. */
-const growthMin = 1e-15;
+/** A point that is out by less is out by rounding. */
+const outMin = 2e-15;
+/** Angles nearer than this are rounding. */
+const sameAngle = 1e-9;
 
 /**
  * Centre of the smallest circle that holds all points: the least max gᵢ(c), which is convex and has one optimum,
  * carried by two or three points. The point farthest out is brought in and the smallest circle of it and those that
- * carried so far is taken, until none is out: the circle grows each time, so that no set of carriers comes twice. With
- * a taper each point is a disc (B. Gärtner, K. Fischer, The smallest enclosing ball of balls, SoCG 2003). O(n) a round,
+ * carried so far is taken, until none is out. The circle grows each time, though by less than rounding where a third
+ * point only shifts a diameter across itself: carriers that come again end the rounds with the best centre met. With a
+ * taper each point is a disc (K. Fischer, B. Gärtner, The smallest enclosing ball of balls, SoCG 2003). O(n) a round,
  * usually about ten rounds.
  * @throws ComputeError not_converged
  */
 export function circumscribedCentre(problem: CentreProblem, member: string): Place {
-  let carriers: readonly number[] = [farthest(problem, { x: 0, y: 0 }).index];
-  let centre = placeOfPoint(problem, carriers[0]!);
-  let reach = -Infinity;
+  const first = farthest(problem, { x: 0, y: 0 }).index;
+  let now: Carried = { carriers: [first], centre: placeOfPoint(problem, first), value: -Infinity };
+  let best = { centre: now.centre, value: Infinity };
+  const met = new Set<string>();
   for (let round = 0; round < roundsMax; round++) {
-    const { index, value } = farthest(problem, centre);
-    if (carriers.includes(index) || value <= reach + growthMin) return centre;
-    const next = smallestOf(problem, carriers, index);
-    if (next.value <= reach + growthMin) return centre;
-    ({ carriers, centre, value: reach } = next);
+    const { index, value } = farthest(problem, now.centre);
+    if (value < best.value) best = { centre: now.centre, value };
+    const key = [...now.carriers].sort((a, b) => a - b).join();
+    if (value <= now.value + outMin || now.carriers.includes(index) || met.has(key)) return best.centre;
+    met.add(key);
+    now = smallestOf(problem, now.carriers, index);
   }
   throw new ComputeError("not_converged", "The smallest circle round the points did not settle.", {
     at: [member],
@@ -46,12 +51,20 @@ function smallestOf(problem: CentreProblem, carriers: readonly number[], added: 
   let best: Carried | null = null;
   for (const set of sets) {
     for (const centre of centresThrough(problem, set)) {
+      // A circle that three points on one side of its centre carry can shrink, though perhaps by less than rounding.
+      if (set.length === 3 && !surrounds(problem, set, centre)) continue;
       const value = Math.max(...all.map((i) => outOf(problem, i, centre)));
       if (best === null || value < best.value) best = { carriers: set, centre, value };
     }
   }
   // A single point is always a candidate.
   return best as Carried;
+}
+
+function surrounds({ x, y }: CentreProblem, set: readonly number[], centre: Place): boolean {
+  const angles = set.map((i) => Math.atan2(y[i]! - centre.y, x[i]! - centre.x)).sort((a, b) => a - b);
+  const [first, second, third] = angles as [number, number, number];
+  return Math.max(second - first, third - second, first + 2 * Math.PI - third) <= Math.PI + sameAngle;
 }
 
 /** Centres of the circles, smallest for one or two points, that the points touch from inside. */

@@ -103,7 +103,7 @@ describe("method ellipse", () => {
   );
 
   it("is that of the published formulation with an angle for every point, weights and all", () => {
-    for (let k = 0; k < 12; k++) {
+    for (let k = 0; k < 6; k++) {
       const random = seededRandom(k + 1);
       const [major, minor] = k % 2 ? [240, 200] : [200.4, 200];
       const oval = { centre: [5, -3] as Pair, major, minor, majorClockDeg: 20 + 13 * k };
@@ -185,6 +185,14 @@ describe("method ellipse", () => {
     });
     // At most, since the worst direction is allowed for all.
     expect(outside.length / draws).toBeLessThan(0.05 + 3 * Math.sqrt((0.05 * 0.95) / draws));
+  });
+
+  it("knows the ovality of an even ring as its second harmonic: √(32/n)·u, by the two-dimensional factor", () => {
+    // By hand: r = R + (ovality/4)·cos 2(t − t₀), whose two coefficients have the variance 2u²/n each.
+    const fit = fitByCriterion(ovalInput(joint, clockAngles(20), { readingUncertaintyMm: 0.01 }), "ellipse");
+    // k₂ = √(−2·ln 0.05)
+    const wanted = Math.sqrt(-2 * Math.log(0.05)) * 0.01 * Math.sqrt(32 / 20);
+    near(fit.ellipse!.ovalityExpandedMm! / wanted, 1, 1e-3);
   });
 
   it("gives a round bore no direction as often as the level promises", () => {

@@ -75,6 +75,21 @@ describe("the contacts of a limiting circle", () => {
   });
 });
 
+describe("the limit of a contact", () => {
+  it("is 1e-9 of the radius from the circle", () => {
+    const at = (share: number) => {
+      const ring = [0, 120, 240].map((clockDeg) => onRing(origin, 100, clockDeg));
+      const points = [...ring, onRing(origin, 100, 60, 100 * share)];
+      const method = share < 0 ? "minimum_circumscribed" : "maximum_inscribed";
+      return fitByCriterion(pointsInput(points), method).contacts;
+    };
+    for (const sign of [1, -1]) {
+      expect(at(sign * 0.9e-9)).toEqual([0, 1, 2, 3]);
+      expect(at(sign * 1.1e-9)).toEqual([0, 1, 2]);
+    }
+  });
+});
+
 /** Clear contacts, so that small errors leave them the contacts. */
 const clearly: Record<(typeof limiting)[number], readonly number[]> = {
   minimum_zone: [0.2, 0, -0.2, 0, 0, 0.2, 0, -0.2, 0, 0],

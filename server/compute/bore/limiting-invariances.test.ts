@@ -66,6 +66,8 @@ function expectSameShape(before: WallFit, after: WallFit, within: number, factor
   near(after.expandedUncertainty!.diameterMm! / factor, half, 1e-6 * half);
   if (!before.ellipse) return;
   near(after.ellipse!.ovalityMm / factor, before.ellipse.ovalityMm, within);
+  const expanded = before.ellipse.ovalityExpandedMm!;
+  near(after.ellipse!.ovalityExpandedMm! / factor, expanded, 1e-6 * expanded);
 }
 
 describe.each(methods)("fitByCriterion: %s", (method) => {

@@ -1,6 +1,7 @@
 import type { Advice, StackChange } from "./move-plan.ts";
 import { planes, type MoveProblem, type MoveStation, type Plane } from "./move-problem.ts";
 import { modesOf } from "./rigid-freedom.ts";
+import type { ChoiceSearch } from "./share-stock.ts";
 import { piecesOf } from "./shim-changes.ts";
 import type { SolvedComponent } from "./solve-component.ts";
 import { solvingOrder } from "./solving-order.ts";
@@ -11,6 +12,7 @@ export function collectAdvice(
   problem: MoveProblem,
   solved: readonly SolvedComponent[],
   shiftOf: StationShift,
+  search: ChoiceSearch | null,
 ): Advice[] {
   const moved = solved.filter((each) => each.moved);
   const bearings = moved
@@ -23,7 +25,12 @@ export function collectAdvice(
     );
   });
   return [
-    ...(problem.cutIncrementMm === null ? [{ code: "shims_not_chosen" } as const] : []),
+    ...(problem.cutIncrementMm === null && problem.stock === null
+      ? [{ code: "shims_not_chosen" } as const]
+      : []),
+    ...(search && !search.proved
+      ? [{ code: "optimality_not_proved", betterBy: search.betterBy } as const]
+      : []),
     ...(moved.some(({ places }) => places.length > 0) ? [{ code: "shim_practice" } as const] : []),
     ...solved.flatMap((each) => adviceOn(problem, each)),
     ...solved.flatMap((each) => shiftedAfterwards(problem, each, solved, shiftOf)),

@@ -27,7 +27,7 @@ export function stackChangeOf(
   ideal: RigidMove | null,
   chosen: readonly ChosenStack[],
 ): StackChange {
-  const stack = chosen.find((each) => each.place === place);
+  const stack = chosen.find((each) => each.place.support === place.support && each.place.name === place.name);
   const changeMm = stack?.change.changeMm ?? 0;
   return {
     supportId: supports[place.support]?.id ?? "",

@@ -1,6 +1,6 @@
 import { idealMoveOf, planesTogether, type IdealMove } from "./ideal-move.ts";
 import type { Unreachable } from "./move-plan.ts";
-import { planes, type MoveComponent, type MoveStation } from "./move-problem.ts";
+import { planes, type MoveAim, type MoveComponent, type MoveStation } from "./move-problem.ts";
 import { worstBeyond } from "./predict-station.ts";
 import { moveAt, sumOfMoves, type RigidMove } from "./rigid-freedom.ts";
 
@@ -16,6 +16,7 @@ export function explainUnreachable(
   stations: readonly MoveStation[],
   ideals: readonly IdealMove[],
   level: number,
+  aim: MoveAim,
   worst: Unreachable["worst"],
 ): Unreachable {
   const wouldDo = (move: RigidMove) => worstBeyond(stations, move, level) === null;
@@ -31,15 +32,16 @@ export function explainUnreachable(
   const blocked = component.supports.flatMap((support, index) =>
     planes.filter((plane) => support.blocked.includes(plane)).map((plane) => ({ support: index, plane })),
   )[0];
-  if (blocked && wouldDo(unblockedMove(component, stations))) return { worst, cause: "blocked", ...blocked };
+  if (blocked && wouldDo(unblockedMove(component, stations, aim)))
+    return { worst, cause: "blocked", ...blocked };
   return { worst, cause: "rigid" };
 }
 
-function unblockedMove(component: MoveComponent, stations: readonly MoveStation[]): RigidMove {
+function unblockedMove(component: MoveComponent, stations: readonly MoveStation[], aim: MoveAim): RigidMove {
   const free = { ...component, supports: component.supports.map((support) => ({ ...support, blocked: [] })) };
   return sumOfMoves(
-    planesTogether([]).flatMap((together) => {
-      const ideal = idealMoveOf(free, stations, [], together);
+    planesTogether([], aim).flatMap((together) => {
+      const ideal = idealMoveOf(free, stations, [], together, aim);
       return ideal.possible ? [(zMm: number) => moveAt(ideal.move.modes, ideal.move.unhindered, zMm)] : [];
     }),
   );

@@ -1,19 +1,22 @@
-import { bestTogether } from "./choice-frontier.ts";
-import { chooseShims } from "./choose-shims.ts";
-import { idealMoveOf, placesIn, type IdealMove } from "./ideal-move.ts";
-import type { MoveComponent, MoveStation } from "./move-problem.ts";
+import { hindrancesOf, leastSquaresWithin, limitsOf, placesIn, type IdealMove } from "./ideal-move.ts";
+import type { MoveAim, MoveComponent } from "./move-problem.ts";
 import { travelLimits } from "./move-limits.ts";
 import { rigidFitOf, type RigidFit } from "./rigid-fit.ts";
 import { rowAlong } from "./rigid-freedom.ts";
-import type { SearchBudget } from "./search-budget.ts";
 import { sameThicknessMm } from "./shim-changes.ts";
+import type { ShimSupply } from "./shim-supply.ts";
 import type { ChosenStack, PlaceRow, ShimChoice, ShimTask } from "./shim-task.ts";
 import type { Place } from "./support-places.ts";
 
-export interface ShimSupply {
-  readonly incrementMm: number;
+/** What shims are chosen from, and how far they may leave the rigid move. */
+export interface ShimTerms {
+  readonly supply: ShimSupply;
   readonly maximumMisfitMm: number;
+  readonly aim: MoveAim;
 }
+
+/** Chooses for all tasks of a component together: one choice for each, or null when none will do. */
+export type ChooseForTasks = (tasks: readonly ShimTask[]) => readonly ShimChoice[] | null;
 
 export interface FittedShims {
   /** Realised amounts, one list per ideal move. */
@@ -22,25 +25,23 @@ export interface FittedShims {
 }
 
 /**
- * Real shims for all stacks of a component together, by cost, then pieces, then total change; null when none will do.
+ * Real shims for all stacks of a component together; null when none will do.
  * @throws ComputeError too_many_choices, not_converged
  */
 export function fitShims(
   component: MoveComponent,
-  stations: readonly MoveStation[],
   places: readonly Place[],
   ideals: readonly IdealMove[],
-  supply: ShimSupply,
-  budget: SearchBudget,
+  terms: ShimTerms,
+  choose: ChooseForTasks,
 ): FittedShims | null {
-  const sets: (readonly ShimChoice[])[] = [];
+  const tasks: ShimTask[] = [];
   for (const ideal of ideals) {
-    const elsewhere = ideals.reduce((sum, other) => (other === ideal ? sum : sum + other.cost), 0);
-    const task = shimTaskOf(component, stations, places, ideal, supply);
+    const task = shimTaskOf(component, places, ideal, terms);
     if (!task) return null;
-    sets.push(chooseShims(task, elsewhere, budget));
+    tasks.push(task);
   }
-  const best = bestTogether(sets);
+  const best = choose(tasks);
   return (
     best && { amounts: best.map(({ amounts }) => amounts), stacks: best.flatMap(({ stacks }) => stacks) }
   );
@@ -48,12 +49,11 @@ export function fitShims(
 
 function shimTaskOf(
   component: MoveComponent,
-  stations: readonly MoveStation[],
   places: readonly Place[],
   ideal: IdealMove,
-  { incrementMm, maximumMisfitMm }: ShimSupply,
+  { supply, maximumMisfitMm, aim }: ShimTerms,
 ): ShimTask | null {
-  const { planes, modes, pull, leastMovement, amounts } = ideal;
+  const { planes, modes, objective, leastMovement, amounts, cost } = ideal;
   const rows = placesIn(places, planes).map((place) => ({
     place,
     row: rowAlong(modes, place.direction, place.zMm),
@@ -65,21 +65,25 @@ function shimTaskOf(
   );
   const exact = placesWithoutMisfit(loaded, fit);
   const looserMm = (place: Place) => (exact.has(place) ? 0 : maximumMisfitMm);
-  const loosened = idealMoveOf(component, stations, places, planes, looserMm);
-  if (!loosened.possible) return null;
+  const limits = limitsOf(component, places, planes, modes, looserMm);
+  const loosened = leastSquaresWithin(modes.length, [objective.bound, leastMovement], limits);
+  if (!loosened.feasible) return null;
   return {
     size: modes.length,
-    pull,
+    objective,
     leastMovement,
     travel: travelLimits(component.supports, modes, planes),
     loaded,
     following: rows.filter(({ place }) => !place.bearsLoad),
     fit,
     ideal: amounts,
-    bestImaginable: loosened.move.amounts,
-    hindrances: loosened.move.hindrances,
-    incrementMm,
+    idealCost: cost,
+    bestImaginable: loosened.point,
+    hindrances: hindrancesOf(loosened.binding, limits, loosened.point),
+    supply,
+    prices: [],
     maximumMisfitMm,
+    bestIfLong: supply.lines.length > 0 || aim === "minimax",
   };
 }
 

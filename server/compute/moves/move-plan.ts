@@ -2,6 +2,7 @@ import type { Verdict } from "../conformity/tolerance.ts";
 import type { PlaneVector } from "../plane.ts";
 import type { Plane } from "./move-problem.ts";
 import type { RollAnswer } from "./roll.ts";
+import type { ChoiceSearch } from "./share-stock.ts";
 import type { Tilt } from "./tilt.ts";
 
 /** How far the bore moves at one support. */
@@ -51,6 +52,8 @@ export type Unreachable = {
   | { readonly cause: "rigid" }
   /** The ideal move would do; the shims that can be cut do not. */
   | { readonly cause: "shims" }
+  /** The ideal move would do; the shims at hand do not. */
+  | { readonly cause: "stock" }
   /** The stations are inside; the tilt of the part is not. */
   | { readonly cause: "tilt"; readonly planes: readonly Plane[] }
 );
@@ -99,6 +102,7 @@ export interface Step {
 export type Advice =
   | { readonly code: "shims_not_chosen" }
   | { readonly code: "shim_practice" }
+  | { readonly code: "optimality_not_proved"; readonly betterBy: number | null }
   | {
       readonly code: "stack_over_four_pieces";
       readonly componentId: string;
@@ -135,4 +139,6 @@ export interface MovePlan {
   /** Reference stations first, then every station of a component that moved. */
   readonly remeasureIds: readonly string[];
   readonly advice: readonly Advice[];
+  /** How the shims were chosen; null where none were. */
+  readonly search: ChoiceSearch | null;
 }

@@ -101,13 +101,28 @@ export interface MoveIndicator {
   readonly contact: "outside" | "inside";
 }
 
+/** What a move, and the choice of shims, makes least: Σ(|d|/T)², or the largest |d|/T of a component's stations. */
+export type MoveAim = "least_squares" | "minimax";
+
+/** Pieces of one thickness at hand. */
+export interface StockItem {
+  readonly thicknessMm: number;
+  /** Infinity: unlimited. */
+  readonly quantity: number;
+}
+
 export interface MoveProblem {
   readonly stations: readonly MoveStation[];
   readonly referenceIds: readonly string[];
   readonly components: readonly MoveComponent[];
   readonly couplings: readonly Coupling[];
-  /** Shims cut to any whole multiple of this thickness; null: none are chosen, every change is the ideal one. */
+  readonly aim: MoveAim;
+  /** Shims cut to any whole multiple of this thickness; null: none are cut. */
   readonly cutIncrementMm: number | null;
+  /** Shims at hand, shared by all stacks of the call; null: none. With neither, every change is the ideal one. */
+  readonly stock: readonly StockItem[] | null;
+  /** Whether pieces taken out serve the same component again, and those moved after it. */
+  readonly reuse: boolean;
   /** Most that may be left between a chosen change and the rigid move, at any place. */
   readonly maximumMisfitMm: number;
   /** Largest part of a move made at once; null: a move is made in one. */

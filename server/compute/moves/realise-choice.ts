@@ -1,17 +1,17 @@
-import { along, dot, type LeastSquares } from "./least-squares-in-order.ts";
-import { excessOver, solveQuadraticProgram } from "./quadratic-program.ts";
+import { along, dot } from "./least-squares-in-order.ts";
+import { excessOver } from "./quadratic-program.ts";
 import type { SearchBudget } from "./search-budget.ts";
-import { changesWithin, sameThicknessMm, type ShimChange } from "./shim-changes.ts";
+import { sameThicknessMm, type ShimChange } from "./shim-changes.ts";
 import { moveShareMm } from "./shim-groups.ts";
+import type { ShimSupply } from "./shim-supply.ts";
 import type { ChosenStack, PlaceRow, ShimChoice, ShimTask } from "./shim-task.ts";
-import { costOf } from "./station-pull.ts";
 
 /** What solving one quadratic program is worth, in trials of the search. */
 const trialsPerProgram = 100;
 
 /**
  * The rigid move that `changes` make (one per load-bearing place of the task, in its order), with what the upper pads
- * then need. Null when the travel, a stack's limits or the misfit forbid it.
+ * then need. Null when the travel, a stack's limits, the misfit or the counted lines of the stock forbid it.
  * @throws ComputeError too_many_choices, not_converged
  */
 export function realiseChoice(
@@ -35,14 +35,19 @@ export function realiseChoice(
     return change ? [{ place, change, misfitMm: misfits[k] ?? 0 }] : [];
   });
   for (const follower of task.following) {
-    const stack = follow(follower, amounts, task, budget);
+    const stack = follow(follower, amounts, stacks, task, budget);
     if (!stack) return null;
     stacks.push(stack);
   }
   if (stacks.some(({ misfitMm }) => Math.abs(misfitMm) > mostMm)) return null;
+  const made = stacks.map(({ change }) => change);
+  const net = task.supply.netOf(made);
+  if (task.supply.counted.some((line) => task.supply.overdrawn(net).includes(line))) return null;
   return {
     amounts,
-    cost: costOf(task.pull, amounts),
+    taken: task.supply.takenBy(made),
+    net,
+    cost: task.objective.valueOf(amounts),
     handled: stacks.reduce((sum, { change }) => sum + change.handled, 0),
     totalMm: stacks.reduce((sum, { change }) => sum + Math.abs(change.changeMm), 0),
     stacks,
@@ -56,43 +61,45 @@ function setByJack(
   budget: SearchBudget,
 ): readonly number[] | null {
   budget.spend(trialsPerProgram + task.travel.length);
-  const { fit } = task;
-  const byShims: LeastSquares = {
-    rows: fit.determined,
-    targets: fit.determined.map((direction) => dot(direction, fitted)),
-  };
-  const best = solveQuadraticProgram(task.size, [byShims, task.pull, task.leastMovement], task.travel);
-  if (!best.feasible) return null;
-  const broken = fit.determined.some(
-    (direction, k) => Math.abs(dot(direction, best.point) - (byShims.targets[k] ?? 0)) > sameThicknessMm,
-  );
-  return broken ? null : best.point;
+  return task.objective.bestAlong(fitted, task.fit.open, task.travel);
 }
 
 /**
- * The change of an upper pad nearest to the realised move; of equally near ones the fewest pieces, then the thinner.
- * It lies within an increment, unless the stack's own limits keep it farther off.
+ * The change of an upper pad nearest to the realised move for which there are pieces left; of equally near ones the
+ * fewest pieces, then the thinner. It lies within a step of the shims, unless the stack's own limits keep it farther off.
  */
 function follow(
   { place, row }: PlaceRow,
   amounts: readonly number[],
+  before: readonly ChosenStack[],
   task: ShimTask,
   budget: SearchBudget,
 ): ChosenStack | null {
   const needMm = dot(row, amounts);
-  const withinMm = (mm: number) => {
-    const reachMm = mm + sameThicknessMm;
-    return changesWithin(place.stack, task.incrementMm, needMm - reachMm, needMm + reachMm, budget);
-  };
-  const close = withinMm(Math.min(task.maximumMisfitMm, task.incrementMm));
-  const changes = close.length > 0 ? close : withinMm(task.maximumMisfitMm);
-  const near = changes
-    .map((change) => ({ place, change, misfitMm: change.changeMm - needMm }))
-    .sort(
-      (a, b) =>
-        Math.round((Math.abs(a.misfitMm) - Math.abs(b.misfitMm)) / sameThicknessMm) ||
-        a.change.handled - b.change.handled ||
-        a.change.changeMm - b.change.changeMm,
-    );
-  return near[0] ?? null;
+  const { supply } = task;
+  for (let mm = supply.stepMm; ; mm *= widerEachTime) {
+    const reachMm = Math.min(mm, task.maximumMisfitMm) + sameThicknessMm;
+    const near = supply
+      .changesWithin(place.stack, needMm - reachMm, needMm + reachMm, budget)
+      .flatMap(({ ways }) => ways)
+      .map((change) => ({ place, change, misfitMm: change.changeMm - needMm }))
+      .sort(
+        (a, b) =>
+          Math.round((Math.abs(a.misfitMm) - Math.abs(b.misfitMm)) / sameThicknessMm) ||
+          a.change.handled - b.change.handled ||
+          a.change.changeMm - b.change.changeMm,
+      );
+    const fits =
+      supply.counted.length === 0 ? near[0] : near.find((each) => leaves([...before, each], supply));
+    if (fits ?? mm >= task.maximumMisfitMm) return fits ?? null;
+  }
+}
+
+/** How much wider a search about the change wanted becomes while it finds nothing. */
+const widerEachTime = 8;
+
+/** Whether the changes leave no counted line overdrawn. */
+function leaves(stacks: readonly ChosenStack[], supply: ShimSupply): boolean {
+  const over = supply.overdrawn(supply.netOf(stacks.map(({ change }) => change)));
+  return supply.counted.every((line) => !over.includes(line));
 }

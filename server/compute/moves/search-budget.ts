@@ -11,9 +11,27 @@ const mostPerCall = 2_000_000;
 export class SearchBudget {
   private spentOnComponent = 0;
   private spent = 0;
+  private refusal: ComputeError | null = null;
+
+  /** `times` as many trials for the call as a call has that chooses each component's shims once. */
+  constructor(private readonly times = 1) {}
 
   startComponent(): void {
     this.spentOnComponent = 0;
+  }
+
+  /**
+   * Runs a search that gathers what it finds; false when the trials ran out before its end and `enough` was found.
+   * @throws ComputeError too_many_choices when they ran out before
+   */
+  lasts(search: () => void, enough: () => boolean): boolean {
+    try {
+      search();
+      return true;
+    } catch (error) {
+      if (error === this.refusal && enough()) return false;
+      throw error;
+    }
   }
 
   /** @throws ComputeError too_many_choices when more than the budget is spent */
@@ -23,13 +41,13 @@ export class SearchBudget {
     // Told so that what is not a number is too much as well.
     const over = !(this.spentOnComponent <= mostPerComponent)
       ? mostPerComponent
-      : !(this.spent <= mostPerCall)
-        ? mostPerCall
+      : !(this.spent <= this.times * mostPerCall)
+        ? this.times * mostPerCall
         : null;
     if (over !== null) {
-      throw new ComputeError("too_many_choices", `The choice of shims needs more than ${over} trials.`, {
-        limit: over,
-      });
+      const detail = `The choice of shims needs more than ${over} trials.`;
+      this.refusal = new ComputeError("too_many_choices", detail, { limit: over });
+      throw this.refusal;
     }
   }
 }

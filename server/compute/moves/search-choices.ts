@@ -6,6 +6,8 @@ export interface SearchOption {
   readonly effect: readonly number[];
   readonly rise: number;
   readonly pushes: readonly number[];
+  /** Cost beside them, 0 when absent: of the pieces of stock that it takes. */
+  readonly price?: number;
 }
 
 /** What can be chosen at one place. */
@@ -18,8 +20,8 @@ export interface SearchPlace<Option extends SearchOption> {
 }
 
 /**
- * Visits every choice of one option per place, each allowed beside those before it, whose summed effect e, rise r and
- * pushes p have |e|² + max(0, r) ≤ bound() and p ≤ `most`. The visitor may lower the bound as it finds better ones.
+ * Visits every choice of one option per place, each allowed beside those before it, whose summed effect e, rise r, price
+ * c and pushes p have |e|² + max(0, r) + c ≤ bound() and p ≤ `most`. The visitor may lower the bound as it finds better ones.
  * Depth first, each place's options in the order given. A branch is left when no choice at the places still open can
  * keep these: |e|² is at least that of the part of the sum outside the span of their columns (the sphere decoder's bound
  * of U. Fincke and M. Pohst, Mathematics of Computation 44 (1985) 463–471, from memory, in orthogonal projections),
@@ -44,12 +46,19 @@ export function searchChoices<Option extends SearchOption>(
         size,
       ),
       leastRise: leastOf(({ rise }) => rise),
+      leastPrice: leastOf(({ price = 0 }) => price),
       leastPushes: most.map((_, t) => leastOf(({ pushes }) => pushes[t] ?? 0)),
     };
   });
   const chosen: Option[] = [];
 
-  const descend = (depth: number, sum: readonly number[], rise: number, pushes: readonly number[]): void => {
+  const descend = (
+    depth: number,
+    sum: readonly number[],
+    rise: number,
+    price: number,
+    pushes: readonly number[],
+  ): void => {
     const place = places[depth];
     const rest = later[depth];
     if (!place || !rest) return visit(chosen);
@@ -62,14 +71,15 @@ export function searchChoices<Option extends SearchOption>(
       const next = sum.map((value, k) => value + (option.effect[k] ?? 0));
       const risen = rise + option.rise;
       const least = rest.staying.reduce((total, direction) => total + dot(direction, next) ** 2, 0);
-      if (least + Math.max(0, risen + rest.leastRise) > bound()) continue;
+      const paid = price + (option.price ?? 0);
+      if (least + Math.max(0, risen + rest.leastRise) + paid + rest.leastPrice > bound()) continue;
       chosen.push(option);
-      descend(depth + 1, next, risen, pushed);
+      descend(depth + 1, next, risen, paid, pushed);
       chosen.pop();
     }
   };
   const none = most.map(() => 0);
-  descend(0, new Array<number>(size).fill(0), 0, none);
+  descend(0, new Array<number>(size).fill(0), 0, 0, none);
 }
 
 function leastIn<Option>(options: readonly Option[], value: (option: Option) => number): number {

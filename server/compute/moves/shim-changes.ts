@@ -6,6 +6,8 @@ export interface ShimChange {
   readonly changeMm: number;
   readonly addMm: readonly number[];
   readonly removeMm: readonly number[];
+  /** Pieces from stock among those added, each by its line. */
+  readonly stockLines?: readonly number[];
   /** Pieces handled: added and removed. */
   readonly handled: number;
 }

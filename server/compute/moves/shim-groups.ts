@@ -1,7 +1,9 @@
 import { along, dot, lengthOf } from "./least-squares-in-order.ts";
 import type { SearchBudget } from "./search-budget.ts";
 import type { SearchOption } from "./search-choices.ts";
-import { changesWithin, sameThicknessMm, type ShimChange } from "./shim-changes.ts";
+import { sameThicknessMm, type ShimChange } from "./shim-changes.ts";
+import type { ChangeWays, ShimSupply } from "./shim-supply.ts";
+import type { ShimTask } from "./shim-task.ts";
 import type { Place } from "./support-places.ts";
 
 /** A place, the part of the move it answers to, and what its change does to the stations' cost. */
@@ -27,6 +29,7 @@ export interface LoadPlace {
 /** One way to change the stacks of a group, and what it does to the stations' cost against the change wanted. */
 export interface GroupOption extends SearchOption {
   readonly changes: readonly ShimChange[];
+  readonly price: number;
   /** What the change at its first place asks of the move. */
   readonly firstMm: number;
 }
@@ -54,34 +57,62 @@ export function groupPlaces(places: readonly LoadPlace[]): LoadPlace[][] {
  */
 export function groupOptions(
   group: readonly LoadPlace[],
-  incrementMm: number,
+  { supply, maximumMisfitMm, prices }: ShimTask,
   reachMm: number,
   budget: SearchBudget,
 ): GroupOption[] {
   const [first, second] = group;
   if (!first) return [];
-  const margin = second ? reachMm + incrementMm : reachMm;
+  // Twins farther apart than twice the misfit are of no use; of the others each must see all that could be nearer.
+  const apartMm = supply.lines.length === 0 ? supply.stepMm : 3 * maximumMisfitMm + supply.stepMm;
+  const margin = second ? reachMm + apartMm : reachMm;
   const listOf = ({ place, centreMm }: LoadPlace) => {
     const aboutMm = centreMm + place.offsetMm;
-    return changesWithin(place.stack, incrementMm, aboutMm - margin, aboutMm + margin, budget);
+    return supply.changesWithin(place.stack, aboutMm - margin, aboutMm + margin, budget);
   };
   const firsts = listOf(first);
   const sets = second ? alike(first, second, firsts, listOf(second)) : firsts.map((change) => [change]);
-  const near = sets.filter((changes) => {
-    const errors = sharesOf(group, changes).map((mm, k) => mm - (group[k]?.centreMm ?? 0));
-    return Math.abs(meanAlong(group, errors)) <= reachMm + sameThicknessMm;
-  });
-  if (group.every(({ row }) => lengthOf(row) === 0))
-    return leastHandled(near).map((set) => optionOf(group, set));
+  const near = sets
+    .filter((changes) => {
+      const errors = sharesOf(group, changes).map((mm, k) => mm - (group[k]?.centreMm ?? 0));
+      return Math.abs(meanAlong(group, errors)) <= reachMm + sameThicknessMm;
+    })
+    .flatMap((changes) => everyWayOf(changes, supply));
+  budget.spend(near.length);
+  if (supply.counted.length === 0 && group.every(({ row }) => lengthOf(row) === 0))
+    return leastHandled(near).map((set) => optionOf(group, set, supply, prices));
   return near
-    .map((changes) => optionOf(group, changes))
-    .map((option) => ({ option, cost: dot(option.effect, option.effect) + option.rise }))
+    .map((changes) => optionOf(group, changes, supply, prices))
+    .map((option) => ({ option, cost: dot(option.effect, option.effect) + option.rise + option.price }))
     .sort((a, b) => a.cost - b.cost)
     .map(({ option }) => option);
 }
 
-function optionOf(group: readonly LoadPlace[], changes: readonly ShimChange[]): GroupOption {
+/** The ways to make the changes of a group: one for each, or of those that take other pieces of the counted lines, all. */
+function everyWayOf(changes: readonly ChangeWays[], supply: ShimSupply): ShimChange[][] {
+  const combined = changes.reduce<ShimChange[][]>(
+    (all, { ways }) => all.flatMap((before) => ways.map((way) => [...before, way])),
+    [[]],
+  );
+  if (combined.length < 2) return combined;
+  const handledBy = (set: readonly ShimChange[]) => set.reduce((sum, { handled }) => sum + handled, 0);
+  const fewest = new Map<string, ShimChange[]>();
+  for (const set of combined) {
+    const use = supply.countedOf(set).join(" ");
+    const known = fewest.get(use);
+    if (!known || handledBy(set) < handledBy(known)) fewest.set(use, set);
+  }
+  return [...fewest.values()];
+}
+
+function optionOf(
+  group: readonly LoadPlace[],
+  changes: readonly ShimChange[],
+  supply: ShimSupply,
+  prices: readonly number[],
+): GroupOption {
   const amounts = sharesOf(group, changes);
+  const counted = supply.countedOf(changes);
   const errors = group.map(({ wantedMm }, k) => (amounts[k] ?? 0) - wantedMm);
   const sum = (columns: readonly (readonly number[])[], by: readonly number[]) =>
     along(columns[0]?.map(() => 0) ?? [], columns, by);
@@ -96,14 +127,18 @@ function optionOf(group: readonly LoadPlace[], changes: readonly ShimChange[]): 
       errors,
       group.map(({ risePerMm }) => risePerMm),
     ),
-    pushes: sum(
-      group.map(({ pushesPerMm }) => pushesPerMm),
-      amounts,
-    ),
+    pushes: [
+      ...sum(
+        group.map(({ pushesPerMm }) => pushesPerMm),
+        amounts,
+      ),
+      ...counted,
+    ],
+    price: dot(counted, prices),
   };
 }
 
-const sharesOf = (group: readonly LoadPlace[], changes: readonly ShimChange[]): number[] =>
+const sharesOf = (group: readonly LoadPlace[], changes: readonly { changeMm: number }[]): number[] =>
   group.map(({ place }, k) => moveShareMm(place, changes[k]?.changeMm ?? 0));
 
 function leastHandled(sets: readonly (readonly ShimChange[])[]): (readonly ShimChange[])[] {
@@ -119,7 +154,7 @@ function leastHandled(sets: readonly (readonly ShimChange[])[]): (readonly ShimC
 }
 
 interface Turned {
-  readonly change: ShimChange;
+  readonly change: ChangeWays;
   /** Its share in the move, as the first of the twins would say it. */
   readonly mm: number;
 }
@@ -128,11 +163,11 @@ interface Turned {
 function alike(
   first: LoadPlace,
   second: LoadPlace,
-  firsts: readonly ShimChange[],
-  seconds: readonly ShimChange[],
-): ShimChange[][] {
+  firsts: readonly ChangeWays[],
+  seconds: readonly ChangeWays[],
+): ChangeWays[][] {
   const sign = opposed(first, second) ? -1 : 1;
-  const turned = (changes: readonly ShimChange[], { place }: LoadPlace, by: number): Turned[] =>
+  const turned = (changes: readonly ChangeWays[], { place }: LoadPlace, by: number): Turned[] =>
     changes
       .map((change) => ({ change, mm: by * moveShareMm(place, change.changeMm) }))
       .sort((a, b) => a.mm - b.mm);

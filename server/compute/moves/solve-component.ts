@@ -1,14 +1,14 @@
 import { ComputeError } from "../compute-error.ts";
 import { asIdeal, movesOf, stackChangeOf } from "./component-answer.ts";
 import { explainUnreachable } from "./explain-unreachable.ts";
-import { fitShims, type FittedShims } from "./fit-shims.ts";
+import { fitShims, type ChooseForTasks, type FittedShims } from "./fit-shims.ts";
 import { idealMoveOf, planesTogether, type IdealMove } from "./ideal-move.ts";
 import type { ComponentMove, LimitPlace, Unreachable } from "./move-plan.ts";
 import type { MoveComponent, MoveProblem, MoveStation } from "./move-problem.ts";
 import { worstBeyond } from "./predict-station.ts";
 import { moveAt, noMove, sumOfMoves, type RigidMove } from "./rigid-freedom.ts";
 import { boreShiftOf, rollTakenOut, type RollAnswer } from "./roll.ts";
-import type { SearchBudget } from "./search-budget.ts";
+import type { ShimSupply } from "./shim-supply.ts";
 import { shiftedBy } from "./station-shifts.ts";
 import { placesOf, type Place } from "./support-places.ts";
 import { planesTooSteep, tiltOf } from "./tilt.ts";
@@ -31,20 +31,26 @@ export interface SolvedComponent {
   readonly moved: boolean;
 }
 
+/** What the shims of a component are chosen from, and by whom. */
+export interface ComponentShims {
+  readonly supply: ShimSupply;
+  readonly choose: ChooseForTasks;
+}
+
 /** An amount below this is rounding, not a move. */
 const noMoveMm = 1e-12;
 
 /**
  * Moves one component: the best rigid move, the real shims for it, and the move that those make. `stations` are its
- * own, where the moves before leave them. Without an increment to cut shims to, every change is the ideal one, and so
- * is the realised move.
+ * own, where the moves before leave them. Without shims to choose from, every change is the ideal one, and so is the
+ * realised move.
  * @throws ComputeError supports_insufficient, too_many_choices, not_converged
  */
 export function solveComponent(
   problem: MoveProblem,
   index: number,
   stations: readonly MoveStation[],
-  budget: SearchBudget,
+  shims: ComponentShims | null,
 ): SolvedComponent {
   const component = problem.components[index];
   if (!component) throw new RangeError("A component is solved by an index of the problem's.");
@@ -61,7 +67,9 @@ export function solveComponent(
   // The roll comes out whatever the move: the stations are served from where that leaves them.
   const level = roll ? [boreShiftOf(roll, roll.radians)] : [];
   const served = stations.map((station) => shiftedBy(station, level));
-  const answers = planesTogether(places).map((together) => idealMoveOf(component, served, places, together));
+  const answers = planesTogether(places, problem.aim).map((together) =>
+    idealMoveOf(component, served, places, together, problem.aim),
+  );
   if (answers.some(({ possible }) => !possible)) {
     const limits = answers.flatMap((answer) => (answer.possible ? [] : answer.conflict));
     return stayPut(still, problem.level, { cause: "contradiction", limits });
@@ -71,32 +79,31 @@ export function solveComponent(
     ideals,
     ideals.map(({ amounts }) => amounts),
   );
-  const chosen = chooseStacks(problem, still, served, ideals, idealMove, budget);
+  const chosen = chooseStacks(problem, still, ideals, idealMove, shims);
   return { ...still, ideals, ...realise(problem, still, served, ideals, idealMove, chosen) };
 }
 
 type Still = Pick<SolvedComponent, "index" | "component" | "stations" | "places">;
 
 function chooseStacks(
-  { cutIncrementMm, maximumMisfitMm }: MoveProblem,
+  { maximumMisfitMm, aim }: MoveProblem,
   { component, places }: Still,
-  served: readonly MoveStation[],
   ideals: readonly IdealMove[],
   idealMove: RigidMove,
-  budget: SearchBudget,
+  shims: ComponentShims | null,
 ): FittedShims | null {
-  if (cutIncrementMm === null) {
+  if (shims === null) {
     return {
       amounts: ideals.map(({ amounts }) => amounts),
       stacks: places.map((place) => asIdeal(place, idealMove)),
     };
   }
-  const supply = { incrementMm: cutIncrementMm, maximumMisfitMm };
-  return fitShims(component, served, places, ideals, supply, budget);
+  const terms = { supply: shims.supply, maximumMisfitMm, aim };
+  return fitShims(component, places, ideals, terms, shims.choose);
 }
 
 function realise(
-  { level }: MoveProblem,
+  { level, aim, stock }: MoveProblem,
   { component, stations, places }: Still,
   served: readonly MoveStation[],
   ideals: readonly IdealMove[],
@@ -110,7 +117,8 @@ function realise(
   const turned: RollAnswer | null = roll && rollTakenOut(roll, stacks, supportMove, zMmOf);
   const realised = turned ? sumOfMoves([supportMove, () => turned.boreShift]) : supportMove;
   const worst = worstBeyond(stations, realised, level);
-  const unreachable = worst || !chosen ? explainUnreachable(component, served, ideals, level, worst) : null;
+  const unreachable =
+    worst || !chosen ? explainUnreachable(component, served, ideals, level, aim, worst) : null;
   const moves = movesOf(component, supportMove);
   return {
     supportMove,
@@ -122,12 +130,16 @@ function realise(
       ideal: movesOf(component, idealMove),
       realised: moves,
       stacks,
-      unreachable: unreachable ?? tooSteep(component, stations, realised),
+      unreachable: fromStock(unreachable, stock !== null) ?? tooSteep(component, stations, realised),
       tilt: tiltAnswer(component, stations, realised),
       roll: turned,
     },
   };
 }
+
+/** Where shims come from stock, it is the stock that does not do. */
+const fromStock = (unreachable: Unreachable | null, stocked: boolean): Unreachable | null =>
+  stocked && unreachable?.cause === "shims" ? { ...unreachable, cause: "stock" } : unreachable;
 
 type Held =
   | { readonly cause: "fixed" }

@@ -5,10 +5,10 @@ import type { MoveProblem } from "./move-problem.ts";
 import { planSteps } from "./plan-steps.ts";
 import { predictStation } from "./predict-station.ts";
 import { noMove } from "./rigid-freedom.ts";
-import { SearchBudget } from "./search-budget.ts";
-import { solveComponent, type SolvedComponent } from "./solve-component.ts";
+import { solveComponent, type ComponentShims, type SolvedComponent } from "./solve-component.ts";
+import { solveWithShims, type SolvePass } from "./solve-with-shims.ts";
 import { solvingOrder } from "./solving-order.ts";
-import { shiftedBy, stationShiftsOf } from "./station-shifts.ts";
+import { shiftedBy, stationShiftsOf, type StationShift } from "./station-shifts.ts";
 
 /** Runs over the components, by index, in the order given; a caller that gathers every refusal brings its own. */
 export type ForEachComponent = (
@@ -22,7 +22,8 @@ export type ForEachComponent = (
  * solved with its stations where the moves before its own leave them.
  * Lengths in mm. Ids are unique, every reference exists, every station belongs to one component at most and nothing
  * carries itself.
- * Work: per component linear in its stations and limits; the choice of shims is bounded by a budget.
+ * Work: per component linear in its stations and limits; the choice of shims is bounded by a budget. Shims from a stock that all share are
+ * chosen for all components together (share-stock.ts).
  * @throws ComputeError supports_insufficient, too_many_choices, not_converged, tolerance_invalid, combination_invalid,
  * result_overflow
  */
@@ -30,25 +31,10 @@ export function solveMoves(
   problem: MoveProblem,
   forEachComponent: ForEachComponent = (order, solve) => order.map(solve),
 ): MovePlan {
-  const { components, stations, level } = problem;
-  const budget = new SearchBudget();
+  const { stations, level } = problem;
   const shiftOf = stationShiftsOf(problem);
-  const stationById = new Map(stations.map((station) => [station.id, station]));
-  const before: SolvedComponent[] = [];
-  const inOrder = forEachComponent(solvingOrder(components), (index) => {
-    budget.startComponent();
-    const own = (components[index]?.stationIds ?? []).flatMap((id) => stationById.get(id) ?? []);
-    const asMoved = own.map((station) =>
-      shiftedBy(
-        station,
-        before.map((each) => shiftOf(each.index, each.realised, station)),
-      ),
-    );
-    const one = solveComponent(problem, index, asMoved, budget);
-    assertAllFinite(one.answer);
-    before.push(one);
-    return one;
-  });
+  const pass: SolvePass = (shimsOf) => solvePass(problem, shiftOf, forEachComponent, shimsOf);
+  const { inOrder, search } = solveWithShims(problem, pass);
 
   const predicted = stations.map((station) => {
     const shifts = inOrder.map((each) => shiftOf(each.index, each.realised, station));
@@ -67,8 +53,34 @@ export function solveMoves(
     predicted,
     steps: planSteps(problem, inOrder, shiftOf),
     remeasureIds: remeasureOf(problem, inOrder, shifted),
-    advice: collectAdvice(problem, asSent, shiftOf),
+    advice: collectAdvice(problem, asSent, shiftOf, search),
+    search,
   };
+}
+
+/** Solves every component in its turn, with its stations where the moves before its own leave them. */
+function solvePass(
+  problem: MoveProblem,
+  shiftOf: StationShift,
+  forEachComponent: ForEachComponent,
+  shimsOf: (index: number) => ComponentShims | null,
+): SolvedComponent[] {
+  const { components, stations } = problem;
+  const stationById = new Map(stations.map((station) => [station.id, station]));
+  const before: SolvedComponent[] = [];
+  return forEachComponent(solvingOrder(components), (index) => {
+    const own = (components[index]?.stationIds ?? []).flatMap((id) => stationById.get(id) ?? []);
+    const asMoved = own.map((station) =>
+      shiftedBy(
+        station,
+        before.map((each) => shiftOf(each.index, each.realised, station)),
+      ),
+    );
+    const one = solveComponent(problem, index, asMoved, shimsOf(index));
+    assertAllFinite(one.answer);
+    before.push(one);
+    return one;
+  });
 }
 
 /** Reference stations first; then, in the order sent, the stations of every component that moved, and all shifted. */

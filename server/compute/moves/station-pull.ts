@@ -2,6 +2,7 @@ import { assertFinite } from "../compute-error.ts";
 import { findToleranceFaults } from "../conformity/find-tolerance-faults.ts";
 import type { PlaneTolerance } from "../conformity/tolerance.ts";
 import { dot, decompose, type LeastSquares } from "./least-squares-in-order.ts";
+import type { MinimaxTerm } from "./minimax-program.ts";
 import type { MoveStation, Plane } from "./move-problem.ts";
 import { noMove, rowAlong, type Mode } from "./rigid-freedom.ts";
 import { endStationsOf, tiltOf, type Tilt } from "./tilt.ts";
@@ -12,42 +13,59 @@ export interface Pull extends LeastSquares {
 }
 
 /**
- * What the stations ask of the part that carries them: Σ w·(dᵢ + δ(zᵢ))², w = 1/T², d measured from the middle of its
- * tolerance, in `planes`. A station without tolerance asks for nothing; where none of them has one, all ask alike
- * (T = 1 mm). A tilt tolerance S adds (s + θ)²/S² for the slope s of the line through the part's end stations. Reduced by singular values to one row per mode, so that its cost no longer depends on the stations.
+ * What the stations ask of the part that carries them: (dᵢ + δ(zᵢ))/T, d measured from the middle of its tolerance, in
+ * `planes`: h and v in one term where the tolerance is round, apart where each has its own. A station without tolerance
+ * asks for nothing; where none of them has one, all ask alike (T = 1 mm). A tilt tolerance S adds (s + θ)/S for the slope
+ * s of the line through the part's end stations.
  */
-export function pullOf(
+export function termsOf(
   stations: readonly MoveStation[],
   modes: readonly Mode[],
   planes: readonly Plane[],
   tiltTolerance: Tilt | null = null,
-): Pull {
+): MinimaxTerm[] {
   const anyTolerance = stations.some(({ tolerance }) => tolerance !== null);
-  const asking = stations.flatMap((station) =>
-    anyTolerance && !station.tolerance ? [] : planes.map((plane) => ({ station, plane })),
-  );
-  const terms = asking.map(({ station, plane }) => {
-    const { middleMm, halfWidthMm } = demandOf(station, plane);
-    const deviationMm = plane === "h" ? station.deviation.hMm : station.deviation.vMm;
-    const direction = { h: plane === "h" ? 1 / halfWidthMm : 0, v: plane === "v" ? 1 / halfWidthMm : 0 };
-    return { row: rowAlong(modes, direction, station.zMm), target: (middleMm - deviationMm) / halfWidthMm };
+  const asking = stations.filter(({ tolerance }) => !anyTolerance || tolerance !== null);
+  const terms = asking.flatMap((station) => {
+    const parts = planes.map((plane) => {
+      const { middleMm, halfWidthMm } = demandOf(station, plane);
+      const deviationMm = plane === "h" ? station.deviation.hMm : station.deviation.vMm;
+      const direction = { h: plane === "h" ? 1 / halfWidthMm : 0, v: plane === "v" ? 1 / halfWidthMm : 0 };
+      return { row: rowAlong(modes, direction, station.zMm), target: (middleMm - deviationMm) / halfWidthMm };
+    });
+    return station.tolerance?.form === "planes" ? parts.map((part) => termOf([part])) : [termOf(parts)];
   });
-  if (tiltTolerance) terms.push(...tiltTerms(stations, modes, planes, tiltTolerance));
-  const targets = terms.map(({ target }) => target);
+  if (tiltTolerance) {
+    terms.push(...tiltTerms(stations, modes, planes, tiltTolerance).map((part) => termOf([part])));
+  }
+  const targets = terms.flatMap((term) => term.targets);
   assertFinite(dot(targets, targets), "The stations' deviations, in tolerances and squared,");
-  return condense(
-    terms.map(({ row }) => row),
-    targets,
-    modes.length,
-  );
+  return terms;
 }
+
+/** Σ of the squares of all terms, reduced by singular values to one row per mode: its cost no longer depends on the stations. */
+export function pullOf(terms: readonly MinimaxTerm[], size: number): Pull {
+  const rows = terms.flatMap((term) => term.rows);
+  const targets = terms.flatMap((term) => term.targets);
+  return condense(rows, targets, size);
+}
+
+interface Part {
+  readonly row: readonly number[];
+  readonly target: number;
+}
+
+const termOf = (parts: readonly Part[]): MinimaxTerm => ({
+  rows: parts.map(({ row }) => row),
+  targets: parts.map(({ target }) => target),
+});
 
 function tiltTerms(
   stations: readonly MoveStation[],
   modes: readonly Mode[],
   planes: readonly Plane[],
   tolerance: Tilt,
-): { row: number[]; target: number }[] {
+): Part[] {
   const ends = endStationsOf(stations);
   const slope = tiltOf(stations, noMove);
   if (!ends || !slope) return [];

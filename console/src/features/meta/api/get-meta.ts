@@ -5,7 +5,7 @@ import { readAnswer } from "../../../lib/call-api.ts";
 import { sendRequest } from "../../../lib/send-request.ts";
 
 /** What of it the console shows. */
-export const shownMeta = metaSchema.pick({ engineVersion: true, cautions: true });
+export const shownMeta = metaSchema.pick({ engineVersion: true, engineChangelog: true, cautions: true });
 
 /** What the service says of itself, its cautions among it. Anyone may read it. */
 export const metaQuery = queryOptions({

@@ -3,8 +3,12 @@ import { readCalculation } from "./read-calculation.ts";
 import type { CalculationKind } from "../../../config/paths.ts";
 import { AlignmentResult } from "./alignment-result.tsx";
 import { AxisDeviationResult } from "./axis-deviation-result.tsx";
-import { ShimMoveResult } from "./shim-move-result.tsx";
 import { BoreFitResult } from "./bore-fit-result.tsx";
+import { ColdTargetResult } from "./cold-target-result.tsx";
+import { ConfirmationResult } from "./confirmation-result.tsx";
+import { MeasurementPlanResult } from "./measurement-plan-result.tsx";
+import { RepeatabilityResult } from "./repeatability-result.tsx";
+import { ShimMoveResult } from "./shim-move-result.tsx";
 
 interface CalculationResultProps {
   kind: CalculationKind;
@@ -28,7 +32,9 @@ export function CalculationResult({ kind, request, response, chosen, onChoose }:
   }
   switch (read.kind) {
     case "bore-fit":
-      return <BoreFitResult request={read.request} fits={read.fits} chosen={chosen} onChoose={onChoose} />;
+      return (
+        <BoreFitResult request={read.request} fits={read.result.bores} chosen={chosen} onChoose={onChoose} />
+      );
     case "axis-deviation":
       return <AxisDeviationResult call={read.request} result={read.result} />;
     case "alignment":
@@ -37,5 +43,13 @@ export function CalculationResult({ kind, request, response, chosen, onChoose }:
       );
     case "shim-move":
       return <ShimMoveResult request={read.request} result={read.result} />;
+    case "cold-target":
+      return <ColdTargetResult request={read.request} result={read.result} />;
+    case "confirmation":
+      return <ConfirmationResult request={read.request} result={read.result} />;
+    case "measurement-plan":
+      return <MeasurementPlanResult request={read.request} plans={read.result.bores} />;
+    case "repeatability-study":
+      return <RepeatabilityResult request={read.request} result={read.result} />;
   }
 }

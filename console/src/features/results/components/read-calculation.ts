@@ -1,3 +1,4 @@
+import type { z } from "zod";
 import {
   alignmentRequest,
   alignmentResponse,
@@ -17,6 +18,30 @@ import {
   type BoreFitResult,
 } from "../../../../../shared/schemas/bore-fits.ts";
 import {
+  coldTargetRequest,
+  coldTargetResponse,
+  type ColdTargetRequest,
+  type ColdTargetResult,
+} from "../../../../../shared/schemas/cold-targets.ts";
+import type { ConfirmationResult } from "../../../../../shared/schemas/confirmation-answers.ts";
+import {
+  confirmationRequest,
+  confirmationResponse,
+  type ConfirmationRequest,
+} from "../../../../../shared/schemas/confirmations.ts";
+import {
+  measurementPlanRequest,
+  measurementPlanResponse,
+  type BoreMeasurementPlan,
+  type MeasurementPlanRequest,
+} from "../../../../../shared/schemas/measurement-plans.ts";
+import {
+  repeatabilityStudyRequest,
+  repeatabilityStudyResponse,
+  type RepeatabilityStudyRequest,
+  type RepeatabilityStudyResult,
+} from "../../../../../shared/schemas/repeatability-studies.ts";
+import {
   shimMoveRequest,
   shimMoveResponse,
   type ShimMoveRequest,
@@ -24,59 +49,57 @@ import {
 } from "../../../../../shared/schemas/shim-moves.ts";
 import type { CalculationKind } from "../../../config/paths.ts";
 
-export type ReadCalculation =
-  | { readonly kind: "bore-fit"; readonly request: BoreFitRequest; readonly fits: readonly BoreFitResult[] }
-  | {
-      readonly kind: "axis-deviation";
-      readonly request: AxisDeviationRequest;
-      readonly result: AxisDeviationResult;
-    }
-  | {
-      readonly kind: "shim-move";
-      readonly request: ShimMoveRequest;
-      readonly result: ShimMoveResult;
-    }
-  | {
-      readonly kind: "alignment";
-      readonly request: AlignmentRequest;
-      readonly result: AlignmentResult;
-    };
+/** A call of a kind and what of its answer is drawn. */
+interface Read<Kind extends CalculationKind, Request, Result> {
+  readonly kind: Kind;
+  readonly request: Request;
+  readonly result: Result;
+}
 
-/** A call and its answer in the forms of this version; null where the forms are of another version, or are not drawn. */
+export type ReadCalculation =
+  | Read<"bore-fit", BoreFitRequest, { readonly bores: readonly BoreFitResult[] }>
+  | Read<"axis-deviation", AxisDeviationRequest, AxisDeviationResult>
+  | Read<"shim-move", ShimMoveRequest, ShimMoveResult>
+  | Read<"alignment", AlignmentRequest, AlignmentResult>
+  | Read<"cold-target", ColdTargetRequest, ColdTargetResult>
+  | Read<"confirmation", ConfirmationRequest, ConfirmationResult>
+  | Read<"repeatability-study", RepeatabilityStudyRequest, RepeatabilityStudyResult>
+  | Read<"measurement-plan", MeasurementPlanRequest, { readonly bores: readonly BoreMeasurementPlan[] }>;
+
+/** A call and its answer in the forms of this version; null where the forms are of another version. */
 export function readCalculation(
   kind: CalculationKind,
   request: unknown,
   response: unknown,
 ): ReadCalculation | null {
+  const read = <Sent extends z.ZodType, Answered extends z.ZodType<{ result: unknown }>>(
+    sent: Sent,
+    answered: Answered,
+  ) => {
+    const [call, answer] = [sent.safeParse(request), answered.safeParse(response)];
+    if (!call.success || !answer.success) return null;
+    return { request: call.data, result: answer.data.result as z.infer<Answered>["result"] };
+  };
   switch (kind) {
-    case "bore-fit": {
-      const [sent, answered] = [boreFitRequest.safeParse(request), boreFitResponse.safeParse(response)];
-      return sent.success && answered.success
-        ? { kind, request: sent.data, fits: answered.data.result.bores }
-        : null;
-    }
-    case "axis-deviation": {
-      const [sent, answered] = [
-        axisDeviationRequest.safeParse(request),
-        axisDeviationResponse.safeParse(response),
-      ];
-      return sent.success && answered.success
-        ? { kind, request: sent.data, result: answered.data.result }
-        : null;
-    }
-    case "alignment": {
-      const [sent, answered] = [alignmentRequest.safeParse(request), alignmentResponse.safeParse(response)];
-      return sent.success && answered.success
-        ? { kind, request: sent.data, result: answered.data.result }
-        : null;
-    }
-    case "shim-move": {
-      const [sent, answered] = [shimMoveRequest.safeParse(request), shimMoveResponse.safeParse(response)];
-      return sent.success && answered.success
-        ? { kind, request: sent.data, result: answered.data.result }
-        : null;
-    }
-    default:
-      return null;
+    case "bore-fit":
+      return of(kind, read(boreFitRequest, boreFitResponse));
+    case "axis-deviation":
+      return of(kind, read(axisDeviationRequest, axisDeviationResponse));
+    case "alignment":
+      return of(kind, read(alignmentRequest, alignmentResponse));
+    case "shim-move":
+      return of(kind, read(shimMoveRequest, shimMoveResponse));
+    case "cold-target":
+      return of(kind, read(coldTargetRequest, coldTargetResponse));
+    case "confirmation":
+      return of(kind, read(confirmationRequest, confirmationResponse));
+    case "repeatability-study":
+      return of(kind, read(repeatabilityStudyRequest, repeatabilityStudyResponse));
+    case "measurement-plan":
+      return of(kind, read(measurementPlanRequest, measurementPlanResponse));
   }
+}
+
+function of<Kind extends CalculationKind, Both extends object>(kind: Kind, both: Both | null) {
+  return both === null ? null : { kind, ...both };
 }

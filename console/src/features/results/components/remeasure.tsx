@@ -1,9 +1,17 @@
+interface RemeasureProps {
+  stations: readonly string[];
+  title?: string;
+}
+
 /** What to measure after the last move, in order: the axis first, then whatever moved. */
-export function Remeasure({ stations }: { stations: readonly string[] }) {
+export function Remeasure({
+  stations,
+  title = "Measure again after the last move, in this order",
+}: RemeasureProps) {
   if (stations.length === 0) return null;
   return (
     <section aria-label="Measure again" className="keep-together">
-      <h3 className="font-semibold">Measure again after the last move, in this order</h3>
+      <h3 className="font-semibold">{title}</h3>
       <ol className="mt-2 flex flex-wrap gap-x-6 gap-y-1">
         {stations.map((station, index) => (
           <li key={station} className="whitespace-nowrap">

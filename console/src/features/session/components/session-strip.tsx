@@ -1,9 +1,10 @@
 import { useMutation, useQueryClient } from "@tanstack/react-query";
-import { useNavigate } from "react-router-dom";
+import { Link, useLocation, useNavigate } from "react-router-dom";
 import { Failure } from "../../../components/ui/failure.tsx";
 import { paths } from "../../../config/paths.ts";
-import { useMember } from "../../../lib/use-session.ts";
+import { useMember, useSession } from "../../../lib/use-session.ts";
 import { signOut } from "../api/sign-out.ts";
+import { signInAddress } from "./require-session.tsx";
 
 /** Who is signed in, for whom, as what; and the way out. */
 export function SessionStrip() {
@@ -17,7 +18,7 @@ export function SessionStrip() {
       await navigate(paths.signIn);
     },
   });
-  if (!member) return null;
+  if (!member) return <WayIn />;
   return (
     <div className="flex min-w-0 flex-wrap items-center gap-x-4 gap-y-1">
       <p className="min-w-0">
@@ -36,5 +37,17 @@ export function SessionStrip() {
       </button>
       {mutation.isError && <Failure error={mutation.error} what="You are still signed in." />}
     </div>
+  );
+}
+
+/** To the sign-in from a page that can be read without it, and back. */
+function WayIn() {
+  const session = useSession();
+  const { pathname } = useLocation();
+  if (session.status !== "closed" || !pathname.startsWith(paths.guide)) return null;
+  return (
+    <Link className="link" to={signInAddress(pathname)}>
+      Sign in
+    </Link>
   );
 }

@@ -1,0 +1,280 @@
+import { chooseForTasks, offerWithin, type TasksChoice } from "./choose-for-tasks.ts";
+import { equalCost } from "./choice-frontier.ts";
+import type { ShimOffer } from "./choose-shims.ts";
+import type { MoveProblem } from "./move-problem.ts";
+import { pickColumns } from "./pick-columns.ts";
+import type { SearchBudget } from "./search-budget.ts";
+import { piecesOf } from "./shim-changes.ts";
+import { shareByPrices, type PricedUnit } from "./share-by-prices.ts";
+import type { ShimSupply } from "./shim-supply.ts";
+import type { ShimChoice, ShimTask } from "./shim-task.ts";
+
+/** How the shims of a call were chosen, and how sure it is that no better choice was passed over. */
+export interface ChoiceSearch {
+  /**
+   * `alone`: each component by itself, and the stock is enough for all. `enumeration`, `mixed_integer_program`: all
+   * components together, for the stock that they share. `in_turn`: each with what those before leave.
+   */
+  readonly method: "alone" | "enumeration" | "mixed_integer_program" | "in_turn";
+  readonly proved: boolean;
+  /** How far the cost may lie above the least at most; null when that is not known. */
+  readonly betterBy: number | null;
+}
+
+/** The tasks of one component, in the order in which components are moved. */
+export interface TasksOf {
+  readonly index: number;
+  readonly tasks: readonly ShimTask[];
+}
+
+type Choices = ReadonlyMap<number, readonly ShimChoice[] | null>;
+
+export interface SharedChoice {
+  readonly byComponent: Choices;
+  readonly search: ChoiceSearch;
+}
+
+const roundsMost = 30;
+
+/** Chooses for a component with all of the stock that could be there when its turn comes. */
+export function chooseAlone(
+  supply: ShimSupply,
+  before: readonly TasksOf[],
+  { index, tasks }: TasksOf,
+  budget: SearchBudget,
+): TasksChoice | null {
+  return chooseForTasks(
+    tasks.map((task) => ({ ...task, supply: couldHave(supply, before, { index, tasks }, task) })),
+    budget,
+  );
+}
+
+/** Lines of which the choices of components, made in this order, take more than there is at some point. */
+export function overdrawnBy(
+  supply: ShimSupply,
+  inOrder: readonly (readonly ShimChoice[] | null)[],
+): number[] {
+  const over = new Set<number>();
+  const net = supply.lines.map(() => 0);
+  for (const choices of inOrder) {
+    for (const choice of choices ?? []) {
+      for (const line of net.keys()) net[line] = (net[line] ?? 0) + (choice.net[line] ?? 0);
+    }
+    for (const line of supply.overdrawn(net)) over.add(line);
+  }
+  return [...over].sort((a, b) => a - b);
+}
+
+/** Chooses for a component with what those before it leave. */
+export function chooseFromRest(
+  supply: ShimSupply,
+  before: readonly (readonly ShimChoice[] | null)[],
+  { tasks }: TasksOf,
+  budget: SearchBudget,
+): readonly ShimChoice[] | null {
+  const rest = [...supply.available];
+  const take = ({ net }: ShimChoice) => {
+    for (const line of rest.keys()) rest[line] = (rest[line] ?? 0) - (net[line] ?? 0);
+  };
+  for (const choices of before) choices?.forEach(take);
+  const made: ShimChoice[] = [];
+  for (const task of tasks) {
+    const own = chooseForTasks([{ ...task, supply: task.supply.with({ available: [...rest] }) }], budget);
+    const [choice] = own?.choices ?? [];
+    if (!choice) return null;
+    take(choice);
+    made.push(choice);
+  }
+  return made;
+}
+
+/**
+ * One choice for each component so that the stock they share is never overdrawn: of least cost together (the sum; or the
+ * largest of all, then the sum), then fewest pieces, least total change, stock order. Every unit offers all choices up to
+ * so much above its own best; the offers widen until the best pick from them (pick-columns.ts) lies within, for then no
+ * choice that was not offered belongs to a better one. Lines are counted from where a pick overdraws them. Components
+ * are not linked: what one does changes nothing for the stations of another.
+ * @throws ComputeError too_many_choices, not_converged
+ */
+export function shareStock(
+  { aim }: Pick<MoveProblem, "aim">,
+  supply: ShimSupply,
+  components: readonly TasksOf[],
+  alone: readonly (TasksChoice | null)[],
+  inTurn: readonly (readonly ShimChoice[] | null)[],
+  budget: SearchBudget,
+): SharedChoice {
+  const serving = components.filter((_, k) => alone[k]);
+  const units = serving.flatMap((each) => each.tasks.map((task) => ({ of: each, task })));
+  let short = overdrawnBy(
+    supply,
+    alone.map((each) => each?.choices ?? null),
+  );
+  const turn: SharedChoice = {
+    byComponent: new Map(components.map(({ index }, k) => [index, inTurn[k] ?? null])),
+    search: { method: "in_turn", proved: false, betterBy: null },
+  };
+  if (aim === "least_squares" && inTurn.every((choices, k) => choices !== null || alone[k] === null)) {
+    return priced(supply, components, alone, inTurn, budget);
+  }
+  const least = units.map(() => 0);
+  let dearer = 0;
+  for (let round = 0; round < roundsMost; round++) {
+    const offers: ShimOffer[] = [];
+    const done = budget.lasts(
+      () => {
+        for (const [u, { of, task }] of units.entries()) {
+          const counted = couldHave(supply, components.slice(0, components.indexOf(of)), of, task).with({
+            counted: short,
+          });
+          const top = Math.max(...least) + dearer;
+          const more = aim === "minimax" ? Math.max(0, top - (least[u] ?? 0)) : dearer;
+          budget.startComponent();
+          const offer = offerWithin({ ...task, supply: counted }, 0, budget, more);
+          offers.push(offer);
+        }
+      },
+      () => true,
+    );
+    if (!done || offers.some(({ proved }) => !proved)) return withGap(turn, units, least, aim);
+    for (const [u, { choices }] of offers.entries()) least[u] = Math.min(...choices.map(({ cost }) => cost));
+    const picked = pickColumns(
+      units.map(({ of }, u) => ({
+        component: of.index,
+        columns: (offers[u]?.choices ?? []).map((choice) => ({
+          ...choice,
+          net: short.map((line) => choice.net[line] ?? 0),
+        })),
+      })),
+      short.map((line) => supply.available[line] ?? 0),
+      aim,
+    );
+    const chosen = picked && units.map((_, u) => offers[u]?.choices[picked.picks[u] ?? -1]);
+    if (!picked || !chosen) {
+      const known = turnExcess(turn, units, least, aim) + firstWidening;
+      const wider = Math.max(firstWidening, 8 * dearer);
+      dearer = dearer < known ? Math.min(wider, known) : wider;
+      continue;
+    }
+    const costs = chosen.map((choice) => choice?.cost ?? 0);
+    const excess = excessOf(costs, least, aim);
+    if (excess > dearer + equalCost(dearer)) {
+      dearer = excess;
+      continue;
+    }
+    const byComponent = new Map<number, readonly ShimChoice[] | null>(
+      components.map(({ index }) => [
+        index,
+        alone[components.findIndex((each) => each.index === index)]
+          ? units.flatMap(({ of }, u) => (of.index === index ? (chosen[u] ?? []) : []))
+          : null,
+      ]),
+    );
+    const over = overdrawnBy(
+      supply,
+      components.map(({ index }) => byComponent.get(index) ?? null),
+    );
+    if (over.length > 0) {
+      short = [...new Set([...short, ...over])].sort((a, b) => a - b);
+      continue;
+    }
+    const { method, proved, bound } = picked;
+    const sum = costs.reduce((total, cost) => total + cost, 0);
+    return { byComponent, search: { method, proved, betterBy: proved ? 0 : Math.max(0, sum - bound) } };
+  }
+  return withGap(turn, units, least, aim);
+}
+
+/** For sums of costs (share-by-prices.ts): as many lines counted as it takes for the choice to keep them all. */
+function priced(
+  supply: ShimSupply,
+  components: readonly TasksOf[],
+  alone: readonly (TasksChoice | null)[],
+  inTurn: readonly (readonly ShimChoice[] | null)[],
+  budget: SearchBudget,
+): SharedChoice {
+  let short = overdrawnBy(
+    supply,
+    alone.map((each) => each?.choices ?? null),
+  );
+  for (;;) {
+    const units = components.flatMap((own, k) =>
+      (alone[k] ? own.tasks : []).map((task, t): PricedUnit => {
+        const could = couldHave(supply, components.slice(0, k), own, task).with({ counted: short });
+        const known = [alone[k]?.choices[t], inTurn[k]?.[t]].filter((choice) => choice !== undefined);
+        return { component: own.index, task: { ...task, supply: could }, known };
+      }),
+    );
+    const quantities = short.map((line) => supply.available[line] ?? 0);
+    const best = shareByPrices(units, short, quantities, budget);
+    const chosen = best?.chosen ?? [];
+    const byComponent = new Map(
+      components.map(({ index }, k) => [
+        index,
+        best && alone[k] ? chosen.filter((_, u) => units[u]?.component === index) : (inTurn[k] ?? null),
+      ]),
+    );
+    const over = overdrawnBy(
+      supply,
+      components.map(({ index }) => byComponent.get(index) ?? null),
+    );
+    if (over.length === 0) {
+      const { method, proved, betterBy } = best ?? { method: "in_turn", proved: false, betterBy: null };
+      return { byComponent, search: { method, proved, betterBy } };
+    }
+    short = [...new Set([...short, ...over])].sort((a, b) => a - b);
+  }
+}
+
+/** How much of a least cost the first offers lie above it. */
+const firstWidening = 1e-3;
+
+type UnitTask = { readonly of: TasksOf; readonly task: ShimTask };
+
+function excessOf(costs: readonly number[], least: readonly number[], aim: MoveProblem["aim"]): number {
+  if (aim === "minimax") return Math.max(0, ...costs) - Math.max(0, ...least);
+  return costs.reduce((sum, cost, u) => sum + cost - (least[u] ?? 0), 0);
+}
+
+/** What choosing in turn costs above the least of each unit. */
+function turnExcess(
+  { byComponent }: SharedChoice,
+  units: readonly UnitTask[],
+  least: readonly number[],
+  aim: MoveProblem["aim"],
+): number {
+  const costs = units.map(({ of, task }) => {
+    const choice = byComponent.get(of.index)?.[of.tasks.indexOf(task)];
+    return choice?.cost ?? Infinity;
+  });
+  return excessOf(costs, least, aim);
+}
+
+function withGap(
+  turn: SharedChoice,
+  units: readonly UnitTask[],
+  least: readonly number[],
+  aim: MoveProblem["aim"],
+): SharedChoice {
+  const gap = turnExcess(turn, units, least, aim);
+  return {
+    ...turn,
+    search: { method: "in_turn", proved: false, betterBy: Number.isFinite(gap) ? gap : null },
+  };
+}
+
+/** The stock that could be there for a task at best: all of it, and what is given back before its turn or beside it. */
+function couldHave(supply: ShimSupply, before: readonly TasksOf[], own: TasksOf, task: ShimTask): ShimSupply {
+  if (!supply.reuse) return supply;
+  const others = [...before.flatMap(({ tasks }) => tasks), ...own.tasks.filter((each) => each !== task)];
+  const available = [...supply.available];
+  for (const { loaded, following } of others) {
+    for (const { place } of [...loaded, ...following]) {
+      for (const mm of piecesOf(place.stack)) {
+        const line = supply.lineOf(mm);
+        if (line >= 0) available[line] = (available[line] ?? 0) + 1;
+      }
+    }
+  }
+  return supply.with({ available });
+}
