@@ -141,32 +141,44 @@ describe("a repeatability study", () => {
 });
 
 describe("a measurement plan", () => {
-  const plans = "Readings and what they tell of the centre";
+  const plans = "Whether the readings do";
+  const predictions = "What readings tell of the centre";
 
   it("says whether the readings do, where to add which, and whether fewer could do", () => {
     show("measurement-plan", callNamed("measurement-plan", "lower-halves-read"));
-    expect(rowOf(plans, "brg-1").slice(0, 3)).toEqual(["brg-1", "enough when added", "radial 0.01250"]);
-    expect(rowOf("How few readings could do", "brg-1").slice(1, 4)).toEqual([
+    expect(rowOf(plans, "brg-1")).toEqual([
+      "brg-1",
+      "enough when added",
+      "radial 0.01250",
+      "2",
       "2",
       "continuous relaxation",
       "is the least",
+      "8",
     ]);
-    expect(rowOf("How few readings could do", "cas-2")[3]).toBe("may not be the least");
-    const added = within(screen.getByRole("table", { name: "Readings to add, seen downstream" }));
+    expect(rowOf(plans, "cas-2")[6]).toBe("may not be the least");
+    const added = within(screen.getByRole("table", { name: "Readings to add" }));
     expect(added.getAllByRole("row", { name: /^brg-1\b/ }).map(({ textContent }) => textContent)).toEqual([
       "brg-115.01",
       "brg-1345.01",
     ]);
+    const told = within(screen.getByRole("table", { name: predictions }));
+    expect(
+      told.getAllByRole("row", { name: /^brg-1\b/ }).map(({ children }) => children[6]?.textContent),
+    ).toEqual(["179", "88", "63"]);
   });
 
   it("says what is out of reach, and what h and v are wanted apart", () => {
     show("measurement-plan", callNamed("measurement-plan", "rotating-target-and-short-arc"));
-    expect(rowOf(plans, "noz-3")[1]).toBe("out of reach");
-    expect(rowOf("How few readings could do", "noz-3").slice(1, 4)).toEqual(["–", "–", "none found"]);
+    expect(rowOf(plans, "noz-3").slice(1, 2)).toEqual(["out of reach"]);
+    expect(rowOf(plans, "noz-3").slice(4, 7)).toEqual(["–", "–", "none found"]);
     cleanup();
     show("measurement-plan", callNamed("measurement-plan", "blocked-arcs-in-mil"));
     expect(rowOf(plans, "shr-1")[2]).toMatch(/^h 0\.5\d*, v 0\.8\d*$/);
-    expect(rowOf(plans, "shr-1")[3]).toBe("–");
+    const [read] = within(screen.getByRole("table", { name: predictions })).getAllByRole("row", {
+      name: /^shr-1\b/,
+    });
+    expect(read?.textContent).toBe("shr-1those read––––––");
   });
 });
 

@@ -1,13 +1,13 @@
-import { chooseForTasks, offerWithin, type TasksChoice } from "./choose-for-tasks.ts";
+import { offerWithin, type TasksChoice } from "./choose-for-tasks.ts";
 import { equalCost } from "./choice-frontier.ts";
 import type { ShimOffer } from "./choose-shims.ts";
 import type { MoveProblem } from "./move-problem.ts";
 import { pickColumns } from "./pick-columns.ts";
 import type { SearchBudget } from "./search-budget.ts";
-import { piecesOf } from "./shim-changes.ts";
 import { shareByPrices, type PricedUnit } from "./share-by-prices.ts";
 import type { ShimSupply } from "./shim-supply.ts";
 import type { ShimChoice, ShimTask } from "./shim-task.ts";
+import { couldHave, overdrawnBy, type TasksOf } from "./take-from-stock.ts";
 
 /** How the shims of a call were chosen, and how sure it is that no better choice was passed over. */
 export interface ChoiceSearch {
@@ -21,12 +21,6 @@ export interface ChoiceSearch {
   readonly betterBy: number | null;
 }
 
-/** The tasks of one component, in the order in which components are moved. */
-export interface TasksOf {
-  readonly index: number;
-  readonly tasks: readonly ShimTask[];
-}
-
 type Choices = ReadonlyMap<number, readonly ShimChoice[] | null>;
 
 export interface SharedChoice {
@@ -35,58 +29,6 @@ export interface SharedChoice {
 }
 
 const roundsMost = 30;
-
-/** Chooses for a component with all of the stock that could be there when its turn comes. */
-export function chooseAlone(
-  supply: ShimSupply,
-  before: readonly TasksOf[],
-  { index, tasks }: TasksOf,
-  budget: SearchBudget,
-): TasksChoice | null {
-  return chooseForTasks(
-    tasks.map((task) => ({ ...task, supply: couldHave(supply, before, { index, tasks }, task) })),
-    budget,
-  );
-}
-
-/** Lines of which the choices of components, made in this order, take more than there is at some point. */
-export function overdrawnBy(
-  supply: ShimSupply,
-  inOrder: readonly (readonly ShimChoice[] | null)[],
-): number[] {
-  const over = new Set<number>();
-  const net = supply.lines.map(() => 0);
-  for (const choices of inOrder) {
-    for (const choice of choices ?? []) {
-      for (const line of net.keys()) net[line] = (net[line] ?? 0) + (choice.net[line] ?? 0);
-    }
-    for (const line of supply.overdrawn(net)) over.add(line);
-  }
-  return [...over].sort((a, b) => a - b);
-}
-
-/** Chooses for a component with what those before it leave. */
-export function chooseFromRest(
-  supply: ShimSupply,
-  before: readonly (readonly ShimChoice[] | null)[],
-  { tasks }: TasksOf,
-  budget: SearchBudget,
-): readonly ShimChoice[] | null {
-  const rest = [...supply.available];
-  const take = ({ net }: ShimChoice) => {
-    for (const line of rest.keys()) rest[line] = (rest[line] ?? 0) - (net[line] ?? 0);
-  };
-  for (const choices of before) choices?.forEach(take);
-  const made: ShimChoice[] = [];
-  for (const task of tasks) {
-    const own = chooseForTasks([{ ...task, supply: task.supply.with({ available: [...rest] }) }], budget);
-    const [choice] = own?.choices ?? [];
-    if (!choice) return null;
-    take(choice);
-    made.push(choice);
-  }
-  return made;
-}
 
 /**
  * One choice for each component so that the stock they share is never overdrawn: of least cost together (the sum; or the
@@ -261,20 +203,4 @@ function withGap(
     ...turn,
     search: { method: "in_turn", proved: false, betterBy: Number.isFinite(gap) ? gap : null },
   };
-}
-
-/** The stock that could be there for a task at best: all of it, and what is given back before its turn or beside it. */
-function couldHave(supply: ShimSupply, before: readonly TasksOf[], own: TasksOf, task: ShimTask): ShimSupply {
-  if (!supply.reuse) return supply;
-  const others = [...before.flatMap(({ tasks }) => tasks), ...own.tasks.filter((each) => each !== task)];
-  const available = [...supply.available];
-  for (const { loaded, following } of others) {
-    for (const { place } of [...loaded, ...following]) {
-      for (const mm of piecesOf(place.stack)) {
-        const line = supply.lineOf(mm);
-        if (line >= 0) available[line] = (available[line] ?? 0) + 1;
-      }
-    }
-  }
-  return supply.with({ available });
 }

@@ -1,17 +1,11 @@
 import type { MoveProblem } from "./move-problem.ts";
 import { SearchBudget } from "./search-budget.ts";
-import {
-  chooseAlone,
-  chooseFromRest,
-  overdrawnBy,
-  shareStock,
-  type ChoiceSearch,
-  type TasksOf,
-} from "./share-stock.ts";
+import { shareStock, type ChoiceSearch } from "./share-stock.ts";
 import type { TasksChoice } from "./choose-for-tasks.ts";
 import { supplyOf, type ShimSupply } from "./shim-supply.ts";
 import type { ShimChoice, ShimTask } from "./shim-task.ts";
 import type { ComponentShims, SolvedComponent } from "./solve-component.ts";
+import { chooseAlone, chooseFromRest, overdrawnBy, type TasksOf } from "./take-from-stock.ts";
 
 /** Solves all components in order, each with the shims told for it. */
 export type SolvePass = (shimsOf: (index: number) => ComponentShims | null) => SolvedComponent[];

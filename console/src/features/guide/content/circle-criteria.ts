@@ -55,7 +55,7 @@ export const circleCriteria: readonly Method[] = [
     ],
     formulas: ["minimise max |p_i − c|"],
     where: [],
-    sources: [iso12181, "B. Gärtner, K. Fischer, The smallest enclosing ball of balls, SoCG 2003"],
+    sources: [iso12181, "K. Fischer, B. Gärtner, The smallest enclosing ball of balls, SoCG 2003"],
   },
   {
     id: "ellipse",

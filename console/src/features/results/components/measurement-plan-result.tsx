@@ -1,7 +1,7 @@
 import {
   tabulateAdded,
-  tabulateLeast,
   tabulatePlans,
+  tabulatePredictions,
 } from "../../../../../shared/figures/measurement-plan/tabulate-plans.ts";
 import type {
   BoreMeasurementPlan,
@@ -21,7 +21,7 @@ export function MeasurementPlanResult({ request, plans }: MeasurementPlanResultP
   return (
     <div className="sheet-stack">
       <NumberTable table={tabulatePlans(plans, request.units)} />
-      <Tables tables={[tabulateAdded(plans), tabulateLeast(plans)]} />
+      <Tables tables={[tabulateAdded(plans), tabulatePredictions(plans, request.units)]} />
       <Warnings
         warnings={plans.flatMap(({ id, warnings }) => warnings.map((warning) => ({ where: id, ...warning })))}
       />
