@@ -75,6 +75,13 @@ describe("the methods of the guide", () => {
     expect(idle).toEqual([]);
   });
 
+  it("leave the marks of formulas out of their sentences", () => {
+    const marked = methods.flatMap(({ id, says }) =>
+      says.filter((line) => /[_^]/.test(line.replaceAll(/`[^`]*`/g, ""))).map((line) => `${id}: ${line}`),
+    );
+    expect(marked).toEqual([]);
+  });
+
   it("name only codes that the service knows", () => {
     const named = methods.flatMap(({ says }) =>
       says.flatMap((line) => [...line.matchAll(/`([a-z]+(?:_[a-z]+)+)`/g)].map(([, code = ""]) => code)),

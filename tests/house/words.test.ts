@@ -50,7 +50,11 @@ describeRule("no path of one machine", {
     sample(joined("cd /ho", "me/mason/borewright"), "README.md"),
     sample(joined("DATA_DIR=/tm", "p/data"), "README.md"),
   ],
-  spared: [sample('import a from "./work/a.ts";'), sample('app.get("/v1/bore-fits")'), sample("/dev/null")],
+  spared: [
+    sample(joined('import a from "./wo', 'rk/a.ts";')),
+    sample('app.get("/v1/bore-fits")'),
+    sample("/dev/null"),
+  ],
 });
 
 /** The lock file must install from whichever registry the owner of the machine uses. */

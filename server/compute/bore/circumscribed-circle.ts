@@ -95,10 +95,10 @@ function centresThrough(problem: CentreProblem, set: readonly number[]): Place[]
   const mixed = alpha.x * beta.x + alpha.y * beta.y;
   const discriminant = mixed * mixed + (1 - beta.x * beta.x - beta.y * beta.y) * square;
   if (!(discriminant >= 0)) return [];
-  return [1, -1]
-    .map((sign) => square / (sign * Math.sqrt(discriminant) - mixed))
-    .filter((r) => r > 0 && Number.isFinite(r) && r + one.added >= 0 && r + other.added >= 0)
-    .map((r) => ({ x: origin.x + alpha.x + beta.x * r, y: origin.y + alpha.y + beta.y * r }));
+  // Of the two radii the one that stays with the circumcircle when the taper vanishes: the other has no point inside.
+  const r = square / (Math.sqrt(discriminant) - mixed);
+  if (!(r > 0 && r + one.added >= 0 && r + other.added >= 0 && Number.isFinite(r))) return [];
+  return [{ x: origin.x + alpha.x + beta.x * r, y: origin.y + alpha.y + beta.y * r }];
 }
 
 /** A point seen from another, and how much more its taper adds. */

@@ -145,6 +145,31 @@ describe("method ellipse", () => {
     near(objective * scaleMm * scaleMm, 1.37330553977792, 1e-12);
   });
 
+  it("finds a long oval, and of two optima the better", () => {
+    const long = { ...joint, major: 500, minor: 120 };
+    const fit = fitByCriterion(ovalInput(long, clockAngles(15)), "ellipse");
+    near(fit.ellipse!.ovalityMm, 380, 1e-8);
+    // Read so badly that the way from the round circle ends in a worse ellipse than the way from the second moments.
+    const random = seededRandom(703);
+    const count = 5 + Math.floor(20 * random.uniform());
+    const aspect = 1 + 4 * random.uniform();
+    const noise = 10 ** (-3 + 2.5 * random.uniform());
+    const overRad = ((240 + 120 * random.uniform()) * Math.PI) / 180;
+    const pairs = Array.from({ length: count }, (_, i): Pair => {
+      const t = 1 + (overRad * i) / count;
+      return [aspect * Math.cos(t) + noise * random.normal(), Math.sin(t) + noise * random.normal()];
+    });
+    const { squares } = ellipseByAngles(
+      pairs,
+      [0, 0, aspect, 1, 0],
+      pairs.map(() => 1),
+    );
+    const readings = { hMm: pairs.map(([h]) => h), vMm: pairs.map(([, v]) => v), zMm: null, uMm: null };
+    const frame = localFrameOf(readings, null);
+    const { objective } = fitEllipse(frame, null, "points");
+    near(objective * frame.scaleMm ** 2, squares, 1e-9);
+  });
+
   it("has as covariance the scatter of the bore read again and again", () => {
     const draws = 2000;
     const within = 4 * Math.sqrt(2 / draws);

@@ -273,6 +273,20 @@ describe("fitByCriterion", () => {
     expect(JSON.stringify(input)).toBe(before);
   });
 
+  it.each([-1, 1])(
+    "finds the better of two holes that differ by a hair, whichever it is: side %s",
+    (side) => {
+      for (const hair of [1e-3, 1e-6, 1e-9]) {
+        const points = [-1, 1].flatMap((place) =>
+          clockAngles(24).map((t) => onRing({ hMm: 12 * place, vMm: 0 }, 10, t, place === side ? hair : 0)),
+        );
+        const fit = fitByCriterion(pointsInput(points), "maximum_inscribed");
+        near(fit.centre.hMm, 12 * side, 1e-9);
+        near(fit.diameterMm!, 20 + 2 * hair, 1e-12);
+      }
+    },
+  );
+
   it("finds the same zone of points sent twice", () => {
     const pairs = ringOf(15, 0, 360, wave).map(({ hMm, vMm }): Pair => [hMm, vMm]);
     for (const method of limiting) {

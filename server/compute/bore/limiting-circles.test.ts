@@ -38,6 +38,41 @@ describe("minimum_circumscribed", () => {
   });
 });
 
+describe("minimum_circumscribed of all but regular rings", () => {
+  it("is exact where a third point moves the centre and the radius by less than rounding", () => {
+    for (let seed = 1; seed <= 400; seed++) {
+      const random = seededRandom(seed);
+      const noise = 10 ** (-2 - 12 * random.uniform());
+      const count = 3 + (seed % 8);
+      const points = Array.from({ length: count }, (_, i): Pair => {
+        const turn = seed % 2 ? (2 * Math.PI * i) / count : (Math.PI / 4) * Math.floor(8 * random.uniform());
+        const radius = 100 * (1 + noise * random.normal());
+        return [radius * Math.cos(turn), radius * Math.sin(turn)];
+      });
+      const fit = fitPairs(points, "minimum_circumscribed");
+      if (typeof fit === "string") {
+        expect(degenerate).toContain(fit);
+        continue;
+      }
+      const wanted = circumscribedByTriples(points);
+      expect(Math.abs(fit.diameterMm! / 2 - wanted)).toBeLessThan(1e-12 * wanted);
+    }
+  });
+
+  it("keeps the two ends of a diameter when a third point carries the circle as well but for rounding", () => {
+    const points: Pair[] = [
+      [100.0000012908687, 0],
+      [0, 100.00000027399099],
+      [-99.99999917558553, 0],
+      [0, -100.00000033458265],
+    ];
+    const fit = fitPairs(points, "minimum_circumscribed");
+    if (typeof fit === "string") throw new Error(fit);
+    expect(Math.abs(fit.diameterMm! / 2 - circumscribedByTriples(points))).toBeLessThan(1e-12);
+    expect(fit.contacts).toEqual(expect.arrayContaining([0, 2]));
+  });
+});
+
 describe("maximum_inscribed", () => {
   it.each(pointKinds)("is the largest of the circles through all triples: %s", (kind) => {
     let answered = 0;

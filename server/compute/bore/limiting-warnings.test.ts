@@ -42,6 +42,8 @@ describe("a limiting circle warns", () => {
     expect(codes(holes, "maximum_inscribed", u(0.003))).not.toContain("another_centre_as_good");
     expect(codes(holes, "maximum_inscribed")).not.toContain("another_centre_as_good");
     near(fitByCriterion(pointsInput(holes), "maximum_inscribed").centre.hMm, 12, 1e-9);
+    // An uncertainty so large that both are one place.
+    expect(codes(holes, "maximum_inscribed", u(25))).not.toContain("another_centre_as_good");
     // To the last digit, without any uncertainty: a rhombus.
     const rhombus = [wallPoint(1.1, 0), wallPoint(-1.1, 0), wallPoint(0, 0.9), wallPoint(0, -0.9)];
     expect(codes(rhombus, "maximum_inscribed")).toContain("another_centre_as_good");

@@ -7,7 +7,7 @@ export const moveSolving: readonly Method[] = [
     title: "Rigid move",
     asked: "components",
     says: [
-      "A component is rigid: it shifts and tilts in each plane. Supports all at one z give no tilt, a direction blocked at one z only lets it turn about that z. After the move station i has d_i + m(z_i).",
+      "A component is rigid: it shifts and tilts in each plane. Supports all at one z give no tilt, a direction blocked at one z only lets it turn about that z. After the move each station has its deviation plus m at its z.",
       "Of moves that serve the stations alike, the one that moves the supports least is taken.",
     ],
     formulas: ["m(z) = m_0 + t · (z − z_m)", "minimise Σ w_i · (d_i + m(z_i))²,   w_i = 1/T_i²"],
@@ -20,6 +20,17 @@ export const moveSolving: readonly Method[] = [
       ],
     ],
     sources: [ownRule],
+  },
+  {
+    id: "minimax",
+    title: "The largest deviation instead of the sum",
+    asked: "objective: minimax",
+    says: [
+      "The largest share of a tolerance is made least: by the radial deviation where the tolerance is round, by h and v apart where it is stated in planes. Round tolerances are approached by tangents until the rounds converge as Newton's method does; each round is a quadratic program solved exactly. The end is proved by duality: with the multipliers as weights no move has a smaller largest share.",
+    ],
+    formulas: ["minimise max |d_i + m(z_i)| / T_i"],
+    where: [],
+    sources: ["J. Nocedal and S. Wright, Numerical Optimization, 2nd ed. 2006, chapter 18, from memory"],
   },
   {
     id: "limits",

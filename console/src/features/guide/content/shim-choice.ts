@@ -31,14 +31,26 @@ export const shimChoice: readonly Method[] = [
   {
     id: "choosing",
     title: "Choosing shims together",
-    asked: "shims: {cutToSize: {increment}}",
+    asked: "shims: {cutToSize: {increment}, stock}",
     says: [
       "Shims for all stacks of a component are chosen together. Every choice that could be better than the best found is visited or excluded: the search goes through an ellipsoid about the best move imaginable, widened until it reaches to the best found, and it is bounded by a budget with a code of its own, `too_many_choices`.",
-      "Costs within 1e-9·(1 + the smaller) are equal; then fewest pieces handled, then least total change. A pack whose pieces are not known is one piece: kept and added to, or taken out whole. Twin feet and keys are changed alike. Without `shims` every change is the ideal one, and the answer says `shims_not_chosen`.",
+      "Costs within 1e-9·(1 + the smaller) are equal; then fewest pieces handled, then least total change, then stock order. A pack whose pieces are not known is one piece: kept and added to, or taken out whole. Twin feet and keys are changed alike. Without `shims` every change is the ideal one, and the answer says `shims_not_chosen`.",
     ],
     formulas: ["minimise Σ w_i · (d_i + m(z_i))² over the choices of shims"],
     where: [["m", "the realised move of a choice"]],
     sources: ["U. Fincke and M. Pohst, Mathematics of Computation 44 (1985) 463–471, from memory"],
+  },
+  {
+    id: "stock",
+    title: "Shims from a stock",
+    asked: "shims: {stock: [{thickness, quantity}], reuse}",
+    says: [
+      "Thicknesses at hand, with quantities where they matter, alone or beside shims cut to size. Shared stock is never overdrawn; pieces taken out go back to it only with `reuse`, for the same component and those moved after it.",
+      "First each component is served by itself with all of the stock: where that overdraws nothing it is the best there is. Else all are chosen together, by enumeration or by a mixed-integer program. Where one component's move shifts another's stations and stock is short, each takes its turn. `search` says which, whether the choice is proved, and by how much a better one could be better; what is not proved is advice, `optimality_not_proved`.",
+    ],
+    formulas: ["pieces taken of a thickness ≤ quantity + given back"],
+    where: [],
+    sources: ["G. B. Dantzig and P. Wolfe, Operations Research 8 (1960) 101–111, from memory"],
   },
   {
     id: "predicted",

@@ -19,6 +19,7 @@ export function MoveSheet({ call, result }: { call: MoveCall; result: Result }) 
       <NumberTable table={tabulatePredicted(call, result)} />
       <NumberTable table={tabulateComponents(result, units)} />
       {stacks !== null && <NumberTable table={stacks} />}
+      <Search search={result.search} />
       {result.steps.length === 0 ? (
         <p className="text-muted">Nothing has to be moved.</p>
       ) : (
@@ -33,6 +34,29 @@ export function MoveSheet({ call, result }: { call: MoveCall; result: Result }) 
       <Advice advice={result.advice} />
     </div>
   );
+}
+
+const searchWords: Record<NonNullable<Result["search"]>["method"], string> = {
+  alone: "each component by itself, the stock being enough for all",
+  enumeration: "all components together, for the stock they share",
+  mixed_integer_program: "all components together, for the stock they share",
+  in_turn: "each component in its turn, from the stock that those before it leave",
+};
+
+/** How the shims were chosen, and how sure it is that none would do better. */
+function Search({ search }: Pick<Result, "search">) {
+  if (!search) return null;
+  return (
+    <p className="max-w-prose">
+      Shims were chosen for {searchWords[search.method]}:{" "}
+      {search.proved ? "no better choice exists." : unprovedWords(search.gap)}
+    </p>
+  );
+}
+
+function unprovedWords(gap: number | null): string {
+  if (gap === null) return "a better choice may exist.";
+  return `a better choice may exist, by ${Number(gap.toPrecision(3))} at most in what is made least.`;
 }
 
 function Advice({ advice }: { advice: Result["advice"] }) {
