@@ -1,4 +1,3 @@
-import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import {
   clockAngles,
@@ -8,15 +7,10 @@ import {
   wallPoint,
 } from "../../../tests/support/bore-inputs.ts";
 import { codesOf, fitOrCode } from "../../../tests/support/criterion-inputs.ts";
-import {
-  distanceByLooking,
-  ellipseByAngles,
-  type OracleEllipse,
-} from "../../../tests/support/ellipse-oracle.ts";
+import { ellipseByAngles, type OracleEllipse } from "../../../tests/support/ellipse-oracle.ts";
 import type { Pair } from "../../../tests/support/limiting-oracles.ts";
 import { seededRandom } from "../../../tests/support/seeded-random.ts";
 import type { PointsInput, WallPoint } from "./bore-input.ts";
-import { footOnEllipse } from "./ellipse-foot.ts";
 import { fitEllipse } from "./ellipse-fit.ts";
 import { shapeOf } from "./ellipse-model.ts";
 import { fitByCriterion } from "./fit-criterion.ts";
@@ -57,26 +51,6 @@ const ovalInput = (oval: Oval, angles: readonly number[], rest: Partial<PointsIn
     angles.map((clockDeg) => onOval(oval, clockDeg)),
     rest,
   );
-
-describe("footOnEllipse", () => {
-  it("is the nearest of all points of the ellipse, inside and outside, on the axes and far off", () => {
-    const lengths = fc.oneof(
-      fc.constantFrom(0, 1, 2, 3.9, 4.1, 1e3),
-      fc.double({ min: -6, max: 6, noNaN: true }),
-    );
-    fc.assert(
-      fc.property(fc.double({ min: 0.05, max: 4, noNaN: true }), lengths, lengths, (b, x, y) => {
-        const foot = new Float64Array(2);
-        const away = footOnEllipse(4, b, x, y, foot);
-        near((foot[0]! / 4) ** 2 + (foot[1]! / b) ** 2, 1, 1e-9);
-        near(Math.hypot(x - foot[0]!, y - foot[1]!), Math.abs(away), 1e-12 * (1 + Math.abs(away)));
-        near(Math.abs(away), distanceByLooking([0, 0, 4, b, 0], [x, y]), 1e-7);
-        const outside = (x / 4) ** 2 + (y / b) ** 2;
-        if (Math.abs(outside - 1) > 1e-9) expect(Math.sign(away)).toBe(outside > 1 ? 1 : -1);
-      }),
-    );
-  });
-});
 
 describe("method ellipse", () => {
   it.each([0, 30, 97, 150, 179.5])(
