@@ -67,11 +67,11 @@ function centresOfTriples(points: readonly Pair[]): Pair[] {
 }
 
 /** Whether the points leave no gap over 180° as seen from the place: it lies in their convex hull. */
-export function isBetween(points: readonly Pair[], [a, b]: Pair): boolean {
+export function isBetween(points: readonly Pair[], [a, b]: Pair, slackRad = 1e-12): boolean {
   const angles = points.map(([h, v]) => Math.atan2(v - b, h - a)).sort((one, other) => one - other);
   return angles.every((angle, k) => {
     const next = k + 1 < angles.length ? angles[k + 1]! : angles[0]! + 2 * Math.PI;
-    return next - angle <= Math.PI + 1e-12;
+    return next - angle <= Math.PI + slackRad;
   });
 }
 

@@ -62,9 +62,9 @@ describe("minimum_circumscribed of all but regular rings", () => {
   it("is exact where two ends of a diameter carry it but for a hair", () => {
     const points: Pair[] = [
       [100.0000012908687, 0],
-      [0, 100.00000027399099],
-      [-99.99999917558553, 0],
-      [0, -100.00000033458265],
+      [6.123234012513876e-15, 100.00000027399099],
+      [-99.99999917558553, 1.2246467890511878e-14],
+      [-1.8369702048672132e-14, -100.00000033458265],
     ];
     const fit = fitPairs(points, "minimum_circumscribed");
     if (typeof fit === "string") throw new Error(fit);
