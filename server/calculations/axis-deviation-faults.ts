@@ -6,7 +6,6 @@ import {
   type AxisDeviationRequest,
   type AxisStationRequest,
 } from "../../shared/schemas/axis-deviations.ts";
-import { unitsSchema } from "../../shared/schemas/common.ts";
 import { convertersFor, type Units } from "../../shared/units.ts";
 import {
   findMethodFaults,
@@ -16,7 +15,15 @@ import {
 } from "../compute/axis/find-faults.ts";
 import { readAxisStation } from "./axis-deviation-input.ts";
 import { faultOf } from "./collect-faults.ts";
-import { asymmetry, duplicates, idsOf, listOf, membersOf, unknownReference } from "./common-faults.ts";
+import {
+  asymmetry,
+  duplicates,
+  idsOf,
+  listOf,
+  membersOf,
+  unknownReference,
+  statedUnitsOrAny,
+} from "./common-faults.ts";
 
 /** What could be read of a body: all of it when it passed the schema, the sound parts when it did not (null elsewhere). */
 interface Readable {
@@ -36,8 +43,7 @@ export function axisDeviationFaultsBesideSchema(body: unknown): Fault[] {
   const { units, axis, stations } = membersOf(body);
   const sent = listOf(stations);
   return faultsOf({
-    // No fault of the domain depends on the unit: any will do where none was stated.
-    units: unitsSchema.safeParse(units).data ?? { axial: "mm", bore: "mm", offset: "mm" },
+    units: statedUnitsOrAny(units),
     axis: axisSchema.safeParse(axis).data ?? null,
     ids: idsOf(sent),
     stations: sent.map((station) => axisStationSchema.safeParse(station).data ?? null),

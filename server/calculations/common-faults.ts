@@ -1,5 +1,7 @@
 import type { Fault } from "../../shared/error-codes.ts";
 import { pointerOf } from "../../shared/pointer.ts";
+import { unitsSchema } from "../../shared/schemas/common.ts";
+import type { Units } from "../../shared/units.ts";
 import { isCovariance } from "../compute/conformity/is-covariance.ts";
 import type { PlaneCovariance } from "../compute/plane.ts";
 import { isSymmetric } from "./read-covariance.ts";
@@ -66,4 +68,9 @@ export function idsOf(items: readonly unknown[]): (string | null)[] {
     const { id } = membersOf(item);
     return typeof id === "string" ? id : null;
   });
+}
+
+/** The units stated; where none are, any will do, for faults of the domain that do not depend on them. */
+export function statedUnitsOrAny(units: unknown): Units {
+  return unitsSchema.safeParse(units).data ?? { axial: "mm", bore: "mm", offset: "mm" };
 }

@@ -1,6 +1,5 @@
 import type { z } from "zod";
 import type { Fault } from "../../shared/error-codes.ts";
-import { unitsSchema } from "../../shared/schemas/common.ts";
 import {
   confirmationComponent,
   confirmationRequest,
@@ -11,7 +10,7 @@ import {
   type SurveyStationRequest,
 } from "../../shared/schemas/confirmations.ts";
 import { convertersFor, type Units } from "../../shared/units.ts";
-import { duplicates, idsOf, listOf, membersOf, unknownReference } from "./common-faults.ts";
+import { duplicates, idsOf, listOf, membersOf, unknownReference, statedUnitsOrAny } from "./common-faults.ts";
 import { componentPartFaults } from "./confirmation-component-faults.ts";
 import { logFaults, moveFaults, type Readable } from "./confirmation-move-faults.ts";
 import { referenceStationFaults } from "./confirmation-reference-faults.ts";
@@ -43,8 +42,7 @@ export function confirmationFaultsBesideSchema(body: unknown): Fault[] {
     const stations = listOf(membersOf(sent[name])["stations"]);
     return { ids: idsOf(stations), stations: sound<SurveyStationRequest>(surveyStationSchema, stations) };
   };
-  // No fault of the domain depends on the unit: any will do where none was stated.
-  const units = unitsSchema.safeParse(sent["units"]).data ?? { axial: "mm", bore: "mm", offset: "mm" };
+  const units = statedUnitsOrAny(sent["units"]);
   return faultsOf(units, {
     before: survey("before"),
     after: survey("after"),

@@ -1,7 +1,7 @@
 import type { Fault } from "../../shared/error-codes.ts";
 import { limits } from "../../shared/limits.ts";
 import { pointerOf } from "../../shared/pointer.ts";
-import { levelSchema, unitsSchema } from "../../shared/schemas/common.ts";
+import { levelSchema } from "../../shared/schemas/common.ts";
 import {
   measurementPlanRequest,
   plannedBore,
@@ -13,7 +13,7 @@ import { convertersFor, type Converter } from "../../shared/units.ts";
 import { findToleranceFaults } from "../compute/conformity/find-tolerance-faults.ts";
 import { planRefusal } from "../compute/planning/plan-measurement.ts";
 import { faultOf } from "./collect-faults.ts";
-import { duplicates, idsOf, listOf, membersOf } from "./common-faults.ts";
+import { duplicates, idsOf, listOf, membersOf, statedUnitsOrAny } from "./common-faults.ts";
 import { placesOf, planInputOf, type PlanCall } from "./measurement-plan-input.ts";
 import { readTolerance } from "./read-tolerance.ts";
 
@@ -28,8 +28,7 @@ export function measurementPlanFaults(body: unknown): Fault[] {
   const bores = listOf(sent["bores"]);
   const tooLarge = sizeFaults(bores);
   if (bores.length > limits.boresPerCall || tooLarge.length > 0) return tooLarge;
-  // No fault of the domain depends on the unit: any will do where none was stated.
-  const units = unitsSchema.safeParse(sent["units"]).data ?? { axial: "mm", bore: "mm", offset: "mm" };
+  const units = statedUnitsOrAny(sent["units"]);
   const { offset } = convertersFor(units);
   const wanted = wantedSchema.safeParse(sent["wanted"]).data;
   const call: PlanCall & { readonly unsound: ReadonlySet<string> } = {

@@ -1,6 +1,5 @@
 import type { z } from "zod";
 import type { Fault } from "../../shared/error-codes.ts";
-import { unitsSchema } from "../../shared/schemas/common.ts";
 import { componentSchema, type ComponentRequest } from "../../shared/schemas/move-components.ts";
 import {
   indicatorSchema,
@@ -21,6 +20,7 @@ import {
   membersOf,
   notPositive,
   unknownReference,
+  statedUnitsOrAny,
 } from "./common-faults.ts";
 import { componentFaults, stationsSharedFaults } from "./component-faults.ts";
 import { carrierFaults, couplingFaults } from "./linkage-faults.ts";
@@ -68,8 +68,7 @@ export function shimMoveFaultsBesideSchema(body: unknown): Fault[] {
   const sound = <T>(schema: z.ZodType<T>, items: readonly unknown[]): (T | null)[] =>
     items.map((item) => schema.safeParse(item).data ?? null);
   return faultsOf({
-    // No fault of the domain depends on the unit: any will do where none was stated.
-    units: unitsSchema.safeParse(sent["units"]).data ?? { axial: "mm", bore: "mm", offset: "mm" },
+    units: statedUnitsOrAny(sent["units"]),
     stationIds: idsOf(lists.stations),
     stations: sound(moveStationSchema, lists.stations),
     componentIds: idsOf(lists.components),
