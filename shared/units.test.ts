@@ -4,12 +4,14 @@ import {
   absoluteZero,
   convertersFor,
   expansionConverter,
+  fromMillimetres,
   furtherConverter,
   furtherUnitChoices,
+  gradientConverter,
   insidePer,
   massPerLengthConverter,
-  fromMillimetres,
   millimetresPer,
+  referenceTemperature,
   toMillimetres,
   unitChoices,
   type FurtherDimension,
@@ -118,8 +120,9 @@ describe("units of what is no length", () => {
       ),
       ...furtherUnitChoices.mass.map(massPerLengthConverter),
       ...furtherUnitChoices.temperature.map(expansionConverter),
+      ...furtherUnitChoices.temperature.map(gradientConverter),
     ];
-    expect(converters).toHaveLength(14);
+    expect(converters).toHaveLength(16);
     fc.assert(
       fc.property(value, fc.constantFrom(...converters), (number, { toInside, fromInside }) => {
         fc.pre(Math.abs(number) > 1e-280);
@@ -136,9 +139,19 @@ describe("units of what is no length", () => {
     expect(massPerLengthConverter("kg").toInside(2)).toBe(0.002);
   });
 
+  it("take a gradient per metre with °C and per foot with °F, and 20 °C as 68 °F", () => {
+    expect(gradientConverter("C").toInside(2)).toBe(0.002);
+    // 1 °F/ft = (5/9 K)/(304.8 mm), both exact.
+    expect(Math.abs(gradientConverter("F").toInside(1) / (5 / 9 / 304.8) - 1)).toBeLessThan(4e-16);
+    expect([gradientConverter("C").unit, gradientConverter("F").unit]).toEqual(["C/m", "F/ft"]);
+    const inside = furtherConverter("temperature", "F").toInside(referenceTemperature.F - absoluteZero.F);
+    expect(Math.abs(inside - (referenceTemperature.C - absoluteZero.C))).toBeLessThan(1e-12); // K
+  });
+
   it("are not guessed where none is stated", () => {
     expect(() => furtherConverter("mass", undefined)).toThrow("units.mass is not stated.");
     expect(() => massPerLengthConverter(undefined)).toThrow(RangeError);
     expect(() => expansionConverter(undefined)).toThrow(RangeError);
+    expect(() => gradientConverter(undefined)).toThrow(RangeError);
   });
 });

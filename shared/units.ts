@@ -92,6 +92,9 @@ export const insidePer = {
 /** Absolute zero in each unit of temperature, exact by definition. */
 export const absoluteZero = { C: -273.15, F: -459.67 } as const;
 
+/** The standard reference temperature of lengths, 20 °C by ISO 1:2016, in each unit of temperature, exact. */
+export const referenceTemperature = { C: 20, F: 68 } as const;
+
 /** The two directions of what is no length. */
 export interface FurtherConverter {
   readonly unit: string;
@@ -119,6 +122,13 @@ export function massPerLengthConverter(massUnit: FurtherUnits["mass"]): FurtherC
 export function expansionConverter(temperatureUnit: FurtherUnits["temperature"]): FurtherConverter {
   const { unit, toInside, fromInside } = furtherConverter("temperature", temperatureUnit);
   return { unit: `1/${unit}`, toInside: fromInside, fromInside: toInside };
+}
+
+/** Temperature along a length, K/mm inside: with C goes the metre, with F the foot. @throws RangeError as `furtherConverter` */
+export function gradientConverter(temperatureUnit: FurtherUnits["temperature"]): FurtherConverter {
+  const length = temperatureUnit === "F" ? "ft" : "m";
+  const { unit, toInside } = furtherConverter("temperature", temperatureUnit);
+  return byFactor(`${unit}/${length}`, toInside(1) / millimetresPer[length]);
 }
 
 function byFactor(unit: string, factor: number): FurtherConverter {

@@ -39,10 +39,17 @@ export function alignmentFaultsBesideSchema(body: unknown, schemaFaults: readonl
   const bores = listOf(sent["bores"]);
   const stations = listOf(sent["stations"]);
   const fits = { ...sent, bores: bores.map((bore) => without(bore, ["station"])) };
-  const axis = { ...sent, stations: stations.map((station) => withMember(station, "centre")) };
+  // The other calls of the chain take lengths alone.
+  const lengths = without(sent["units"], ["temperature"]);
+  const axis = {
+    ...sent,
+    units: lengths,
+    stations: stations.map((station) => withMember(station, "centre")),
+  };
   const own = ["target", "targetUncertainty", "weight"];
   const moves = {
     ...sent,
+    units: lengths,
     stations: stations.map((station) => withMember(without(station, own), "deviation")),
     reference: membersOf(sent["axis"])["through"],
   };

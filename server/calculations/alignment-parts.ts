@@ -12,18 +12,19 @@ function given<Name extends string, Value>(
 }
 
 /** The first call of the chain: the bores, without the stations they name. */
-export function boreFitPart({ units, seen, level, bores }: AlignmentRequest): BoreFitRequest {
+export function boreFitPart({ units, seen, level, bores, monteCarlo }: AlignmentRequest): BoreFitRequest {
   return {
     units,
     seen,
     ...given("level", level),
     bores: bores.map(({ station: _station, ...bore }) => bore),
+    ...given("monteCarlo", monteCarlo),
   };
 }
 
 /** The second call: each station with the centre of its bore, its covariance and its degrees of freedom as answered. */
 export function axisPart(
-  { units, level, axis, verdict, stations, bores }: AlignmentRequest,
+  { units, level, axis, verdict, stations, bores, monteCarlo }: AlignmentRequest,
   fits: readonly BoreFitResult[],
 ): AxisDeviationRequest {
   const fitAt = new Map(bores.map(({ station }, index) => [station, fits[index]]));
@@ -32,6 +33,7 @@ export function axisPart(
     ...given("level", level),
     axis,
     ...given("verdict", verdict),
+    ...given("monteCarlo", monteCarlo),
     stations: stations.map((station) => {
       const fit = fitAt.get(station.id);
       return {

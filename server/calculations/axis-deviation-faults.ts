@@ -16,6 +16,12 @@ import {
 import { readAxisStation } from "./axis-deviation-input.ts";
 import { faultOf } from "./collect-faults.ts";
 import {
+  axisTrialWork,
+  levelDefault,
+  monteCarloFaults,
+  monteCarloFaultsBesideSchema,
+} from "./monte-carlo-faults.ts";
+import {
   asymmetry,
   duplicates,
   idsOf,
@@ -34,20 +40,25 @@ interface Readable {
 }
 
 /** Every fault of the domain in a request that passed its schema. */
-export function axisDeviationFaults({ units, axis, stations }: AxisDeviationRequest): Fault[] {
-  return faultsOf({ units, axis, ids: stations.map(({ id }) => id), stations });
+export function axisDeviationFaults(request: AxisDeviationRequest): Fault[] {
+  const { units, axis, stations, level = levelDefault, monteCarlo } = request;
+  return [
+    ...faultsOf({ units, axis, ids: stations.map(({ id }) => id), stations }),
+    ...monteCarloFaults(monteCarlo, level, axisTrialWork(request)),
+  ];
 }
 
 /** The faults of the domain in the sound parts of a body that failed its schema elsewhere. */
 export function axisDeviationFaultsBesideSchema(body: unknown): Fault[] {
   const { units, axis, stations } = membersOf(body);
   const sent = listOf(stations);
-  return faultsOf({
+  const faults = faultsOf({
     units: statedUnitsOrAny(units),
     axis: axisSchema.safeParse(axis).data ?? null,
     ids: idsOf(sent),
     stations: sent.map((station) => axisStationSchema.safeParse(station).data ?? null),
   });
+  return [...faults, ...monteCarloFaultsBesideSchema(body)];
 }
 
 function faultsOf({ units, axis, ids, stations }: Readable): Fault[] {

@@ -5,11 +5,15 @@ import {
 } from "../../shared/schemas/axis-deviations.ts";
 import { convertersFor, type Converter, type Dimension, type Units } from "../../shared/units.ts";
 import type { Axis, AxisDeviations, Matrix2, StationDeviation } from "../compute/axis/axis-result.ts";
+import { runAxisTrials, type AxisTrials } from "../compute/axis/axis-trials.ts";
+import type { AxisInput } from "../compute/axis/axis-input.ts";
 import { deviationsFromAxis } from "../compute/axis/deviations-from-axis.ts";
 import { axisDeviationFaults, axisDeviationFaultsBesideSchema } from "./axis-deviation-faults.ts";
 import { readAxisStation } from "./axis-deviation-input.ts";
 import { answerOptimum } from "./axis-optimum-answer.ts";
 import { CalculationRefusal, type CalculationKind } from "./calculation-kind.ts";
+import { answerStationTrials, readTrialPlan } from "./monte-carlo-answer.ts";
+import { levelDefault } from "./monte-carlo-faults.ts";
 import { writeDeviation } from "./write-deviation.ts";
 
 type Converters = Record<Dimension, Converter>;
@@ -24,7 +28,6 @@ interface AxisDeviationAnswer {
 
 /** Reference stations whose covariances are carried through in less time than a thread takes to be worth it. */
 const referencesInPlace = 200;
-const levelDefault = 0.95;
 
 /** POST /v1/axis-deviations: a reference axis, every station's deviation from it, and verdicts. */
 export const axisDeviationKind: CalculationKind<AxisDeviationRequest, AxisDeviationAnswer> = {
@@ -38,16 +41,18 @@ export const axisDeviationKind: CalculationKind<AxisDeviationRequest, AxisDeviat
     const level = request.level ?? levelDefault;
     const convert = convertersFor(units);
     const through = axis.through ?? [];
-    const found = deviationsFromAxis({
+    const input: AxisInput = {
       method: axis.method,
       zone: axis.zone ?? "planes",
       reference: through.map((id) => stations.findIndex((station) => station.id === id)),
       stations: stations.map((station) => readAxisStation(station, convert)),
       level,
       rule: request.verdict?.rule ?? "guarded",
-    });
+    };
+    const found = deviationsFromAxis(input);
+    const withTrials = trialsOf(request, input, found, convert);
     const answered = found.stations.map((station, index) =>
-      answerStation(station, stations[index]!, convert),
+      withTrials(answerStation(station, stations[index]!, convert), index),
     );
     const result = {
       axis: answerAxis(found.axis, through, unusedMembers(request), convert),
@@ -57,9 +62,27 @@ export const axisDeviationKind: CalculationKind<AxisDeviationRequest, AxisDeviat
     return { units, level, result };
   },
 
-  isLong: ({ axis }) => (axis.through ?? []).length > referencesInPlace,
+  isLong: ({ axis, monteCarlo }) =>
+    monteCarlo !== undefined || (axis.through ?? []).length > referencesInPlace,
   faultsBesideSchema: axisDeviationFaultsBesideSchema,
 };
+
+/** Adds to each station what the trials say of it, where trials are asked for. */
+function trialsOf(
+  { monteCarlo, stations }: AxisDeviationRequest,
+  input: AxisInput,
+  found: AxisDeviations,
+  { offset }: Converters,
+): (answer: StationAnswer, index: number) => StationAnswer {
+  if (!monteCarlo) return (answer) => answer;
+  const plan = readTrialPlan(monteCarlo, offset);
+  const names = stations.map(({ id }) => id);
+  const { stations: tried, failures }: AxisTrials = runAxisTrials(input, found, names, plan);
+  return (answer, index) => ({
+    ...answer,
+    monteCarlo: answerStationTrials(plan, tried[index] ?? null, failures, offset),
+  });
+}
 
 function answerAxis(
   { method, h, v, covariance, chiSquare, scatterMm, dof, optimum, warnings }: Axis,

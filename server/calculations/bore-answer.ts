@@ -2,11 +2,17 @@ import type { BoreFitResult, BoreRequest } from "../../shared/schemas/bore-fits.
 import type { Converter, Dimension } from "../../shared/units.ts";
 import type { BoreFit } from "../compute/bore/bore-fit.ts";
 import type { PlaneVector } from "../compute/plane.ts";
+import type { Reduction } from "./bore-temperature.ts";
 
 type Converters = Record<Dimension, Converter>;
 
-/** A fit in the units of the call: diameters in bore units, the rest in offset units. */
-export function boreAnswerOf(bore: BoreRequest, fit: BoreFit, convert: Converters): BoreFitResult {
+/** A fit in the units of the call: diameters in bore units, the rest in offset units; at 20 °C too where it is `reduced`. */
+export function boreAnswerOf(
+  bore: BoreRequest,
+  fit: BoreFit,
+  convert: Converters,
+  reduced: Reduction | null,
+): BoreFitResult {
   const { offset } = convert;
   return {
     id: bore.id,
@@ -14,12 +20,13 @@ export function boreAnswerOf(bore: BoreRequest, fit: BoreFit, convert: Converter
     method: bore.method ?? "least_squares",
     centre: pairOf(fit.centre, offset),
     ...ofWall(fit, convert),
+    ...at20C(fit, reduced, convert),
     covariance: covarianceOf(fit, offset),
     expandedUncertainty: uncertaintyOf(fit, offset),
     contacts: fit.form === "rotating_target" || !fit.contacts ? null : [...fit.contacts],
-    ellipse: ellipseOf(fit, convert),
+    ellipse: ellipseOf(fit, reduced, convert),
     statistics: statisticsOf(fit, offset),
-    warnings: fit.warnings.map(({ code, detail }) => ({ code, detail })),
+    warnings: [...fit.warnings, ...(reduced?.warnings ?? [])].map(({ code, detail }) => ({ code, detail })),
   };
 }
 
@@ -52,12 +59,37 @@ function ofWall(fit: BoreFit, { axial, bore, offset }: Converters) {
   };
 }
 
-function ellipseOf(fit: BoreFit, { bore, offset }: Converters): BoreFitResult["ellipse"] {
+/** The diameter at 20 °C and what was applied to it; nothing where no temperature was stated. */
+function at20C(fit: BoreFit, reduced: Reduction | null, { bore, offset }: Converters) {
+  if (reduced === null) return {};
+  const { factor, gaugeCoefficient, partCoefficient } = reduced;
+  const readMm = fit.form === "rotating_target" ? null : fit.diameterMm;
+  return {
+    diameterAt20C: readMm === null ? null : bore.fromMm(readMm * factor),
+    temperatureCorrection: {
+      factor,
+      diameter: readMm === null ? null : plain(offset.fromMm(readMm * (factor - 1))),
+      gaugeCoefficient,
+      partCoefficient,
+    },
+  };
+}
+
+function ellipseOf(
+  fit: BoreFit,
+  reduced: Reduction | null,
+  { bore, offset }: Converters,
+): BoreFitResult["ellipse"] {
   if (fit.form === "rotating_target" || !fit.ellipse) return null;
   const { majorMm, minorMm, ovalityMm, ovalityExpandedMm, majorClockDeg } = fit.ellipse;
+  const inBore = (lengthMm: number | null, factor = 1) =>
+    lengthMm === null ? null : bore.fromMm(lengthMm * factor);
   return {
-    major: majorMm === null ? null : bore.fromMm(majorMm),
-    minor: minorMm === null ? null : bore.fromMm(minorMm),
+    major: inBore(majorMm),
+    minor: inBore(minorMm),
+    ...(reduced === null
+      ? {}
+      : { majorAt20C: inBore(majorMm, reduced.factor), minorAt20C: inBore(minorMm, reduced.factor) }),
     ovality: offset.fromMm(ovalityMm),
     ovalityExpandedUncertainty: ovalityExpandedMm === null ? null : offset.fromMm(ovalityExpandedMm),
     majorClockDeg,

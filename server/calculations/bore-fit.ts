@@ -7,22 +7,34 @@ import {
   type BoreFitResult,
   type BoreRequest,
 } from "../../shared/schemas/bore-fits.ts";
-import { seenSchema, unitsSchema } from "../../shared/schemas/common.ts";
-import { convertersFor, type Units } from "../../shared/units.ts";
+import { boreFitUnits } from "../../shared/schemas/bore-temperatures.ts";
+import { seenSchema } from "../../shared/schemas/common.ts";
+import type { BoreMonteCarlo, MonteCarloRequest } from "../../shared/schemas/monte-carlo.ts";
+import { convertersFor } from "../../shared/units.ts";
 import { fitPreparedBore, prepareBore } from "../compute/bore/fit-bore.ts";
 import { fitPreparedCriterion, prepareCriterion } from "../compute/bore/fit-criterion.ts";
 import type { BoreInput } from "../compute/bore/bore-input.ts";
+import { runBoreTrials } from "../compute/bore/bore-trials.ts";
 import { boreAnswerOf } from "./bore-answer.ts";
 import { boresIn, duplicateFaults, memberFaults, readingsFault, readingsInCall } from "./bore-faults.ts";
 import { boreInputOf, type CallSettings } from "./bore-input.ts";
+import { readReduction, temperatureFaults, temperatureUnitFaults } from "./bore-temperature.ts";
 import { CalculationRefusal, type CalculationKind } from "./calculation-kind.ts";
-import { attemptEach, computeEach, faultOf } from "./collect-faults.ts";
+import { attemptEach, faultOf } from "./collect-faults.ts";
+import { answerBoreTrials, readTrialPlan } from "./monte-carlo-answer.ts";
+import {
+  boreTrialWork,
+  levelDefault,
+  monteCarloFaults,
+  monteCarloFaultsBesideSchema,
+} from "./monte-carlo-faults.ts";
 
 /** Readings fitted in less time than a thread takes to be worth it. */
 const readingsInPlace = 5_000;
 /** A criterion that compares every centre takes as long as least squares of this many readings, and as many times each. */
 const searchCost = { each: 500, perReading: 20 };
-const defaultLevel = 0.95;
+
+type Units = BoreFitRequest["units"];
 
 export interface BoreFitAnswer {
   readonly units: Units;
@@ -36,7 +48,8 @@ export const boreFitKind: CalculationKind<BoreFitRequest, BoreFitAnswer> = {
   kind: "bore-fit",
   request: boreFitRequest,
   answer: answerOf,
-  isLong: (request) => readingsInCall(request) + searchesIn(request) > readingsInPlace,
+  isLong: (request) =>
+    request.monteCarlo !== undefined || readingsInCall(request) + searchesIn(request) > readingsInPlace,
   faultsBesideSchema,
 };
 
@@ -49,14 +62,32 @@ function searchesIn({ bores }: BoreFitRequest): number {
 }
 
 function answerOf(request: BoreFitRequest): BoreFitAnswer {
-  const { units, seen, level = defaultLevel, bores } = request;
+  const { units, seen, level = levelDefault, bores, monteCarlo } = request;
   const tooLarge = readingsFault(request);
   if (tooLarge) throw new CalculationRefusal([tooLarge]);
   const duplicates = duplicateFaults(bores);
-  const fits = computeEach(bores, ["bores"], (bore, index) =>
+  const { results: fits, faults } = attemptEach(bores, ["bores"], (bore, index) =>
     fitOne(bore, index, duplicates.get(index), { seen, level }, units),
   );
-  return { units, seen: "downstream", level, result: { bores: fits } };
+  // Trials take long: they wait until every bore is known to be fitted.
+  const work = fits.reduce((sum, { trialWork }) => sum + trialWork, 0);
+  const all = [
+    ...temperatureUnitFaults(bores, units),
+    ...faults,
+    ...monteCarloFaults(monteCarlo, level, work),
+  ];
+  if (all.length > 0) throw new CalculationRefusal(all);
+  const answers = fits.map(({ answer, tried }) =>
+    monteCarlo ? { ...answer, monteCarlo: tried(monteCarlo) } : answer,
+  );
+  return { units, seen: "downstream", level, result: { bores: answers } };
+}
+
+/** A fitted bore, and what it would take to try it by Monte Carlo. */
+interface Fitted {
+  readonly answer: BoreFitResult;
+  readonly trialWork: number;
+  readonly tried: (asked: MonteCarloRequest) => BoreMonteCarlo;
 }
 
 /**
@@ -69,18 +100,28 @@ function fitOne(
   duplicate: Fault | undefined,
   call: CallSettings,
   units: Units,
-): BoreFitResult {
+): Fitted {
   const convert = convertersFor(units);
-  const prepared = prepare(bore, boreInputOf(bore, call, convert));
+  const input = boreInputOf(bore, call, convert);
+  const prepared = prepare(bore, input);
   const refusals = prepared.kind === "refused" ? prepared.refusals : [];
   const faults = [
     ...(duplicate ? [duplicate] : []),
     ...memberFaults(bore, index),
+    ...temperatureFaults(bore, index, units.temperature),
     ...refusals.map((refusal) => faultOf(refusal, ["bores", index])),
   ];
   if (faults.length > 0) throw new CalculationRefusal(faults);
   const fit = prepared.kind === "criterion" ? fitPreparedCriterion(prepared) : fitPreparedBore(prepared);
-  return boreAnswerOf(bore, fit, convert);
+  return {
+    answer: boreAnswerOf(bore, fit, convert, readReduction(bore, units.temperature)),
+    trialWork: boreTrialWork(bore, prepared),
+    tried: (asked) => {
+      const plan = readTrialPlan(asked, convert.offset);
+      const found = runBoreTrials(input, bore.method ?? "least_squares", fit, bore.id, plan);
+      return answerBoreTrials(plan, fit, found, convert);
+    },
+  };
 }
 
 /** By its criterion; a form that takes least squares only is looked at by that, its method refused beside. */
@@ -98,16 +139,17 @@ function faultsBesideSchema(body: unknown, schemaFaults: readonly Fault[]): read
   if (bores.length === 0 || bores.length > limits.boresPerCall || readingsFault(body)) return [];
   const duplicates = duplicateFaults(bores);
   const sent = body as { readonly units?: unknown; readonly seen?: unknown };
-  const units = unitsSchema.safeParse(sent.units).data;
+  const units = boreFitUnits.safeParse(sent.units).data;
   const seen = seenSchema.safeParse(sent.seen).data ?? "downstream";
-  return attemptEach(bores, ["bores"], (one, index) => {
+  const { faults } = attemptEach(bores, ["bores"], (one, index) => {
     const faulty = schemaFaults.some(({ pointer }) => `${pointer}/`.startsWith(`/bores/${index}/`));
     const bore = faulty ? undefined : boreSchema.safeParse(one).data;
     const duplicate = duplicates.get(index);
-    if (bore && units) return fitOne(bore, index, duplicate, { seen, level: defaultLevel }, units);
+    if (bore && units) return fitOne(bore, index, duplicate, { seen, level: levelDefault }, units);
     throw new CalculationRefusal([
       ...(duplicate ? [duplicate] : []),
-      ...(bore ? memberFaults(bore, index) : []),
+      ...(bore ? [...memberFaults(bore, index), ...temperatureFaults(bore, index, undefined)] : []),
     ]);
-  }).faults;
+  });
+  return [...temperatureUnitFaults(bores, sent.units), ...faults, ...monteCarloFaultsBesideSchema(body)];
 }

@@ -8,14 +8,22 @@ import {
 } from "../../shared/schemas/cold-targets.ts";
 import { unitsSchema } from "../../shared/schemas/common.ts";
 import {
-  absoluteZero,
   convertersFor,
   furtherUnitChoices,
   type Converter,
   type FurtherDimension,
+  type FurtherUnit,
 } from "../../shared/units.ts";
 import { outsideFault, rotorFaults, shaftExtent, type Extent } from "./cold-target-rotor-faults.ts";
-import { combinationInvalid, duplicates, idsOf, listOf, membersOf } from "./common-faults.ts";
+import {
+  belowAbsoluteZero,
+  combinationInvalid,
+  duplicates,
+  idsOf,
+  listOf,
+  membersOf,
+  unitNotStated,
+} from "./common-faults.ts";
 
 type Place = readonly PropertyKey[];
 type Members = Readonly<Record<string, unknown>>;
@@ -73,17 +81,9 @@ function unitFaults({ units, stations, rotor, wire }: Members): Fault[] {
     density: isPresent(density),
     modulus: isPresent(modulus),
   };
-  return Object.entries(furtherUnitChoices).flatMap(([dimension, choices]) =>
-    uses[dimension as FurtherDimension] && membersOf(units)[dimension] === undefined
-      ? [
-          {
-            pointer: `/units/${dimension}`,
-            code: "units_missing" as const,
-            detail: `This call uses a ${dimension}: state its unit, one of ${choices.join(", ")}.`,
-          },
-        ]
-      : [],
-  );
+  return (Object.keys(furtherUnitChoices) as FurtherDimension[])
+    .filter((dimension) => uses[dimension] && membersOf(units)[dimension] === undefined)
+    .map(unitNotStated);
 }
 
 /** The growths of a station that may be anything, each with its place below `growth`. */
@@ -112,22 +112,10 @@ function expansionFaults({ coefficient, material }: GrowthRequest, at: Place): F
 }
 
 function temperatureFaults(growth: GrowthRequest, at: Place, unit: unknown): Fault[] {
-  if (unit !== "C" && unit !== "F") return [];
-  const min = absoluteZero[unit];
-  return (["hot", "cold"] as const).flatMap((name) =>
-    growth[name] < min
-      ? [
-          {
-            pointer: pointerOf([...at, name]),
-            code: "out_of_range" as const,
-            detail: "No temperature is below absolute zero.",
-            value: growth[name],
-            unit,
-            allowed: { min, unit },
-          },
-        ]
-      : [],
+  const stated: FurtherUnit<"temperature"> | undefined = furtherUnitChoices.temperature.find(
+    (choice) => choice === unit,
   );
+  return (["hot", "cold"] as const).flatMap((name) => belowAbsoluteZero(growth[name], stated, [...at, name]));
 }
 
 /** A station beyond the shaft that it follows, or beyond the wire. */

@@ -1,7 +1,13 @@
 import type { Fault } from "../../shared/error-codes.ts";
 import { pointerOf } from "../../shared/pointer.ts";
 import { unitsSchema } from "../../shared/schemas/common.ts";
-import type { Units } from "../../shared/units.ts";
+import {
+  absoluteZero,
+  furtherUnitChoices,
+  type FurtherDimension,
+  type FurtherUnit,
+  type Units,
+} from "../../shared/units.ts";
 import { isCovariance } from "../compute/conformity/is-covariance.ts";
 import type { PlaneCovariance } from "../compute/plane.ts";
 import { isSymmetric } from "./read-covariance.ts";
@@ -37,6 +43,26 @@ export function notAvailable(at: Place, detail: string): Fault {
 
 export function combinationInvalid(at: Place, detail: string): Fault {
   return { pointer: pointerOf(at), code: "combination_invalid", detail };
+}
+
+/** A unit that the call uses and does not state. */
+export function unitNotStated(dimension: FurtherDimension): Fault {
+  return {
+    pointer: `/units/${dimension}`,
+    code: "units_missing",
+    detail: `This call uses a ${dimension}: state its unit, one of ${furtherUnitChoices[dimension].join(", ")}.`,
+  };
+}
+
+/** No fault where the unit is not known: that is a fault of its own. */
+export function belowAbsoluteZero(
+  value: number,
+  unit: FurtherUnit<"temperature"> | undefined,
+  at: Place,
+): Fault[] {
+  if (unit === undefined || value >= absoluteZero[unit]) return [];
+  const [pointer, detail] = [pointerOf(at), "No temperature is below absolute zero."];
+  return [{ pointer, code: "out_of_range", detail, value, unit, allowed: { min: absoluteZero[unit], unit } }];
 }
 
 /** A covariance whose two equal places differ. */

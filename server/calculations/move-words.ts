@@ -31,7 +31,8 @@ export function pointerOfLimit({ request }: Wording, component: number, limit: L
     : pointerOf([...at, "pads", pad, "stack", limit.side]);
 }
 
-function limitInWords({ request }: Wording, component: number, limit: LimitPlace): string {
+/** A limit of a component, named for a reader. */
+export function limitInWords({ request }: Wording, component: number, limit: LimitPlace): string {
   const support = request.components[component]?.supports?.[limit.support]?.id ?? "";
   const end = limit.side === "min" ? "least" : "most";
   return limit.of === "travel"

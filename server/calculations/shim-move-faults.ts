@@ -89,7 +89,7 @@ function faultsOf(read: Readable): Fault[] {
   const known = { stations: new Set(stationIds), components: new Set(componentIds) };
   return [
     ...duplicates(stationIds, (index) => ["stations", index, "id"]),
-    ...stations.flatMap((station, index) => (station ? stationFaults(station, index, convert) : [])),
+    ...stations.flatMap((station, index) => (station ? moveStationFaults(station, index, convert) : [])),
     ...duplicates(reference, (index) => ["reference", index]),
     ...reference.flatMap((id, index) =>
       known.stations.has(id) ? [] : [unknownReference(["reference", index], "station")],
@@ -115,7 +115,8 @@ function faultsOf(read: Readable): Fault[] {
   ];
 }
 
-function stationFaults(
+/** Everything that is wrong with the covariance and the tolerance of one station. */
+export function moveStationFaults(
   station: MoveStationRequest,
   index: number,
   convert: Record<Dimension, Converter>,

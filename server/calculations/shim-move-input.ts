@@ -67,7 +67,7 @@ export function readMoveStation(station: MoveStationRequest, { axial, offset }: 
   };
 }
 
-function readComponent(component: ComponentRequest, convert: Converters): MoveComponent {
+export function readComponent(component: ComponentRequest, convert: Converters): MoveComponent {
   const { id, kind, stations, fixed, allowReferenceMove, supports, carriedBy, tilt, roll } = component;
   const { axial, offset } = convert;
   return {

@@ -21,7 +21,8 @@ export function clockDegOf({ hMm, vMm }: PlaneVector): number | null {
   if (hMm === 0 && vMm === 0) return null;
   const deg = (Math.atan2(hMm, vMm) * 180) / Math.PI;
   const turned = deg < 0 ? deg + 360 : deg;
-  return turned >= 360 ? 0 : turned;
+  // Adding 0 drops the sign of a negative zero, as JSON does.
+  return turned >= 360 ? 0 : turned + 0;
 }
 
 /** Larger eigenvalue of the 2 × 2 covariance, mm²: the variance in the worst direction. */

@@ -6,6 +6,7 @@ import {
   axisSchema,
   axisStationSchema,
 } from "./axis-deviations.ts";
+import { boreFitUnits } from "./bore-temperatures.ts";
 import { boreFitResult, pointsBore, rotatingTargetBore, turnedGaugeBore, wireBore } from "./bore-fits.ts";
 import {
   calculationEnvelope,
@@ -14,7 +15,6 @@ import {
   levelSchema,
   noteSchema,
   seenSchema,
-  unitsSchema,
 } from "./common.ts";
 import { callerId } from "./quantity.ts";
 import { shimMoveRequest, shimMoveResult } from "./shim-moves.ts";
@@ -38,13 +38,14 @@ const moves = shimMoveRequest.shape;
 
 export const alignmentRequest = z
   .strictObject({
-    units: unitsSchema,
+    units: boreFitUnits,
     seen: seenSchema,
     level: levelSchema.optional(),
     bores: z.array(alignmentBore).min(1).max(limits.boresPerCall),
     stations: z.array(alignmentStation).min(1).max(limits.stationsPerCall),
     axis: axisSchema,
     verdict: axisDeviationRequest.shape.verdict,
+    monteCarlo: axisDeviationRequest.shape.monteCarlo,
     components: moves.components.optional().meta({ description: "Absent: no moves are solved." }),
     shims: moves.shims,
     objective: moves.objective,
@@ -73,6 +74,7 @@ export const alignmentResult = z
 export const alignmentResponse = z
   .object({
     ...calculationEnvelope("alignment", alignmentResult),
+    units: boreFitUnits,
     seen: z.literal("downstream"),
     cautions: z.array(cautionSchema),
   })

@@ -15,6 +15,7 @@ import {
   verdictSchema,
   warningSchema,
 } from "./common.ts";
+import { monteCarloSchema, stationMonteCarloAnswer } from "./monte-carlo.ts";
 import { callerId, quantity } from "./quantity.ts";
 
 export const axisMethods = [
@@ -106,6 +107,7 @@ export const axisDeviationRequest = z
           .optional(),
       })
       .optional(),
+    monteCarlo: monteCarloSchema.optional(),
     note: noteSchema.optional(),
     jobId: jobIdSchema.optional(),
   })
@@ -233,6 +235,7 @@ const stationAnswer = z
       .nullable()
       .meta({ description: "Deviation over tolerance, of h and v the larger; null without a tolerance." }),
     reference: z.boolean().meta({ description: "Whether the station set the axis." }),
+    monteCarlo: stationMonteCarloAnswer.optional(),
     warnings: z.array(warningSchema),
   })
   .meta({ id: "StationDeviation" });

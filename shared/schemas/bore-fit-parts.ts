@@ -6,6 +6,10 @@ export const ellipseAxesSchema = z
       description: "Diameter, in bore units; null where the gauge's zero does not tell it.",
     }),
     minor: z.number().nullable(),
+    majorAt20C: z.number().nullable().optional().meta({
+      description: "As diameterAt20C, of the major axis; absent where the bore states no temperature.",
+    }),
+    minorAt20C: z.number().nullable().optional(),
     ovality: z.number().meta({ description: "Major − minor diameter, in offset units." }),
     ovalityExpandedUncertainty: z.number().nullable().meta({
       description: "By the two-dimensional factor at `level`; null where nothing tells it.",

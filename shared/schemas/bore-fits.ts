@@ -2,15 +2,21 @@ import { z } from "zod";
 import { limits } from "../limits.ts";
 import { boreFitStatisticsSchema, ellipseAxesSchema } from "./bore-fit-parts.ts";
 import {
+  boreFitUnits,
+  boreTemperatures,
+  diameterAt20CSchema,
+  temperatureCorrectionSchema,
+} from "./bore-temperatures.ts";
+import {
   calculationEnvelope,
   covarianceAnswer,
   jobIdSchema,
   levelSchema,
   noteSchema,
   seenSchema,
-  unitsSchema,
   warningSchema,
 } from "./common.ts";
+import { boreMonteCarloAnswer, monteCarloSchema } from "./monte-carlo.ts";
 import { callerId, clockDeg, fixedQuantity, quantity } from "./quantity.ts";
 
 const uncertainty = quantity(
@@ -70,6 +76,7 @@ const common = {
     "uncertainty",
     "Standard uncertainty (k = 1) of each reading that states none of its own.",
   ).nullish(),
+  ...boreTemperatures,
 };
 const nominalDiameter = quantity("bore", "positiveLength", "Diameter on the drawing.");
 
@@ -189,10 +196,11 @@ export const boreSchema = z
 
 export const boreFitRequest = z
   .strictObject({
-    units: unitsSchema,
+    units: boreFitUnits,
     seen: seenSchema,
     level: levelSchema.optional(),
     bores: z.array(boreSchema).min(1).max(limits.boresPerCall),
+    monteCarlo: monteCarloSchema.optional(),
     note: noteSchema.optional(),
     jobId: jobIdSchema.optional(),
   })
@@ -213,7 +221,9 @@ export const boreFitResult = z
     diameter: z
       .number()
       .nullable()
-      .meta({ description: "In bore units, at z = 0; null where it is not known." }),
+      .meta({ description: "As read, in bore units, at z = 0; null where it is not known." }),
+    diameterAt20C: diameterAt20CSchema,
+    temperatureCorrection: temperatureCorrectionSchema,
     roundness: z.number().nullable().meta({ description: "Peak to valley of the radial residuals in use." }),
     residuals: z.union([z.array(z.number()), z.array(clockPair("Of one spot"))]).meta({
       description:
@@ -255,6 +265,7 @@ export const boreFitResult = z
       .meta({ description: "Slopes of a tilted cylinder's centre line, offset units per axial unit." }),
     ellipse: ellipseAxesSchema,
     statistics: boreFitStatisticsSchema,
+    monteCarlo: boreMonteCarloAnswer.optional(),
     warnings: z.array(warningSchema),
   })
   .meta({ id: "BoreFit" });
@@ -262,6 +273,7 @@ export const boreFitResult = z
 export const boreFitResponse = z
   .object({
     ...calculationEnvelope("bore-fit", z.object({ bores: z.array(boreFitResult) })),
+    units: boreFitUnits,
     seen: z
       .literal("downstream")
       .meta({ description: "The view of every centre, clock angle and residual answered." }),

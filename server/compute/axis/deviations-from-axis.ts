@@ -75,7 +75,11 @@ function fitBothPlanes(input: AxisInput): PlaneFits {
   };
 }
 
-function gainsOfMethod({ method, reference, stations }: AxisInput): Record<keyof PerPlane, LineGains> {
+/**
+ * Gains of a line that is linear in the observations: two_station, least_squares and line_of_sight.
+ * @throws ComputeError rank_deficient
+ */
+export function gainsOfMethod({ method, reference, stations }: AxisInput): Record<keyof PerPlane, LineGains> {
   const at = reference.map((index) => stations[index]!);
   const zMm = at.map((station) => station.zMm);
   if (method === "line_of_sight") return { h: noGains, v: noGains };

@@ -12,6 +12,8 @@ export interface CellBounds {
   /** Values from which an outer rival, and up to which an inner one, can still be extreme somewhere in the region. */
   readonly outerFrom: number;
   readonly innerTo: number;
+  /** Near chart: no inner rival that can be innermost in the region lies nearer to its middle. */
+  readonly nearest: number;
 }
 
 /** Curvature is left out of account only where a region is this much smaller than the distances. */
@@ -32,20 +34,24 @@ export function boundsOf(region: Region, { outer, inner }: Rivals, measures: Mea
   let lowest = -Infinity;
   for (let k = 0; k < outer.length; k++) {
     const i = outer[k]!;
-    const low = value[i]! - Math.abs(slopeX[i]!) * halfX - Math.abs(slopeY[i]!) * halfY;
+    const v = value[i]!;
+    // What falls from there on cannot come to lie higher.
+    if (v <= lowest) continue;
+    const low = v - Math.abs(slopeX[i]!) * halfX - Math.abs(slopeY[i]!) * halfY;
     if (low > lowest) lowest = low;
   }
   let highest = Infinity;
   let nearest = Infinity;
   for (let k = 0; k < inner.length; k++) {
     const j = inner[k]!;
+    const v = j === constant ? 0 : value[j]!;
+    if (v >= highest) continue;
     if (j === constant) {
-      highest = Math.min(highest, 0);
+      highest = v;
       continue;
     }
     const rise = Math.abs(slopeX[j]!) * halfX + Math.abs(slopeY[j]!) * halfY;
-    const d = near ? distance[j]! : 0;
-    const high = value[j]! + (near ? Math.min(size, rise + (size * size) / (2 * d)) : rise);
+    const high = v + (near ? Math.min(size, rise + (size * size) / (2 * distance[j]!)) : rise);
     if (high < highest) highest = high;
   }
   const outerFrom = lowest - farBend;
@@ -62,7 +68,14 @@ export function boundsOf(region: Region, { outer, inner }: Rivals, measures: Mea
     usesTangents: near ? size <= tangentShare * nearest : halfX <= 2 * tangentShare,
     outerFrom,
     innerTo,
+    nearest,
   };
+}
+
+/** The bend of a near region of which no inner rival lies nearer to its middle; null where tangents say nothing. */
+export function bendWithin({ halfX, halfY }: Region, nearest: number): number | null {
+  const size = Math.hypot(halfX, halfY);
+  return size <= tangentShare * nearest ? (size * size) / (2 * nearest) : null;
 }
 
 /** The rivals that can still be outermost or innermost somewhere in the region. */
@@ -80,6 +93,10 @@ export function rivalsLeft(
   let outerCount = 0;
   for (let k = 0; k < outer.length; k++) {
     const i = outer[k]!;
+    if (value[i]! >= outerFrom) {
+      stillOuter[outerCount++] = i;
+      continue;
+    }
     const rise = Math.abs(slopeX[i]!) * halfX + Math.abs(slopeY[i]!) * halfY;
     const high = near ? Math.min(size, rise + (size * size) / (2 * distance[i]!)) : rise + farBend;
     if (value[i]! + high >= outerFrom) stillOuter[outerCount++] = i;
@@ -88,10 +105,17 @@ export function rivalsLeft(
   let innerCount = 0;
   for (let k = 0; k < inner.length; k++) {
     const j = inner[k]!;
+    if (value[j]! <= innerTo) {
+      stillInner[innerCount++] = j;
+      continue;
+    }
     const fall = Math.abs(slopeX[j]!) * halfX + Math.abs(slopeY[j]!) * halfY + farBend;
     if (value[j]! - fall <= innerTo) stillInner[innerCount++] = j;
   }
-  return { outer: stillOuter.slice(0, outerCount), inner: stillInner.slice(0, innerCount) };
+  return {
+    outer: outerCount === outer.length ? outer : stillOuter.slice(0, outerCount),
+    inner: innerCount === inner.length ? inner : stillInner.slice(0, innerCount),
+  };
 }
 
 function farBendOf({ y, halfX, halfY }: Region): number {

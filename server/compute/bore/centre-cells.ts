@@ -6,6 +6,8 @@ import type { Optimum } from "./optimum-basin.ts";
 export interface Cell extends Region, Rivals {
   /** The optimum that was found in a cell which this one is part of. */
   readonly home: Optimum | null;
+  /** Near chart: no inner rival that can be innermost lies nearer to the middle. */
+  readonly nearest: number;
 }
 
 /** A few rivals that are asked first: most regions are left on their word. */
@@ -40,10 +42,16 @@ export function partsOf(cell: Cell): Cell[] {
   const acrossY = cell.halfY * longShape >= cell.halfX;
   const halfX = acrossX ? cell.halfX / 2 : cell.halfX;
   const halfY = acrossY ? cell.halfY / 2 : cell.halfY;
-  const shifts = (across: boolean, half: number) => (across ? [-half, half] : [0]);
-  return shifts(acrossX, halfX).flatMap((dx) =>
-    shifts(acrossY, halfY).map((dy) => ({ ...cell, x: cell.x + dx, y: cell.y + dy, halfX, halfY })),
-  );
+  const { chart, edges, outer, inner, home } = cell;
+  const nearest = cell.nearest - Math.hypot(acrossX ? halfX : 0, acrossY ? halfY : 0);
+  const parts: Cell[] = [];
+  for (let x = acrossX ? -1 : 0; x <= 1; x += 2) {
+    for (let y = acrossY ? -1 : 0; y <= 1; y += 2) {
+      const [centreX, centreY] = [cell.x + x * halfX, cell.y + y * halfY];
+      parts.push({ chart, x: centreX, y: centreY, halfX, halfY, edges, outer, inner, home, nearest });
+    }
+  }
+  return parts;
 }
 
 /** Whether the whole cell lies where the optimum is the only one. */

@@ -66,19 +66,9 @@ export function spotRefusal({ turnCos, turnSin, uMm }: TargetReadings): readonly
 export function fitRotatingTarget(input: RotatingTargetInput, readings: TargetReadings): SpotFit {
   const { spotH, spotV, turnCos, turnSin, uMm } = readings;
   const n = spotH.length;
-  const { weight, weightSum, meanCos, meanSin, spread } = turnsOf(readings);
-  const meanH = weightedMean(spotH, weight, weightSum);
-  const meanV = weightedMean(spotV, weight, weightSum);
-  let beamH = 0;
-  let beamV = 0;
-  for (let i = 0; i < n; i++) {
-    const cos = weight[i]! * (turnCos[i]! - meanCos);
-    const sin = weight[i]! * (turnSin[i]! - meanSin);
-    beamH += cos * (spotH[i]! - meanH) + sin * (spotV[i]! - meanV);
-    beamV += cos * (spotV[i]! - meanV) - sin * (spotH[i]! - meanH);
-  }
-  beamH /= spread;
-  beamV /= spread;
+  const turns = turnsOf(readings);
+  const { weight, weightSum, meanCos, meanSin, spread } = turns;
+  const { beamH, beamV, meanH, meanV } = beamOf(spotH, spotV, readings, turns);
   let squares = 0;
   let weightedSquares = 0;
   const residualsMm = Array.from({ length: n }, (_, i): PlaneVector => {
@@ -119,7 +109,31 @@ export function fitRotatingTarget(input: RotatingTargetInput, readings: TargetRe
   };
 }
 
-function turnsOf({ turnCos, turnSin, uMm }: Pick<TargetReadings, "turnCos" | "turnSin" | "uMm">) {
+/** What the turns and weights of the spots give, whatever the spots are: as `beamOf` needs it. */
+export type Turns = ReturnType<typeof turnsOf>;
+
+/** Weighted means of the spots, mm, and e, the beam relative to the bore's centre, of spots at these turns. */
+export function beamOf(
+  spotH: Float64Array,
+  spotV: Float64Array,
+  { turnCos, turnSin }: Pick<TargetReadings, "turnCos" | "turnSin">,
+  { weight, weightSum, meanCos, meanSin, spread }: Turns,
+) {
+  const meanH = weightedMean(spotH, weight, weightSum);
+  const meanV = weightedMean(spotV, weight, weightSum);
+  let beamH = 0;
+  let beamV = 0;
+  for (let i = 0; i < spotH.length; i++) {
+    const cos = weight[i]! * (turnCos[i]! - meanCos);
+    const sin = weight[i]! * (turnSin[i]! - meanSin);
+    beamH += cos * (spotH[i]! - meanH) + sin * (spotV[i]! - meanV);
+    beamV += cos * (spotV[i]! - meanV) - sin * (spotH[i]! - meanH);
+  }
+  return { beamH: beamH / spread, beamV: beamV / spread, meanH, meanV };
+}
+
+/** Weights, their sum, mean turn and weighted spread of the turns. */
+export function turnsOf({ turnCos, turnSin, uMm }: Pick<TargetReadings, "turnCos" | "turnSin" | "uMm">) {
   const weight = Float64Array.from(turnCos, (_, i) => (uMm === null ? 1 : 1 / uMm[i]! ** 2));
   const weightSum = weight.reduce((sum, w) => sum + w, 0);
   const meanCos = weightedMean(turnCos, weight, weightSum);

@@ -1,12 +1,13 @@
 import { ComputeError } from "../compute-error.ts";
 import { boundsOf, rivalsLeft } from "./cell-bounds.ts";
-import { covers, cutEdges, holds, partsOf, spreadOver, type Cell } from "./centre-cells.ts";
+import { covers, cutEdges, holds, partsOf, type Cell } from "./centre-cells.ts";
 import { measuresFor, placeOf, type Measures } from "./centre-charts.ts";
 import type { CentreProblem, Place } from "./centre-problem.ts";
 import type { HalfPlanes } from "./convex-hull.ts";
 import { descendCentre, measureRivals, sidesAround, type Region, type Rivals } from "./descend-centre.ts";
+import { FewRivals } from "./few-rivals.ts";
 import { optimumAt, type Optimum } from "./optimum-basin.ts";
-import { solveTangentProgram } from "./tangent-program.ts";
+import { solveTangentProgram, type StepSides } from "./tangent-program.ts";
 
 export interface CentreSearch {
   readonly problem: CentreProblem;
@@ -31,6 +32,8 @@ export interface BestCentre {
 
 /** How much better than the answer an unseen centre may be, in units of the problem: far below 1e-9 of the radius. */
 const tolerance = 1e-12;
+/** Far more than what rounding may change in the value at a step's end. */
+const roundedReach = 1e-9;
 /** Centres nearer than this are one centre. */
 const samePlace = 1e-6;
 /**
@@ -55,7 +58,7 @@ export function searchCentre(search: CentreSearch, member: string): BestCentre {
 
 class Search {
   private readonly measures: Measures;
-  private readonly witnesses: Rivals;
+  private readonly few: FewRivals;
   private readonly optima: Optimum[] = [];
   private best: Optimum;
   /** An optimum as good as the best so far. */
@@ -69,7 +72,7 @@ class Search {
   ) {
     const { problem, rivals, start } = search;
     this.measures = measuresFor(problem.count);
-    this.witnesses = { outer: spreadOver(rivals.outer), inner: spreadOver(rivals.inner) };
+    this.few = new FewRivals(problem, rivals, this.measures);
     const { region, x, y } = start;
     this.best = { chart: region.chart, x, y, value: Infinity, basin: 0 };
     this.descend(region, start, rivals);
@@ -77,13 +80,14 @@ class Search {
 
   run(): BestCentre {
     const { regions, rivals } = this.search;
-    const stack: Cell[] = regions.map((region) => ({ ...region, ...rivals, home: null }));
+    const stack: Cell[] = regions.map((region) => ({ ...region, ...rivals, home: null, nearest: 0 }));
     for (let cell = stack.pop(); cell !== undefined; cell = stack.pop()) {
       this.cells++;
       const left = this.examine(cell);
       if (left !== null) stack.push(...partsOf(left));
       this.work += workPerCell;
-      if (this.work > workMax.base + workMax.perPoint * this.search.problem.count) throw this.giveUp();
+      if (this.work + this.few.work > workMax.base + workMax.perPoint * this.search.problem.count)
+        throw this.giveUp();
     }
     if (this.best.value === Infinity) throw this.giveUp();
     if (this.best.basin === 0) this.descend(this.wholeRegion(this.best), this.best, rivals);
@@ -93,12 +97,16 @@ class Search {
 
   /** Null when the cell need not be searched further; else the cell with the rivals that are left in it. */
   private examine(cell: Cell): Cell | null {
-    const { tieWithin, edges } = this.search;
+    const { problem, tieWithin, edges } = this.search;
     if (covers(this.best, cell) || (cell.home !== null && covers(cell.home, cell))) return null;
     const cutting = cutEdges(cell, edges);
     if (cutting === null) return null;
-    if (this.witnessesForbid(cell)) return null;
-    const { value, bounds } = this.measure(cell, cell);
+    // Before an optimum is proved, what a cell offers at its middle may count.
+    if (this.best.basin > 0 && this.few.carriersForbid(cell, this.limit())) return null;
+    if (this.few.witnessesForbid(cell, this.limit())) return null;
+    this.work += cell.outer.length + cell.inner.length;
+    const value = measureRivals(problem, cell.chart, cell.x, cell.y, cell, this.measures);
+    const bounds = boundsOf(cell, cell, this.measures);
     if (bounds.lower >= this.limit()) return null;
     if (cutting.length === 0) this.offer({ chart: cell.chart, x: cell.x, y: cell.y, value, basin: 0 });
     const rivals = rivalsLeft(cell, cell, this.measures, bounds);
@@ -107,26 +115,42 @@ class Search {
     let { lower } = bounds;
     if (bounds.usesTangents) {
       const sides = sidesAround({ ...cell, edges: cutting }, edges, cell.x, cell.y, Infinity);
-      const step = solveTangentProgram(this.measures, rivals.outer, rivals.inner, sides);
+      const step = this.tangentStep(cell, rivals, sides, home !== null);
       if (step === null) return null;
       this.work += (rivals.outer.length + rivals.inner.length) * (step.pivots + 1);
+      this.few.remember(step, rivals);
       lower = Math.max(lower, step.value - bounds.bend);
       if (lower >= this.limit()) return null;
       const at = { x: cell.x + step.dx, y: cell.y + step.dy };
       if (step.pushed) {
         // The optimum, if there is one near, lies outside; what the edge of the cell offers still counts.
         this.work += rivals.outer.length + rivals.inner.length;
-        const value = measureRivals(this.search.problem, cell.chart, at.x, at.y, rivals, this.measures);
+        const value = measureRivals(problem, cell.chart, at.x, at.y, rivals, this.measures);
         this.offer({ chart: cell.chart, ...at, value, basin: 0 });
       } else if (home === null) {
         home = this.descend({ ...cell, edges: cutting }, at, rivals);
         if (home !== null && covers(home, cell)) return null;
       }
     }
-    const left = { ...cell, ...rivals, edges: cutting, home };
+    const left = { ...cell, ...rivals, edges: cutting, home, nearest: bounds.nearest };
     if (lower < this.best.value - tolerance || bounds.bend > Math.max(tolerance, tieWithin / 8)) return left;
     this.lookForTie(left);
     return null;
+  }
+
+  /**
+   * The step to the optimum of the tangents of all rivals. Where only its bound counts (the cell's optimum is known), it
+   * is taken to the last digit only if it leads to what could be better than the best.
+   */
+  private tangentStep(cell: Cell, { outer, inner }: Rivals, sides: StepSides, boundCounts: boolean) {
+    const { measures } = this;
+    const step = solveTangentProgram(measures, outer, inner, sides, boundCounts);
+    if (!step?.rounded) return step;
+    const valueAt = (x: number, y: number) =>
+      measureRivals(this.search.problem, cell.chart, x, y, { outer, inner }, measures);
+    if (valueAt(cell.x + step.dx, cell.y + step.dy) > this.best.value + roundedReach) return step;
+    valueAt(cell.x, cell.y);
+    return solveTangentProgram(measures, outer, inner, sides);
   }
 
   /** From where a region is left. A known tie is one: then only better centres are sought. */
@@ -143,26 +167,6 @@ class Search {
     );
     // On an edge of what is permitted no optimum proves itself.
     if (!known && cell.edges.length === 0) this.descend(this.wholeRegion(cell), cell, this.search.rivals);
-  }
-
-  /** Whether a few rivals prove by themselves that the cell holds nothing of interest. */
-  private witnessesForbid(cell: Cell): boolean {
-    const { outer, inner } = this.witnesses;
-    if (cell.outer.length + cell.inner.length <= 2 * (outer.length + inner.length)) return false;
-    const limit = this.limit();
-    const { bounds } = this.measure(cell, this.witnesses);
-    if (bounds.lower >= limit) return true;
-    if (!bounds.usesTangents) return false;
-    const sides = sidesAround(cell, null, cell.x, cell.y, Infinity);
-    const step = solveTangentProgram(this.measures, outer, inner, sides);
-    this.work += (outer.length + inner.length) * ((step?.pivots ?? 0) + 1);
-    return step !== null && step.value - bounds.bend >= limit;
-  }
-
-  private measure(cell: Cell, rivals: Rivals) {
-    this.work += rivals.outer.length + rivals.inner.length;
-    const value = measureRivals(this.search.problem, cell.chart, cell.x, cell.y, rivals, this.measures);
-    return { value, bounds: boundsOf(cell, rivals, this.measures) };
   }
 
   /** Descends inside the region; the optimum reached, or null where the region's edge held it back. */

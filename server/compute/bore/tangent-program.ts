@@ -16,6 +16,10 @@ export interface TangentStep {
   /** Whether a side pushes: the least value lies on the region's edge. */
   readonly pushed: boolean;
   readonly pivots: number;
+  /** Stopped where a constraint was broken that the basis holds already: by rounding, which further pivots only stir. */
+  readonly rounded: boolean;
+  /** The columns that carry the value, by place: outer, then inner, then the sides. */
+  readonly basis: readonly number[];
 }
 
 const rows = 4;
@@ -36,21 +40,20 @@ export function solveTangentProgram(
   outer: Int32Array,
   inner: Int32Array,
   sides: StepSides,
+  untilRounding = false,
 ): TangentStep | null {
   const outerCount = outer.length;
   const points = outerCount + inner.length;
   const columns = points + sides.count;
-  const basis = new Int32Array(rows);
-  const amount = new Float64Array(rows);
-  const inverse = new Float64Array(rows * rows);
-  const entering = new Float64Array(rows);
-  const direction = new Float64Array(rows);
-  const cost = (k: number) =>
-    k < outerCount
-      ? value[outer[k]!]!
-      : k < points
-        ? -value[inner[k - outerCount]!]!
-        : -sides.reach[k - points]!;
+  const direction = [0, 0, 0, 0];
+  // The columns side by side: every pivot looks at all of them.
+  const column = new Float64Array(3 * points);
+  for (let k = 0; k < points; k++) {
+    const i = k < outerCount ? outer[k]! : inner[k - outerCount]!;
+    column[3 * k] = value[i]!;
+    column[3 * k + 1] = slopeX[i]!;
+    column[3 * k + 2] = slopeY[i]!;
+  }
 
   let first = 0;
   for (let k = 1; k < outerCount; k++) if (value[outer[k]!]! > value[outer[first]!]!) first = k;
@@ -60,13 +63,14 @@ export function solveTangentProgram(
   const spareY = slopeY[outer[first]!]! - slopeY[inner[second]!]!;
   const sideX = spareX > 0 ? 1 : 0;
   const sideY = spareY > 0 ? 3 : 2;
-  basis.set([first, outerCount + second, points + sideX, points + sideY]);
-  amount.set([1, 1, Math.abs(spareX), Math.abs(spareY)]);
+  const basis = [first, outerCount + second, points + sideX, points + sideY];
+  const costs = [value[outer[first]!]!, -value[inner[second]!]!, -sides.reach[sideX]!, -sides.reach[sideY]!];
+  const amount = [1, 1, Math.abs(spareX), Math.abs(spareY)];
   // The inverse of (outer, inner, ±x, ±y), written down: the sides take up what the two points leave.
   const [sx, sy] = [sideX === 0 ? 1 : -1, sideY === 2 ? 1 : -1];
   const [io, ii] = [outer[first]!, inner[second]!];
-  inverse.set([1, 0, 0, 0, 0, 1, 0, 0]);
-  inverse.set([-sx * slopeX[io]!, sx * slopeX[ii]!, sx, 0, -sy * slopeY[io]!, sy * slopeY[ii]!, 0, sy], 8);
+  const inverse = [1, 0, 0, 0, 0, 1, 0, 0];
+  inverse.push(-sx * slopeX[io]!, sx * slopeX[ii]!, sx, 0, -sy * slopeY[io]!, sy * slopeY[ii]!, 0, sy);
 
   let pivots = 0;
   for (;;) {
@@ -75,7 +79,7 @@ export function solveTangentProgram(
     let px = 0;
     let py = 0;
     for (let row = 0; row < rows; row++) {
-      const c = cost(basis[row]!);
+      const c = costs[row]!;
       top += c * inverse[row * rows]!;
       bottom += c * inverse[row * rows + 1]!;
       px += c * inverse[row * rows + 2]!;
@@ -84,37 +88,50 @@ export function solveTangentProgram(
     // π = (top, bottom, −δ): top bounds the outer tangents, −bottom the inner ones.
     let worst = slack;
     let enter = -1;
-    for (let k = 0; k < outerCount; k++) {
-      const i = outer[k]!;
-      const broken = value[i]! - slopeX[i]! * px - slopeY[i]! * py - top;
-      if (broken > worst) [worst, enter] = [broken, k];
+    for (let k = 0, at = 0; k < outerCount; k++, at += 3) {
+      const broken = column[at]! - column[at + 1]! * px - column[at + 2]! * py - top;
+      if (broken > worst) {
+        worst = broken;
+        enter = k;
+      }
     }
-    for (let k = outerCount; k < points; k++) {
-      const j = inner[k - outerCount]!;
-      const broken = slopeX[j]! * px + slopeY[j]! * py - value[j]! - bottom;
-      if (broken > worst) [worst, enter] = [broken, k];
+    for (let k = outerCount, at = 3 * outerCount; k < points; k++, at += 3) {
+      const broken = column[at + 1]! * px + column[at + 2]! * py - column[at]! - bottom;
+      if (broken > worst) {
+        worst = broken;
+        enter = k;
+      }
     }
     for (let k = points; k < columns; k++) {
       const s = k - points;
       const broken = -sides.ax[s]! * px - sides.ay[s]! * py - sides.reach[s]!;
       if (broken > worst) [worst, enter] = [broken, k];
     }
-    if (enter < 0 || pivots === pivotsMax) {
+    const rounded = untilRounding && enter >= 0 && basis.includes(enter);
+    if (enter < 0 || rounded || pivots === pivotsMax) {
       let total = 0;
       let pushed = false;
       for (let row = 0; row < rows; row++) {
-        total += cost(basis[row]!) * amount[row]!;
+        total += costs[row]! * amount[row]!;
         if (basis[row]! >= points && amount[row]! > pivotMin) pushed = true;
       }
-      return { dx: -px, dy: -py, value: total, pushed, pivots };
+      return { dx: -px, dy: -py, value: total, pushed, pivots, rounded, basis };
     }
     pivots++;
-    fillColumn(enter);
+    // The column that enters: 1 in the row of its kind, its slopes, and its cost.
+    const isPoint = enter < points;
+    const side = enter - points;
+    const sign = enter < outerCount ? 1 : -1;
+    const e0 = enter < outerCount ? 1 : 0;
+    const e1 = isPoint ? 1 - e0 : 0;
+    const e2 = isPoint ? sign * column[3 * enter + 1]! : sides.ax[side]!;
+    const e3 = isPoint ? sign * column[3 * enter + 2]! : sides.ay[side]!;
+    const cost = isPoint ? sign * column[3 * enter]! : -sides.reach[side]!;
     let leave = -1;
     let ratio = Infinity;
     for (let row = 0; row < rows; row++) {
-      let d = 0;
-      for (let k = 0; k < rows; k++) d += inverse[row * rows + k]! * entering[k]!;
+      const at = row * rows;
+      const d = inverse[at]! * e0 + inverse[at + 1]! * e1 + inverse[at + 2]! * e2 + inverse[at + 3]! * e3;
       direction[row] = d;
       if (d <= pivotMin) continue;
       const next = amount[row]! / d;
@@ -132,17 +149,17 @@ export function solveTangentProgram(
     }
     amount[leave] = ratio;
     basis[leave] = enter;
+    costs[leave] = cost;
   }
+}
 
-  function fillColumn(k: number): void {
-    if (k < outerCount) {
-      const i = outer[k]!;
-      entering.set([1, 0, slopeX[i]!, slopeY[i]!]);
-    } else if (k < points) {
-      const j = inner[k - outerCount]!;
-      entering.set([0, 1, -slopeX[j]!, -slopeY[j]!]);
-    } else {
-      entering.set([0, 0, sides.ax[k - points]!, sides.ay[k - points]!]);
-    }
-  }
+/** The points of the basis that a program over `outer` and `inner` ended with. */
+export function carriersOf({ basis }: TangentStep, outer: Int32Array, inner: Int32Array) {
+  const points = outer.length + inner.length;
+  return {
+    outer: Int32Array.from(basis.filter((k) => k < outer.length).map((k) => outer[k]!)),
+    inner: Int32Array.from(
+      basis.filter((k) => k >= outer.length && k < points).map((k) => inner[k - outer.length]!),
+    ),
+  };
 }

@@ -17,6 +17,7 @@ export function tabulateBoreFits(fits: readonly BoreFitResult[], units: Units): 
     fits.flatMap(({ centre }) => [centre.h, centre.v]),
     least,
   );
+  const reduced = fits.some(({ diameterAt20C }) => diameterAt20C !== undefined);
   return {
     caption: "Centres and sizes",
     columns: [
@@ -26,6 +27,7 @@ export function tabulateBoreFits(fits: readonly BoreFitResult[], units: Units): 
       numberColumn("U of h", units.offset),
       numberColumn("U of v", units.offset),
       numberColumn("diameter", units.bore),
+      ...(reduced ? [numberColumn("diameter at 20 °C", units.bore)] : []),
       numberColumn("roundness", units.offset),
       numberColumn("coverage", "\u00b0"),
       numberColumn("used", null),
@@ -38,6 +40,7 @@ export function tabulateBoreFits(fits: readonly BoreFitResult[], units: Units): 
       numberCell(fit.expandedUncertainty?.h, decimals),
       numberCell(fit.expandedUncertainty?.v, decimals),
       numberCell(fit.diameter, decimalsAcross(units.bore)),
+      ...(reduced ? [numberCell(fit.diameterAt20C, decimalsAcross(units.bore))] : []),
       numberCell(fit.roundness, decimals),
       numberCell(fit.arc?.coverageDeg, 1),
       numberCell(fit.used.filter(Boolean).length, 0),
