@@ -16,7 +16,8 @@ export function buildDocument(operations: readonly Operation[]): object {
     scheme: "bearer",
     description: "An API key, or the access token of a sign-in.",
   });
-  for (const operation of operations) registry.registerPath(pathOf(operation));
+  const shared = new SharedProblems(registry);
+  for (const operation of operations) registry.registerPath(pathOf(operation, shared));
   return new OpenApiGeneratorV31(registry.definitions).generateDocument({
     openapi: "3.1.0",
     info: {
@@ -44,14 +45,18 @@ const TAGS = [
     description: "Readings to centres, centres to deviations, deviations to shim moves.",
   },
   { name: "Records", description: "What was computed, by whom, from what: immutable and replayable." },
+  { name: "Machines", description: "What a machine is, revision by revision." },
+  { name: "Jobs", description: "One outage on one machine: surveys, moves, proof, signature." },
   { name: "Keys", description: "API keys for programs." },
   { name: "Members", description: "People and their roles." },
+  { name: "Webhooks", description: "Telling plant software of what happens." },
+  { name: "Outbox", description: "Mail that was kept here for want of a mail server." },
   { name: "Usage", description: "What was computed, counted." },
   { name: "Sign-in", description: "Sessions of people." },
   { name: "Service", description: "Health, versions, codes, this document." },
 ];
 
-function pathOf(operation: Operation): RouteConfig {
+function pathOf(operation: Operation, shared: SharedProblems): RouteConfig {
   const access: Access = operationAccess[operation.operationId];
   const headers = headersOf(operation, access);
   const params = paramsOf(operation);
@@ -72,13 +77,23 @@ function pathOf(operation: Operation): RouteConfig {
             body: {
               required: true,
               content: {
-                "application/json": { schema: operation.body, ...examplesOf(operation.requestExamples) },
+                [operation.lines ? "application/x-ndjson" : "application/json"]: {
+                  schema: operation.body,
+                  ...examplesOf(operation.requestExamples),
+                },
               },
             },
           }
         : {}),
+      ...(operation.file
+        ? { body: { required: true, content: fileContent(operation.file.mediaTypes) } }
+        : {}),
     },
-    responses: { [operation.response.status]: successOf(operation), ...problemsOf(operation, access) },
+    responses: {
+      [operation.response.status]: successOf(operation),
+      ...problemsOf(operation, access, shared),
+      default: anyProblem,
+    },
   };
 }
 
@@ -98,7 +113,7 @@ function paramsOf({ path, params = {} }: Operation): Record<string, z.ZodType> |
 
 function headersOf(operation: Operation, access: Access): z.ZodObject | null {
   const headers: Record<string, z.ZodType> = {};
-  if (operation.method === "post" && access.by !== "anyone") {
+  if (operation.method === "post" && access.by !== "anyone" && !operation.lines) {
     headers["Idempotency-Key"] = z.string().min(1).max(255).optional().meta({
       description: "Any text of your own. The same key and body give the first answer again.",
     });
@@ -111,7 +126,14 @@ function headersOf(operation: Operation, access: Access): z.ZodObject | null {
   return Object.keys(headers).length === 0 ? null : z.object(headers);
 }
 
+/** A body that is a file, in any of these media types. */
+function fileContent(mediaTypes: readonly string[]) {
+  const schema = z.string().meta({ format: "binary", description: "The file's bytes." });
+  return Object.fromEntries(mediaTypes.map((mediaType) => [mediaType, { schema }]));
+}
+
 function successOf({ response }: Operation) {
+  if (response.files) return { description: response.description, content: fileContent(response.files) };
   if (!response.schema) return { description: response.description };
   const mediaType = response.mediaType ?? "application/json";
   const schema =
@@ -128,35 +150,74 @@ function examplesOf(examples: (() => ExampleSet) | undefined): { examples?: Exam
   return examples ? { examples: examples() } : {};
 }
 
-/** Every problem the operation can answer, by status, each code with an example. */
-function problemsOf(operation: Operation, access: Access): Record<string, unknown> {
-  const codes = new Set<ProblemCode>([...impliedCodes(operation, access), ...operation.errors]);
-  const byStatus: Record<string, { description: string; content: Record<string, unknown> }> = {};
-  for (const code of codes) {
-    const { status, title, fix } = problemKinds[code];
-    const entry = (byStatus[status] ??= {
-      description: "",
-      content: { "application/problem+json": { schema: problemSchema, examples: {} } },
-    });
-    entry.description += `${entry.description === "" ? "" : " "}${title} (\`${code}\`).`;
-    const media = entry.content["application/problem+json"] as { examples: Record<string, unknown> };
-    media.examples[code] = { summary: title, value: problemExample(code, status, title, fix, operation) };
+/** Every problem the operation can answer, by status; operations that can answer the same share one description. */
+function problemsOf(operation: Operation, access: Access, shared: SharedProblems): Record<string, unknown> {
+  const byStatus = new Map<number, ProblemCode[]>();
+  for (const code of new Set<ProblemCode>([...impliedCodes(operation, access), ...operation.errors])) {
+    const { status } = problemKinds[code];
+    byStatus.set(status, [...(byStatus.get(status) ?? []), code]);
   }
-  return byStatus;
+  return Object.fromEntries(
+    [...byStatus].map(([status, codes]) => [
+      status,
+      { $ref: `#/components/responses/${shared.nameOf(status, codes)}` },
+    ]),
+  );
 }
 
-function problemExample(code: ProblemCode, status: number, title: string, fix: string, operation: Operation) {
-  const base = {
+/** What any call can meet before its operation is reached: a cut connection, headers too large. */
+const anyProblem = {
+  description: "Any other problem.",
+  content: { "application/problem+json": { schema: problemSchema } },
+};
+
+/** The problem responses and examples that operations refer to: written once, since most share most of them. */
+class SharedProblems {
+  private readonly names = new Map<string, string>();
+  private readonly shown = new Set<ProblemCode>();
+  constructor(private readonly registry: OpenAPIRegistry) {}
+
+  nameOf(status: number, codes: readonly ProblemCode[]): string {
+    const key = [...codes].sort().join(" ");
+    const known = this.names.get(key);
+    if (known) return known;
+    const earlier = [...this.names.values()].filter((name) => name.startsWith(`Problem${status}`)).length;
+    const name = `Problem${status}${earlier === 0 ? "" : `_${earlier + 1}`}`;
+    this.names.set(key, name);
+    this.registry.registerComponent("responses", name, {
+      description: codes.map((code) => `${problemKinds[code].title} (\`${code}\`).`).join(" "),
+      content: {
+        "application/problem+json": {
+          schema: { $ref: "#/components/schemas/Problem" },
+          examples: Object.fromEntries(codes.map((code) => [code, this.exampleOf(code)])),
+        },
+      },
+    });
+    return name;
+  }
+
+  private exampleOf(code: ProblemCode): { $ref: string } {
+    if (!this.shown.has(code)) this.registry.registerComponent("examples", code, problemExample(code));
+    this.shown.add(code);
+    return { $ref: `#/components/examples/${code}` };
+  }
+}
+
+/** What a problem with this code looks like: written once, since most operations share most codes. */
+function problemExample(code: ProblemCode) {
+  const { status, title, fix } = problemKinds[code];
+  const detail = `${title}.`;
+  const value = {
     type: `/v1/problems/${code}`,
     title,
     status,
-    detail: `${title}.`,
+    detail,
     code,
     requestId: "0193a5e0-7c00-7000-8000-00000000000a",
+    fix,
+    ...(status === 422 ? { errors: [{ pointer: "", code, detail }] } : {}),
   };
-  const errors =
-    status === 422 && operation.body ? { errors: [{ pointer: "", code, detail: `${title}.` }] } : {};
-  return { ...base, instance: operation.path, fix, ...errors };
+  return { summary: title, value };
 }
 
 /** Codes that method, access and body bring by themselves. */
@@ -173,9 +234,10 @@ function impliedCodes(operation: Operation, access: Access): ProblemCode[] {
       "session_expired",
       "scope_missing",
     );
+  if (operation.file) codes.push("media_type_unsupported", "call_too_large");
   if (operation.path.includes("{")) codes.push("not_found");
   if (operation.conditional) codes.push("precondition_required", "version_stale");
-  if (operation.method === "post" && access.by !== "anyone")
+  if (operation.method === "post" && access.by !== "anyone" && !operation.lines)
     codes.push("idempotency_in_progress", "idempotency_key_reused");
   if (operation.body) {
     codes.push(

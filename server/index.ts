@@ -15,9 +15,12 @@ import { ComputePool } from "./services/compute-pool.ts";
 import { Credentials } from "./services/credentials.ts";
 import { ensureFirstAdmin } from "./services/first-admin.ts";
 import { newId } from "./services/ids.ts";
-import { startPurge } from "./services/purge-expired.ts";
+import { startBackground } from "./services/background.ts";
 import { EngineSelfTest } from "./services/self-test.ts";
 import { deriveSecrets } from "./services/secrets.ts";
+import { Mailer } from "./mail/mailer.ts";
+import { resolveHost } from "./webhooks/check-target.ts";
+import { Listeners } from "./webhooks/events.ts";
 
 export interface StartOptions {
   readonly environment: Environment;
@@ -36,16 +39,21 @@ export function buildDeps(config: Config): Deps {
   const database = openDatabase(config.databaseUrl);
   const secrets = deriveSecrets(config.appSecret);
   const now = () => new Date();
+  const log = createLog(config.logLevel);
   return {
     config,
     database,
     secrets,
     now,
     newId,
+    random: Math.random,
+    listeners: new Listeners(database),
+    resolveHost,
+    mailer: new Mailer(config, log),
     compute: new ComputePool(),
     selfTest: new EngineSelfTest(now),
     credentials: new Credentials(database, secrets, now),
-    log: createLog(config.logLevel),
+    log,
     metrics: createMetrics(),
     shutdown: new Shutdown(),
     verifyReplies: false,
@@ -65,18 +73,19 @@ export async function startServer({ environment, announce }: StartOptions): Prom
     const url = urlOf(server, config);
     await ensureFirstAdmin(deps, announce);
     if (config.demo) await seedDemo(deps, url, announce);
-    const stopPurge = startPurge(deps);
+    const background = await startBackground(deps);
     return {
       url,
       close: async () => {
         deps.shutdown.begin();
-        stopPurge();
-        await stopServer(server, config.drainSeconds * 1000);
+        await Promise.all([background.stop(), stopServer(server, config.drainSeconds * 1000)]);
+        await deps.mailer.close();
         await deps.compute.close();
         await deps.database.sequelize.close();
       },
     };
   } catch (error) {
+    await deps.mailer.close();
     await deps.compute.close();
     await deps.database.sequelize.close();
     throw error;
@@ -84,8 +93,9 @@ export async function startServer({ environment, announce }: StartOptions): Prom
 }
 
 function setTimeouts(server: Server, { requestTimeoutSeconds }: Config): void {
-  server.requestTimeout = requestTimeoutSeconds * 1000;
-  server.headersTimeout = Math.min(15_000, server.requestTimeout);
+  // Bodies have a deadline of their own (middleware/body-deadline.ts): a stream of readings goes on.
+  server.requestTimeout = 0;
+  server.headersTimeout = Math.min(15_000, requestTimeoutSeconds * 1000);
   server.keepAliveTimeout = 65_000;
   server.on("clientError", answerClientError);
 }

@@ -48,6 +48,7 @@ export const problemKinds = {
     "The credential may not do this",
     "Use a credential with the scope named in the answer.",
   ),
+  member_required: kind(403, "Only a signed-in member may do this", "Sign in; a key cannot sign."),
   origin_refused: kind(403, "The request came from another origin", "Call from the console's own address."),
   // 404, 405, 406, 409, 412, 413, 415, 422 of the protocol, 428, 429
   not_found: kind(404, "There is nothing here", "Check the address and the id."),
@@ -70,6 +71,26 @@ export const problemKinds = {
     "An organisation keeps at least one active administrator",
     "Make another member administrator first.",
   ),
+  machine_archived: kind(409, "The machine is archived", "Restore the machine, or choose another."),
+  job_signed: kind(
+    409,
+    "The job is signed and changes no more",
+    "Make a new revision of the job, with a reason.",
+  ),
+  job_not_signed: kind(409, "The job is not signed", "Change it as it stands, or sign it first."),
+  survey_not_computed: kind(409, "The survey has not been computed", "Compute the survey first."),
+  sign_off_blocked: kind(
+    409,
+    "Something stands in the way of the signature",
+    "Settle every point named in obstacles.",
+  ),
+  entry_not_withdrawable: kind(409, "This entry cannot be withdrawn", "Add an entry that puts it right."),
+  webhook_limit_reached: kind(
+    409,
+    "The organisation has as many webhooks as it may have",
+    "Remove one that is no longer used.",
+  ),
+  webhook_inactive: kind(409, "The webhook is switched off", "Switch it on first: PATCH active."),
   version_stale: kind(
     412,
     "The resource has changed since it was read",
@@ -125,6 +146,22 @@ export const problemKinds = {
     422,
     "The password is too short or too common",
     "Choose at least 12 characters that nobody would guess.",
+  ),
+  password_wrong: kind(422, "The password is not the signing member's", "Enter your own password again."),
+  file_not_as_stated: kind(
+    422,
+    "The file is not what its media type says",
+    "Send the file with the Content-Type of what it holds.",
+  ),
+  reason_required: kind(
+    422,
+    "The order is unusual and asks for a reason",
+    "Send reason: it is kept with the move.",
+  ),
+  webhook_target_refused: kind(
+    422,
+    "Nothing is sent to that address",
+    "Use an https address on the public network, or have this network allowed by whoever runs the service.",
   ),
   invitation_invalid: kind(
     422,
@@ -215,6 +252,12 @@ export const problemKinds = {
   ),
   // 5xx
   internal_error: kind(500, "The service failed", "Send it again; if it fails again, report the requestId."),
+  mail_refused: kind(
+    502,
+    "The mail server refused the mail",
+    "Check the recipients; whoever runs the service finds the server's answer in its log.",
+  ),
+  mail_unavailable: kind(503, "The mail server cannot be reached", "Nothing was sent; try again later."),
   unavailable: kind(503, "The service cannot answer just now", "Wait as Retry-After says."),
 } as const satisfies Record<string, ProblemKind>;
 

@@ -16,6 +16,9 @@ export const limits = {
   piecesPerStack: 50,
   indicatorsPerCall: 200,
   couplingsPerCall: 2_000,
+  /** Of a call for the fewest moves: every component doubles the choices. */
+  componentsPerChoice: 40,
+  stationsPerChoice: 200,
   /** Cells of a crossed study, and readings in each: together no more than readingsPerCall. */
   cellsPerStudy: 2_000,
   repeatsPerCell: 25,
@@ -34,6 +37,31 @@ export const limits = {
   rangesPerBore: 20,
   readingsPerPlace: 100,
   addedPerBore: 1_000,
+  /** Of a Monte Carlo propagation: trials, and trials × work of one of them (`trialWork`) over the whole call. */
+  trialsMin: 1_000,
+  trialsMax: 200_000,
+  trialWorkPerCall: 30_000_000,
+  /** Trials that must be left outside the coverage interval on each side. */
+  trialsOutside: 20,
+  stationsPerMachine: 500,
+  cautionsPerMachine: 50,
+  /** Of a job: people and instruments named, readings sent at once, entries of its log. */
+  peoplePerJob: 50,
+  instrumentsPerJob: 50,
+  readingsPerPost: 200,
+  entriesPerJob: 20_000,
+  jobsPerHistory: 20,
+  /** Streams that one credential may have open in one process. */
+  watchersPerCredential: 8,
+  readingFileBytes: 10 * 1024 * 1024,
+  readingRowsPerFile: 50_000,
+  attachmentBytes: 10 * 1024 * 1024,
+  attachmentsPerJob: 200,
+  webhooksPerOrganisation: 20,
+  webhookUrlLength: 2_000,
+  /** Hours that a replaced signing secret still signs beside the new one. */
+  secretOverlapHours: 168,
+  recipientsPerMail: 20,
   idLength: 64,
   noteLength: 2_000,
   nameLength: 120,
@@ -70,8 +98,11 @@ export const bounds = {
   /** Beyond it a turn is no longer small. */
   rollRadians: { min: -0.05, max: 0.05 },
   weight: { min: 1e-12, max: 1e12 },
+  /** Of moving a part: no finer beside each other than a solver of programs tells apart. */
+  cost: { min: 0.001, max: 1e6 },
   diameterInside: { min: 0, max: 1e10 },
   temperature: { min: -460, max: 1e5 },
+  temperatureGradient: { min: -1e4, max: 1e4 },
   /** Of expansion per degree: 12e-6 sent as 12 is refused. */
   expansion: { min: -1e-3, max: 1e-3 },
   mass: { min: 0, max: 1e9 },
@@ -80,4 +111,22 @@ export const bounds = {
   /** 0 is a shaft without weight of its own. */
   density: { min: 0, max: 1e6 },
   modulus: { min: 1e-6, max: 1e10 },
+} as const;
+
+/**
+ * Work of one Monte Carlo trial: `each` for a bore, or for an axis that is searched for, and `perReading` for a reading of
+ * it, or a reference station. A unit is about the time that a least-squares circle takes for one reading.
+ */
+export const trialWork = {
+  circle: { each: 10, perReading: 1 },
+  /** Cone, tilted cylinder, arcs of a few degrees, and bores with an outlier rule. */
+  surface: { each: 250, perReading: 4 },
+  ellipse: { each: 1_000, perReading: 60 },
+  minimum_zone: { each: 8_000, perReading: 50 },
+  maximum_inscribed: { each: 4_000, perReading: 40 },
+  minimum_circumscribed: { each: 1_500, perReading: 12 },
+  /** Of a station, and again of one that sets the axis. */
+  station: 4,
+  /** An axis of minimum_zone or least_absolute. */
+  searchedAxis: { each: 12_000, perReading: 200 },
 } as const;

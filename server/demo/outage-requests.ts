@@ -32,7 +32,10 @@ export function foundCentres(): Map<string, OffsetPair> {
 }
 
 /** Where every bore lies after the moves: each by what the shims chosen move it, and settled. */
-export function leftCentres(before: AxisDeviationResult, moves: ShimMoveResult): Map<string, OffsetPair> {
+export function leftCentres(
+  before: Pick<AxisDeviationResult, "stations">,
+  moves: Pick<ShimMoveResult, "predicted">,
+): Map<string, OffsetPair> {
   const found = new Map(before.stations.map(({ id, deviation }) => [id, deviation]));
   const predicted = new Map(moves.predicted.map(({ id, deviation }) => [id, deviation]));
   const normal = seededNormal(3);

@@ -5,18 +5,23 @@ import { engineVersion } from "../compute/version.ts";
 import { sha256 } from "../services/run-calculation.ts";
 import type { ExampleSet } from "./operation.ts";
 
-const folder = new URL("../../examples/requests/", import.meta.url);
+const folder = new URL("../../examples/", import.meta.url);
 /** The moment and id of every example answer: an example must not change from day to day. */
 const EXAMPLE_ID = "0193a5e0-7c00-7000-8000-000000000001";
 const EXAMPLE_TIME = "2026-12-01T06:00:00.000Z";
 
 /** The example requests of one resource: `examples/requests/<resource>/*.json`, each a body that works as it stands. */
 export function exampleRequests(resource: string): ExampleSet {
-  const files = readdirSync(new URL(`${resource}/`, folder)).filter((name) => name.endsWith(".json"));
+  return examplesIn(`requests/${resource}`);
+}
+
+/** The bodies in a folder of `examples/`, by file name. */
+export function examplesIn(path: string): ExampleSet {
+  const files = readdirSync(new URL(`${path}/`, folder)).filter((name) => name.endsWith(".json"));
   return Object.fromEntries(
     files.sort().map((file) => {
       const name = file.replace(/\.json$/, "");
-      const value: unknown = JSON.parse(readFileSync(new URL(`${resource}/${file}`, folder), "utf8"));
+      const value: unknown = JSON.parse(readFileSync(new URL(`${path}/${file}`, folder), "utf8"));
       return [name, { summary: summaryOf(name, value), value }];
     }),
   );

@@ -14,6 +14,7 @@ export interface ProblemMembers {
   readonly errors?: readonly (Fault | AddressFault)[];
   readonly id?: string;
   readonly scope?: string;
+  readonly obstacles?: { code: string; detail: string; station: string | null }[];
   readonly limit?: number;
   readonly retryAfterSeconds?: number;
 }

@@ -1,5 +1,6 @@
 import { Router, type Request, type RequestHandler } from "express";
 import type { Deps } from "../deps.ts";
+import { bodyDeadline } from "../middleware/body-deadline.ts";
 import { authenticate } from "../middleware/authenticate.ts";
 import type { RateLimits } from "../middleware/rate-limit.ts";
 import { readBody } from "../middleware/read-body.ts";
@@ -25,9 +26,10 @@ function steps(operation: Operation, deps: Deps, limits: RateLimits): RequestHan
   return [
     label(operation),
     refuseOtherAnswers(operation),
+    ...(operation.lines ? [] : [bodyDeadline(deps.config.requestTimeoutSeconds)]),
     authenticate(deps, operation.operationId),
     ...(limit === "none" ? [] : [limit === "sign-in" ? limits.signIn : limits.standard]),
-    ...readBody,
+    ...readBody(operation),
     validate(operation),
     runOperation(operation, deps),
   ];
@@ -41,10 +43,11 @@ function label(operation: Operation): RequestHandler {
   };
 }
 
-function refuseOtherAnswers({ response: { mediaType = "application/json" } }: Operation): RequestHandler {
+function refuseOtherAnswers({ response: answered }: Operation): RequestHandler {
+  const mediaTypes = answered.files ?? [answered.mediaType ?? "application/json"];
   return (request, _response, next) => {
-    if (!request.accepts([mediaType, "application/problem+json"])) {
-      throw new HttpProblem("not_acceptable", `This answers in ${mediaType}.`);
+    if (!request.accepts([...mediaTypes, "application/problem+json"])) {
+      throw new HttpProblem("not_acceptable", `This answers in ${mediaTypes.join(", ")}.`);
     }
     next();
   };

@@ -22,6 +22,8 @@ export interface Call<Body = unknown, Query = unknown> {
   /** The body as received, and its RFC 8785 form. */
   readonly text: string;
   readonly canonicalText: string;
+  /** The file sent, where the operation takes one; empty elsewhere. */
+  readonly bytes: Buffer;
   /** What an Idempotency-Key has reserved; null when none was sent. */
   readonly claim: Claim | null;
   readonly request: Request;
@@ -32,6 +34,8 @@ export interface Reply {
   readonly status: number;
   readonly body?: unknown;
   readonly headers?: Readonly<Record<string, string>>;
+  /** Writes the answer as it comes into being, and ends it. */
+  readonly stream?: (response: Response) => Promise<void>;
 }
 
 export interface ExampleSet {
@@ -44,6 +48,8 @@ export interface SuccessResponse {
   readonly description: string;
   readonly schema?: z.ZodType;
   readonly mediaType?: string;
+  /** The media types of an answer that is a file, the first where the caller states none. */
+  readonly files?: readonly string[];
   readonly examples?: () => ExampleSet;
 }
 
@@ -62,9 +68,13 @@ export interface Operation<Body = unknown, Query = unknown> {
   readonly params?: Readonly<Record<string, z.ZodType<string>>>;
   readonly query?: z.ZodObject & z.ZodType<Query>;
   readonly body?: z.ZodType<Body>;
+  /** The body is a file, in one of these media types and no larger than this, and not JSON. */
+  readonly file?: { readonly mediaTypes: readonly string[]; readonly limitBytes: number };
   /** Domain faults of the sound parts of a body that fails its schema elsewhere. */
   readonly faultsBesideSchema?:
     ((body: unknown, schemaFaults: readonly Fault[]) => readonly Fault[]) | undefined;
+  /** The body is lines of JSON (NDJSON), each of the schema `body`; the handler takes them as they arrive. */
+  readonly lines?: boolean;
   readonly requestExamples?: () => ExampleSet;
   readonly response: SuccessResponse;
   /** Beyond those that access, body and method bring by themselves. */

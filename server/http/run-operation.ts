@@ -12,16 +12,21 @@ export function runOperation(operation: Operation, deps: Deps): RequestHandler {
   return async (request, response) => {
     const call = callOf(deps, request, response);
     const reply =
-      operation.method === "post" && call.caller
+      operation.method === "post" && call.caller && !operation.lines
         ? await runOnce(operation, call)
         : await operation.handle(call);
+    if (reply.stream) {
+      response.status(reply.status).set({ "Cache-Control": "no-store", ...reply.headers });
+      await reply.stream(response);
+      return;
+    }
     verifyReply(operation, deps, reply);
     writeReply(response, reply);
   };
 }
 
 function callOf(deps: Deps, request: Request, response: Response): Call {
-  const { caller, body, query, params, text, canonicalText } = response.locals as Omit<Call, "deps">;
+  const { caller, body, query, params, text, canonicalText, bytes } = response.locals as Omit<Call, "deps">;
   return {
     deps,
     request,
@@ -32,6 +37,7 @@ function callOf(deps: Deps, request: Request, response: Response): Call {
     params,
     text,
     canonicalText,
+    bytes,
     claim: null,
     path: request.path,
     requestId: requestIdOf(response.locals),
@@ -94,7 +100,7 @@ function verifyReply(operation: Operation, deps: Deps, reply: Reply): void {
 function writeReply(response: Response, { status, body, headers }: Reply): void {
   response.status(status).set({ "Cache-Control": "no-store", ...headers });
   if (body === undefined) response.end();
-  else if (typeof body === "string") response.send(body);
+  else if (typeof body === "string" || Buffer.isBuffer(body)) response.send(body);
   else
     response.type(status >= 400 ? "application/problem+json" : "application/json").send(JSON.stringify(body));
 }

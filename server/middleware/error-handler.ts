@@ -61,8 +61,8 @@ function bodyProblem(error: unknown): HttpProblem | null {
   const { type, status, code } = error as { type?: unknown; status?: unknown; code?: unknown };
   switch (type) {
     case "entity.too.large":
-      return new HttpProblem("call_too_large", `A body holds at most ${limits.bodyBytes} bytes.`, {
-        limit: limits.bodyBytes,
+      return new HttpProblem("call_too_large", `A body here holds at most ${limitOf(error)} bytes.`, {
+        limit: limitOf(error),
       });
     case "encoding.unsupported":
       return new HttpProblem(
@@ -77,6 +77,12 @@ function bodyProblem(error: unknown): HttpProblem | null {
   if (typeof code === "string" && /^(Z_|ERR_)/.test(code))
     return new HttpProblem("invalid_encoding", "The body cannot be decompressed.");
   return status === 400 ? new HttpProblem("malformed_request", "The request cannot be read.") : null;
+}
+
+/** The limit that the body reader was given: another for a file than for JSON. */
+function limitOf(error: object): number {
+  const { limit } = error as { limit?: unknown };
+  return typeof limit === "number" ? limit : limits.bodyBytes;
 }
 
 function isLostConnection(error: unknown): boolean {

@@ -1,3 +1,4 @@
+import { createHash } from "node:crypto";
 import canonicalize from "canonicalize";
 import type { Request, RequestHandler } from "express";
 import { z } from "zod";
@@ -13,7 +14,7 @@ export function validate(operation: Operation): RequestHandler {
     const { locals } = response;
     locals.params = checkParams(operation, request.params);
     locals.query = checkQuery(operation, request);
-    Object.assign(locals, checkBody(operation, locals.text as string));
+    Object.assign(locals, checkSent(operation, locals as { bytes: Buffer; text: string }));
     next();
   };
 }
@@ -77,6 +78,30 @@ function checkBody(operation: Operation, text: string): { body: unknown; canonic
     throw problemOfFaults([...faults, ...(operation.faultsBesideSchema?.(value, faults) ?? [])]);
   }
   return { body: operation.body.parse(value), canonicalText: canonicalize(value) ?? "" };
+}
+
+function checkSent(operation: Operation, { bytes, text }: { bytes: Buffer; text: string }) {
+  if (operation.lines) return { body: undefined, canonicalText: "" };
+  return operation.file ? checkFile(bytes) : checkBody(operation, text);
+}
+
+/**
+ * One body, or one line of several, against the schema of an operation.
+ * @throws HttpProblem naming every fault
+ */
+export function checkText<Body>(
+  operation: Pick<Operation<Body>, "body" | "faultsBesideSchema">,
+  text: string,
+) {
+  return checkBody(operation as Operation, text) as { body: Body; canonicalText: string };
+}
+
+/** A file stands for itself: two calls are the same when its bytes are. */
+function checkFile(bytes: Buffer): { body: undefined; canonicalText: string } {
+  if (bytes.length === 0) {
+    throw problemOfFaults([{ pointer: "", code: "required", detail: "The file is missing." }]);
+  }
+  return { body: undefined, canonicalText: createHash("sha256").update(bytes).digest("hex") };
 }
 
 function checkNoBody(text: string): { body: undefined; canonicalText: string } {

@@ -1,14 +1,11 @@
 import type { Migration } from "../database.ts";
+import { hash, id, time, word } from "./column-types.ts";
 
 /**
  * Every table has a primary key and is InnoDB; every row belongs to one organisation. `calculations` is keyed by
  * (createdAt, id) with no foreign key and no other unique key, so that it can be partitioned by month: the id is a
  * UUIDv7, whose first 48 bits are createdAt, so that a look-up by id still goes through the primary key.
  */
-const id = "CHAR(36) CHARACTER SET ascii COLLATE ascii_bin";
-const hash = "CHAR(64) CHARACTER SET ascii COLLATE ascii_bin";
-const word = "VARCHAR(64) CHARACTER SET ascii COLLATE ascii_bin";
-const time = "DATETIME(3)";
 
 const tables = {
   organisations: `id ${id} PRIMARY KEY, name VARCHAR(120) NOT NULL, createdAt ${time} NOT NULL`,

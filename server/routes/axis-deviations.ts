@@ -14,6 +14,7 @@ export const axisDeviationErrors: readonly ProblemCode[] = [
   "covariance_not_positive",
   "tolerance_invalid",
   "weights_incomplete",
+  "out_of_range",
 ];
 
 const createAxisDeviation = defineOperation({
@@ -23,7 +24,7 @@ const createAxisDeviation = defineOperation({
   tag: "Calculations",
   summary: "Measure deviations from the reference axis",
   description:
-    "Lays the reference axis through the reference stations and answers how far every station's centre lies from where it should, with uncertainty and verdict. The answer is kept as a record.",
+    "Lays the reference axis through the reference stations and answers how far every station's centre lies from where it should, with uncertainty and verdict; by Monte Carlo too, where it is asked for. The answer is kept as a record.",
   body: axisDeviationRequest,
   faultsBesideSchema: axisDeviationKind.faultsBesideSchema,
   requestExamples: () => exampleRequests("axis-deviations"),

@@ -18,6 +18,8 @@ export const boreFitErrors: readonly ProblemCode[] = [
   "uncertainty_incomplete",
   "radius_not_positive",
   "combination_invalid",
+  "required",
+  "out_of_range",
 ];
 
 const createBoreFit = defineOperation({
@@ -27,7 +29,7 @@ const createBoreFit = defineOperation({
   tag: "Calculations",
   summary: "Fit bore centres",
   description:
-    "Turns readings of bore walls into centres, diameters and their uncertainties. All bores of a call are fitted, or none: a refusal names every fault of every bore. The answer is kept as a record.",
+    "Turns readings of bore walls into centres, diameters and their uncertainties. A bore that states the temperature and the expansion of its gauge, its part or both also has its diameter at 20 °C (ISO 1:2016); what is not known of temperatures and coefficients is left out of its uncertainty, and centres are not touched. With monteCarlo each bore also answers whether its first-order uncertainty holds. All bores of a call are fitted, or none: a refusal names every fault of every bore. The answer is kept as a record.",
   body: boreFitRequest,
   faultsBesideSchema: boreFitKind.faultsBesideSchema,
   requestExamples: () => exampleRequests("bore-fits"),

@@ -12,6 +12,7 @@ import { readCallerNames } from "../services/caller-names.ts";
 import { findCalculation } from "../services/find-calculation.ts";
 import { readPage } from "../services/read-page.ts";
 import { replayCalculation } from "../services/replay-calculation.ts";
+import { matchesText } from "../services/text-search.ts";
 
 type Filters = z.infer<typeof listCalculationsQuery>;
 
@@ -98,19 +99,8 @@ function whereOf({
   if (keyId) conditions.push({ keyId });
   if (from) conditions.push({ createdAt: { [Op.gte]: new Date(from) } });
   if (to) conditions.push({ createdAt: { [Op.lt]: new Date(to) } });
-  if (q !== undefined) conditions.push(searchOf(q));
+  if (q !== undefined) conditions.push(matchesText("note", q));
   return { [Op.and]: conditions };
 }
-
-/** The start of an id, or every word somewhere in the note. */
-function searchOf(q: string): WhereOptions {
-  const words = q.split(/\s+/).filter((word) => word !== "");
-  const inNote = { [Op.and]: words.map((word) => ({ note: { [Op.like]: `%${literal(word)}%` } })) };
-  return /^[0-9a-f-]{4,36}$/i.test(q)
-    ? { [Op.or]: [{ id: { [Op.like]: `${q.toLowerCase()}%` } }, inNote] }
-    : inNote;
-}
-
-const literal = (text: string): string => text.replaceAll(/[\\%_]/g, "\\$&");
 
 export const calculationOperations = [listCalculations, readCalculation, replayCalculationOperation];

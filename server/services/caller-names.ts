@@ -1,3 +1,4 @@
+import type { Transaction } from "sequelize";
 import type { Database } from "../database.ts";
 import { keyPrefix } from "./key-format.ts";
 
@@ -16,18 +17,25 @@ export async function readCallerNames(
   { models }: Database,
   organisationId: string,
   rows: readonly Referring[],
+  transaction?: Transaction,
 ): Promise<CallerNames> {
+  const within = transaction ? { transaction } : {};
   const memberIds = distinct(rows.map((row) => row.memberId));
   const keyIds = distinct(rows.map((row) => row.keyId));
   const [members, keys] = await Promise.all([
     memberIds.length === 0
       ? []
-      : models.members.findAll({ where: { organisationId, id: memberIds }, attributes: ["id", "name"] }),
+      : models.members.findAll({
+          where: { organisationId, id: memberIds },
+          attributes: ["id", "name"],
+          ...within,
+        }),
     keyIds.length === 0
       ? []
       : models.apiKeys.findAll({
           where: { organisationId, id: keyIds },
           attributes: ["id", "name", "selector"],
+          ...within,
         }),
   ]);
   const memberOf = new Map(members.map(({ id, name }) => [id, { id, name }]));

@@ -6,8 +6,7 @@ import type { acceptInvitationRequest } from "../../shared/schemas/sessions.ts";
 import type { Deps } from "../deps.ts";
 import { HttpProblem, problemOfFaults } from "../http/http-problem.ts";
 import type { Member } from "../models/member.ts";
-import type { Caller } from "./caller.ts";
-import type { Claim } from "./idempotency.ts";
+import type { By } from "./author.ts";
 import { inTransaction, isDuplicateEntry } from "./in-transaction.ts";
 import { randomText } from "./key-format.ts";
 import { hashPassword, refuseWeakPassword } from "./passwords.ts";
@@ -19,12 +18,6 @@ export interface Invited {
   readonly member: Member;
   readonly token: string;
   readonly expiresAt: Date;
-}
-
-interface By {
-  readonly caller: Caller;
-  readonly claim: Claim | null;
-  readonly requestId: string;
 }
 
 /**

@@ -13,7 +13,21 @@ export type AuditAction =
   | "session.refused"
   | "session.ended"
   | "session.reuse_detected"
-  | "organisation.created";
+  | "webhook.created"
+  | "webhook.changed"
+  | "webhook.secret_replaced"
+  | "webhook.removed"
+  | "webhook.stopped"
+  | "organisation.created"
+  | "machine.created"
+  | "machine.revised"
+  | "machine.archived"
+  | "machine.restored"
+  | "job.created"
+  | "job.changed"
+  | "job.signed"
+  | "job.revised"
+  | "job.entry_withdrawn";
 
 export interface AuditEntry {
   readonly action: AuditAction;
@@ -27,7 +41,11 @@ export interface AuditEntry {
 }
 
 /** Writes what was done, by whom, in the transaction that does it. */
-export async function recordAudit(deps: Deps, transaction: Transaction, entry: AuditEntry): Promise<void> {
+export async function recordAudit(
+  deps: Pick<Deps, "database" | "now" | "newId">,
+  transaction: Transaction,
+  entry: AuditEntry,
+): Promise<void> {
   const { by } = entry;
   const memberId =
     by === null ? null : "memberId" in by ? by.memberId : by.by === "member" ? by.member.id : null;

@@ -6,7 +6,8 @@ import { problemBody, problemOfFaults, type HttpProblem } from "../http/http-pro
 import { callerOf, reply, type Call, type Reply } from "../http/operation.ts";
 import type { ComputeOutcome } from "./compute-outcome.ts";
 import { timeOfId } from "./ids.ts";
-import { writeRecords } from "./write-records.ts";
+import { deliveriesOf } from "../webhooks/events.ts";
+import { writeRecords, type RecordEntry } from "./write-records.ts";
 
 /** What every computing request may carry beside what it computes from. */
 interface Noted {
@@ -42,7 +43,12 @@ export async function runCalculation<Request extends Noted>(
   const answer = outcome.status === "succeeded" ? { ...envelope, ...outcome.answer } : null;
   const body = answer ?? problemBody(refusal as HttpProblem, requestId, call.path);
 
-  await writeRecords(deps.database, [
+  const deliveries = await deliveriesOf(deps, {
+    organisationId: caller.organisation.id,
+    type: "calculation.stored",
+    data: { id, kind: kind.kind, status: outcome.status, jobId: call.body.jobId ?? null },
+  });
+  const entries: RecordEntry[] = [
     {
       createdAt,
       id,
@@ -65,7 +71,8 @@ export async function runCalculation<Request extends Noted>(
       httpStatus: refusal?.status ?? 201,
       claim: claim?.row ?? null,
     },
-  ]);
+  ];
+  await writeRecords(deps.database, entries, deliveries);
   claim?.markSettled();
   if (refusal) throw refusal;
   return reply(201, answer, { Location: `/v1/calculations/${id}` });

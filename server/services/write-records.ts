@@ -2,6 +2,7 @@ import { QueryTypes, type Transaction } from "sequelize";
 import type { CalculationKindName } from "../calculations/calculation-kind.ts";
 import type { Database } from "../database.ts";
 import { HttpProblem } from "../http/http-problem.ts";
+import type { NewDelivery } from "../webhooks/events.ts";
 import { settleStatement, type ClaimRow } from "./idempotency.ts";
 import { inTransaction } from "./in-transaction.ts";
 
@@ -61,15 +62,21 @@ const USAGE_COLUMNS = [
 ] as const satisfies readonly (keyof RecordEntry)[];
 
 /**
- * Stores calculations with their usage events and settles their idempotency claims: all of it or nothing, in one short
+ * Stores calculations with their usage events and with what is to be told of them, and settles their idempotency claims: all of it or nothing, in one short
  * transaction. Takes a list, so that several requests can share one commit. Raw SQL, and the only file with it on the
  * way of a request: the ORM costs 220 µs a row here.
  * @throws HttpProblem idempotency_in_progress when a claim was taken over meanwhile; nothing is stored then
  */
-export async function writeRecords(database: Database, entries: readonly RecordEntry[]): Promise<void> {
+export async function writeRecords(
+  database: Database,
+  entries: readonly RecordEntry[],
+  deliveries: readonly NewDelivery[] = [],
+): Promise<void> {
   await inTransaction(database.sequelize, async (transaction) => {
     await insertRows(database, "calculations", CALCULATION_COLUMNS, entries, transaction);
     await insertRows(database, "usage_events", USAGE_COLUMNS, entries, transaction);
+    if (deliveries.length > 0)
+      await database.models.webhookDeliveries.bulkCreate(deliveries, { transaction });
     for (const { claim, httpStatus, answerText, createdAt } of entries) {
       if (!claim) continue;
       const { sql, bind } = settleStatement(claim, { status: httpStatus, answerText }, createdAt);

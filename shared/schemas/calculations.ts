@@ -6,11 +6,13 @@ export const calculationKinds = [
   "bore-fit",
   "axis-deviation",
   "shim-move",
+  "fewest-moves",
   "alignment",
   "cold-target",
   "confirmation",
   "repeatability-study",
   "measurement-plan",
+  "sight-line-setup",
 ] as const;
 export const calculationKindSchema = z.enum(calculationKinds).meta({ id: "CalculationKind" });
 

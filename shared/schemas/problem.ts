@@ -32,6 +32,10 @@ export const problemSchema = z
       description: "The stored record of a refused calculation, or the resource whose secret was shown.",
     }),
     scope: z.string().optional(),
+    obstacles: z
+      .array(z.object({ code: z.string(), detail: z.string(), station: z.string().nullable() }))
+      .optional()
+      .meta({ description: "What stands in the way of a signature." }),
     limit: z.number().optional(),
     retryAfterSeconds: z.number().int().optional(),
   })

@@ -139,7 +139,7 @@ export const shimMoveRequest = z
   })
   .meta({ id: "ShimMoveRequest" });
 
-const supportMove = z
+export const supportMove = z
   .object({ support: z.string(), h: z.number(), v: z.number() })
   .meta({ id: "SupportMove", description: "How far the bore moves at a support, in offset units." });
 

@@ -1,7 +1,9 @@
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import type { ShimMoveRequest } from "../../shared/schemas/shim-moves.ts";
+import { boreFitKind } from "../../server/calculations/bore-fit.ts";
 import { shimMoveKind } from "../../server/calculations/shim-move.ts";
 import { ComputePool } from "../../server/services/compute-pool.ts";
+import { everyFormMm } from "../support/bore-requests.ts";
 import { moveRequest } from "../support/move-requests.ts";
 
 const long: ShimMoveRequest = { ...moveRequest, shims: { cutToSize: { increment: 0.01 } } };
@@ -17,6 +19,15 @@ describe("ComputePool", () => {
     const here = shimMoveKind.answer(long);
     expect(outcome.status).toBe("succeeded");
     expect(JSON.stringify(outcome.status === "succeeded" && outcome.answer)).toBe(JSON.stringify(here));
+  });
+
+  it("draws in a thread what this thread would draw, to the last bit", async () => {
+    const trials = { ...everyFormMm, monteCarlo: { trials: 1_000, seed: 11 } };
+    const outcome = await pool.run(boreFitKind, trials);
+    expect(boreFitKind.isLong!(trials)).toBe(true);
+    expect(JSON.stringify(outcome.status === "succeeded" && outcome.answer)).toBe(
+      JSON.stringify(boreFitKind.answer(trials)),
+    );
   });
 
   it("brings back a refusal with its pointers", async () => {

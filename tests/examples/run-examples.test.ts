@@ -11,9 +11,11 @@ import type { axisDeviationResponse } from "../../shared/schemas/axis-deviations
 import type { boreFitResponse } from "../../shared/schemas/bore-fits.ts";
 import type { coldTargetResponse } from "../../shared/schemas/cold-targets.ts";
 import type { confirmationResponse } from "../../shared/schemas/confirmations.ts";
+import type { fewestMovesResponse } from "../../shared/schemas/fewest-moves.ts";
 import type { measurementPlanResponse } from "../../shared/schemas/measurement-plans.ts";
 import type { repeatabilityStudyResponse } from "../../shared/schemas/repeatability-studies.ts";
 import type { shimMoveResponse } from "../../shared/schemas/shim-moves.ts";
+import type { sightLineSetupResponse } from "../../shared/schemas/sight-line-setups.ts";
 import type { z } from "zod";
 import { makeOrganisation } from "../support/factories.ts";
 import { openListeningApp, type ListeningApp } from "../support/listening-app.ts";
@@ -55,6 +57,22 @@ function shimMoveLines({ units, cautions, result }: z.infer<typeof shimMoveRespo
           `  ${support} ${place}: from ${length(from)} to ${length(to)}, change ${length(change)}`,
       ),
     ]),
+  ];
+}
+
+function fewestMovesLines({ units, cautions, result }: z.infer<typeof fewestMovesResponse>): string[] {
+  const length = (value: number) => fixed(value, units.offset);
+  const { infeasible, cost, axis, components, advice } = result;
+  return [
+    ...cautions.map(({ text }) => `Caution: ${text}`),
+    infeasible ? `No choice: ${infeasible.reason}` : `Cost ${cost}`,
+    ...axis.float.map(({ id, h, v }) => `axis at ${id}: h ${length(h)}, v ${length(v)}`),
+    ...components.flatMap(({ id, moved, moves }) =>
+      moved
+        ? moves.map(({ support, h, v }) => `${id} at ${support}: move h ${length(h)}, v ${length(v)}`)
+        : [],
+    ),
+    ...advice.map(({ code, detail }) => `  ${code}: ${detail}`),
   ];
 }
 
@@ -123,16 +141,39 @@ function measurementPlanLines({ units, result }: z.infer<typeof measurementPlanR
   ]);
 }
 
+function sightLineSetupLines({ units, cautions, result }: z.infer<typeof sightLineSetupResponse>): string[] {
+  const vector = ({ h, v }: { h: number; v: number }) =>
+    `h ${fixed(h, units.offset)}, v ${fixed(v, units.offset)}`;
+  const { stations, adjustment, next, warnings } = result;
+  return [
+    ...cautions.map(({ text }) => `Caution: ${text}`),
+    ...stations.map(
+      ({ id, off, within }) => `${id}: beam off ${vector(off)}; ${within ? "within" : "not within"}`,
+    ),
+    ...(adjustment === null
+      ? []
+      : [
+          `Source: shift ${vector(adjustment.shift)}`,
+          `Source: tilt h ${fixed(adjustment.tiltMilliradians.h, "mrad")}, v ${fixed(adjustment.tiltMilliradians.v, "mrad")}`,
+          ...(adjustment.moves ?? []).map((move) => `  ${move.at}: move ${vector(move)}`),
+        ]),
+    `Next: ${next}`,
+    ...warnings.map(({ code, detail }) => `  ${code}: ${detail}`),
+  ];
+}
+
 /** What a script must print of a stored answer, beside the record's id. */
 const linesOf: Readonly<Record<string, (answer: never) => string[]>> = {
   "bore-fits": boreFitLines,
   "axis-deviations": axisDeviationLines,
   "shim-moves": shimMoveLines,
+  "fewest-moves": fewestMovesLines,
   alignments: alignmentLines,
   "cold-targets": coldTargetLines,
   confirmations: confirmationLines,
   "repeatability-studies": repeatabilityStudyLines,
   "measurement-plans": measurementPlanLines,
+  "sight-line-setups": sightLineSetupLines,
 };
 
 const resources = Object.keys(linesOf);

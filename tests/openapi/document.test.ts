@@ -9,9 +9,17 @@ import { operationAccess, type Access, type OperationId } from "../../shared/acc
 import { problemKinds, type ProblemCode } from "../../shared/error-codes.ts";
 import { operations } from "../../server/routes/index.ts";
 
+interface Example {
+  summary: string;
+  value: unknown;
+}
 interface Media {
   schema?: object;
-  examples?: Record<string, { summary: string; value: unknown }>;
+  examples?: Record<string, Example | { $ref: string }>;
+}
+interface Answer {
+  description: string;
+  content?: Record<string, Media>;
 }
 interface PathOperation {
   operationId: string;
@@ -20,20 +28,47 @@ interface PathOperation {
   tags: string[];
   security: object[];
   requestBody?: { content: Record<string, Media> };
-  responses: Record<string, { description: string; content?: Record<string, Media> }>;
+  responses: Record<string, Answer>;
 }
 interface Document {
   openapi: string;
   paths: Record<string, Record<string, PathOperation>>;
-  components: { schemas: Record<string, object> };
+  components: {
+    schemas: Record<string, object>;
+    examples: Record<string, Example>;
+    responses: Record<string, Answer>;
+  };
 }
 
 const file = new URL("../../openapi/openapi.json", import.meta.url);
 const text = readFileSync(file, "utf8");
 const document = JSON.parse(text) as Document;
 const described = Object.entries(document.paths).flatMap(([path, item]) =>
-  Object.entries(item).map(([method, operation]) => ({ path, method, ...operation })),
+  Object.entries(item).map(([method, operation]) => ({
+    path,
+    method,
+    ...operation,
+    responses: Object.fromEntries(
+      Object.entries(operation.responses).map(([status, answer]) => [status, resolvedAnswer(answer)]),
+    ),
+  })),
 );
+
+/** A response as it stands, or the component that it refers to. */
+function resolvedAnswer(answer: Answer | { $ref: string }): Answer {
+  if (!("$ref" in answer)) return answer;
+  const found = document.components.responses[answer.$ref.replace("#/components/responses/", "")];
+  if (!found) throw new Error(`${answer.$ref} refers to nothing.`);
+  return found;
+}
+
+/** An example as it stands, or the component that it refers to. */
+function resolved(example: Example | { $ref: string }): Example {
+  if (!("$ref" in example)) return example;
+  const found = document.components.examples[example.$ref.replace("#/components/examples/", "")];
+  if (!found) throw new Error(`${example.$ref} refers to nothing.`);
+  return found;
+}
 
 describe("the OpenAPI document", () => {
   it("stands in openapi/openapi.json as it is served: run `npm run openapi` after a change", () => {
@@ -84,13 +119,16 @@ describe("the OpenAPI document", () => {
 
       it("has an example of its request", () => {
         const body = operation.requestBody?.content["application/json"];
-        if (operation.requestBody) expect(Object.keys(body?.examples ?? {}).length).toBeGreaterThan(0);
+        if (body) expect(Object.keys(body.examples ?? {}).length).toBeGreaterThan(0);
+        else if (operation.requestBody) expect(Object.keys(operation.requestBody.content)).not.toEqual([]);
       });
 
       it("has an example of each of its problems, true to the catalogue", () => {
         for (const [status, { content }] of Object.entries(operation.responses)) {
-          if (Number(status) < 400) continue;
-          const examples = Object.entries(content?.["application/problem+json"]?.examples ?? {});
+          if (status === "default" || Number(status) < 400) continue;
+          const examples = Object.entries(content?.["application/problem+json"]?.examples ?? {}).map(
+            ([code, example]) => [code, resolved(example)] as const,
+          );
           expect(examples.length).toBeGreaterThan(0);
           for (const [code, { value }] of examples) {
             expect(value).toMatchObject({
@@ -110,7 +148,8 @@ describe("the OpenAPI document", () => {
         for (const { schema, examples = {} } of media) {
           if (!schema) continue;
           const validate = compile(schema);
-          for (const [name, { value }] of Object.entries(examples)) {
+          for (const [name, example] of Object.entries(examples)) {
+            const { value } = resolved(example);
             expect(validate(value), `${name}: ${JSON.stringify(validate.errors)}`).toBe(true);
           }
         }

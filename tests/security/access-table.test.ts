@@ -17,8 +17,9 @@ describe("the access table", () => {
 
   const call = (operation: Operation, token?: string) => {
     const path = operation.path
-      .replace("{id}", "0193a5e0-7c00-7000-8000-000000000001")
-      .replace("{code}", "not_found");
+      .replace("{code}", "not_found")
+      .replace("{revision}", "1")
+      .replaceAll(/\{\w+\}/g, "0193a5e0-7c00-7000-8000-000000000001");
     const sent = app.call()[operation.method](path);
     return token === undefined ? sent : sent.set("Authorization", `Bearer ${token}`);
   };

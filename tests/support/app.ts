@@ -1,3 +1,6 @@
+import { mkdtempSync, rmSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
 import type { Express } from "express";
 import request from "supertest";
 import { createApp } from "../../server/app.ts";
@@ -17,6 +20,9 @@ export interface TestApp {
   close(): Promise<void>;
 }
 
+/** Mails and other files of a test go where they go away with it. */
+const makeFolder = (): string => mkdtempSync(join(tmpdir(), "borewright-app-"));
+
 const ENVIRONMENT: Environment = {
   APP_SECRET: "test-only-secret-0123456789abcdefghij",
   LOG_LEVEL: "silent",
@@ -30,7 +36,13 @@ export async function openTestApp(
   overrides: Partial<Deps> = {},
 ): Promise<TestApp> {
   const database = await openTestDatabase();
-  const config = readConfig({ ...ENVIRONMENT, DATABASE_URL: database.url, ...environment });
+  const folder = makeFolder();
+  const config = readConfig({
+    ...ENVIRONMENT,
+    DATABASE_URL: database.url,
+    DATA_DIR: folder,
+    ...environment,
+  });
   let offsetMs = 0;
   const now = () => new Date(Date.now() + offsetMs);
   const built = buildDeps(config);
@@ -51,9 +63,11 @@ export async function openTestApp(
     },
     call: () => request(app),
     close: async () => {
+      await deps.mailer.close();
       await deps.compute.close();
       await deps.database.sequelize.close();
       await database.drop();
+      rmSync(folder, { recursive: true, force: true });
     },
   };
 }

@@ -13,6 +13,8 @@ export interface TestOrganisation {
   /** An access token of the member of each role. */
   readonly tokens: Readonly<Record<Role, string>>;
   key(...scopes: Scope[]): Promise<{ id: string; secret: string }>;
+  /** A new access token, for a test that has moved the clock past the first. */
+  session(role: Role): Promise<string>;
 }
 
 /** A fresh organisation with a signed-in member of each role: every test brings its own. */
@@ -49,6 +51,10 @@ export async function makeOrganisation(deps: Deps): Promise<TestOrganisation> {
     id,
     members,
     tokens,
+    session: async (role) => {
+      const member = members[role] as Member & { organisation: Organisation };
+      return (await startSession(deps, member, "test")).accessToken.text;
+    },
     key: async (...scopes) => {
       const { row, secret } = await issueKey(
         deps,

@@ -18,7 +18,7 @@ const sameZWithin = 1e-9;
  * at two it does not move. Amounts are the move, in mm, at the support farthest from the pivot.
  */
 export function modesOf(
-  supports: readonly MoveSupport[],
+  supports: readonly Pick<MoveSupport, "zMm" | "blocked">[],
   stationZMm: readonly number[],
   plane: Plane,
 ): Mode[] {

@@ -1,0 +1,103 @@
+import { createHash } from "node:crypto";
+import { limits } from "../../shared/limits.ts";
+import type { ReadingPreview } from "../../shared/schemas/reading-files.ts";
+import type { Deps } from "../deps.ts";
+import { HttpProblem } from "../http/http-problem.ts";
+import { parseCsv } from "../jobs/reading-files/parse-csv.ts";
+import { mapColumns, readingColumns, type ReadingColumn } from "../jobs/reading-files/reading-columns.ts";
+import { readingsOfTable } from "../jobs/reading-files/readings-of-table.ts";
+import { UnreadableFile, type Table, type TableFault } from "../jobs/reading-files/table.ts";
+import { checkedReadings } from "./job-computations.ts";
+import type { LoadedJob } from "./job-store.ts";
+
+interface Sent {
+  readonly name: string;
+  readonly columns?: string | undefined;
+  readonly ignore?: string | undefined;
+  readonly content: Buffer;
+}
+
+/**
+ * Reads a file of readings as far as it can be read: what each column is taken for, the readings, and every fault with
+ * its line, those that the engine finds among them. Nothing is stored.
+ */
+export async function previewReadings(
+  deps: Deps,
+  loaded: LoadedJob,
+  surveyId: string,
+  { name, columns = "", ignore = "", content }: Sent,
+): Promise<ReadingPreview> {
+  const sha256 = createHash("sha256").update(content).digest("hex");
+  const file = { name, bytes: content.length, sha256 };
+  const nothing = { file, delimiter: null, decimal: null, columns: [], readings: [] };
+  const table = tryTable(content);
+  if (table instanceof UnreadableFile) return { ...nothing, faults: [table.fault] };
+
+  const mapped = mapColumns(table.head, { names: namesOf(columns), ignored: listOf(ignore) });
+  const read =
+    mapped.faults.length > 0
+      ? { readings: [], lines: [], decimal: null, faults: [] }
+      : readingsOfTable(table, mapped.columns, loaded.machine.units);
+  const faults = [...mapped.faults, ...read.faults];
+  return {
+    file,
+    delimiter: table.delimiter,
+    decimal: read.decimal,
+    columns: [...mapped.columns],
+    readings: [...read.readings],
+    faults: faults.length > 0 ? faults : await engineFaults(deps, loaded, surveyId, read),
+  };
+}
+
+function tryTable(content: Buffer): Table | UnreadableFile {
+  try {
+    return parseCsv(content);
+  } catch (error) {
+    if (error instanceof UnreadableFile) return error;
+    throw error;
+  }
+}
+
+/** What the engine says of readings that can be read, at the line on which each begins. */
+async function engineFaults(
+  deps: Deps,
+  loaded: LoadedJob,
+  surveyId: string,
+  { readings, lines }: Pick<ReturnType<typeof readingsOfTable>, "readings" | "lines">,
+): Promise<TableFault[]> {
+  if (readings.length > limits.readingsPerPost) {
+    const detail = `A file holds at most ${limits.readingsPerPost} readings.`;
+    return [{ line: 1, column: null, code: "too_many_items", detail }];
+  }
+  try {
+    await checkedReadings(deps, loaded, surveyId, readings, null);
+    return [];
+  } catch (error) {
+    if (!(error instanceof HttpProblem) || error.status !== 422) throw error;
+    return (error.members.errors ?? []).map((fault) => {
+      const pointer = "pointer" in fault ? fault.pointer : "";
+      const [, , index = "", member = null] = pointer?.split("/") ?? [];
+      return { line: lines[Number(index)] ?? 1, column: member, code: fault.code, detail: fault.detail };
+    });
+  }
+}
+
+const listOf = (text: string): string[] =>
+  text
+    .split(",")
+    .map((part) => part.trim())
+    .filter((part) => part !== "");
+
+/** @throws HttpProblem invalid_parameter for a name that no column has */
+function namesOf(columns: string): Map<string, ReadingColumn> {
+  return new Map(
+    listOf(columns).map((pair) => {
+      const [ours = "", theirs = ""] = pair.split(/=(.*)/s).map((part) => part.trim());
+      if (ours in readingColumns && theirs !== "") return [theirs, ours as ReadingColumn];
+      const detail = `"${pair.slice(0, limits.echoedTextLength)}" is not of the form column=head; columns: ${Object.keys(readingColumns).join(", ")}.`;
+      throw new HttpProblem("invalid_parameter", detail, {
+        errors: [{ parameter: "columns", code: "invalid_parameter", detail }],
+      });
+    }),
+  );
+}

@@ -1,0 +1,198 @@
+import { createHash } from "node:crypto";
+import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { asFoundReadings } from "../../server/demo/fellgate-job.ts";
+import type { Reading } from "../../shared/schemas/job-entries.ts";
+import type { ReadingPreview } from "../../shared/schemas/reading-files.ts";
+import { openTestApp, type TestApp } from "../support/app.ts";
+import { makeOrganisation } from "../support/factories.ts";
+import { JobDriver } from "../support/fellgate-job.ts";
+
+const head = "station,form,taken at,person,upper half,sense,zero,gauge sag (mm),clock (deg),reading (mm)";
+const four = (station: string, readings: readonly (string | number)[], at = "2026-11-04T07:40:00Z") =>
+  readings.map(
+    (reading, index) =>
+      `${station},turned_gauge,${at},Ines Alder,on,larger_is_farther,nominal,0.02,${index * 90},${reading}`,
+  );
+const sound = [head, ...four("brg-1", [0.12, 0.05, -0.1, -0.03])].join("\r\n");
+
+describe("files of readings", () => {
+  let app: TestApp;
+  let job: JobDriver;
+  let survey: string;
+  beforeAll(async () => {
+    app = await openTestApp();
+    job = new JobDriver(app, await makeOrganisation(app.deps));
+    await job.start();
+    survey = await job.add("/surveys", { stage: "as_found", sameSetUp: false });
+  });
+  afterAll(() => app.close());
+
+  const send = async (kind: "reading-previews" | "reading-files", content: string | Buffer, query = "") => {
+    const { status, body } = await app
+      .call()
+      .post(`/v1/jobs/${job.id}/surveys/${survey}/${kind}?name=readings.csv${query}`)
+      .set("Authorization", `Bearer ${job.token}`)
+      .set("Content-Type", "text/csv")
+      .send(content);
+    return { status, body: body as Record<string, unknown> };
+  };
+  const preview = async (content: string | Buffer, query = "") =>
+    (await send("reading-previews", content, query)).body as unknown as ReadingPreview;
+  const faults = async (content: string | Buffer, query = "") =>
+    (await preview(content, query)).faults.map(({ line, column, code }) => [line, column, code]);
+
+  it("previews what each column is and each reading holds, and stores nothing", async () => {
+    const before = (await job.read()).version;
+    const { faults: none, readings, columns, delimiter, decimal } = await preview(sound);
+    expect(none).toEqual([]);
+    expect([delimiter, decimal]).toEqual([",", "point"]);
+    expect(columns.at(-1)).toEqual({ header: "reading (mm)", column: "reading", unit: "mm" });
+    expect(readings).toEqual([
+      {
+        station: "brg-1",
+        form: "turned_gauge",
+        takenAt: "2026-11-04T07:40:00.000Z",
+        person: "Ines Alder",
+        upperHalf: "on",
+        sense: "larger_is_farther",
+        zero: "nominal",
+        gaugeSag: 0.02,
+        readings: [
+          { clockDeg: 0, reading: 0.12 },
+          { clockDeg: 90, reading: 0.05 },
+          { clockDeg: 180, reading: -0.1 },
+          { clockDeg: 270, reading: -0.03 },
+        ],
+      },
+    ]);
+    expect((await job.read()).version).toBe(before);
+  });
+
+  it("reads the same from semicolons with decimal commas, from tabs, with a mark at the start, in mil", async () => {
+    const { readings } = await preview(sound);
+    const commas = sound.replaceAll(",", ";").replaceAll(".", ",");
+    expect((await preview(commas)).readings).toEqual(readings);
+    expect((await preview(commas)).decimal).toBe("comma");
+    expect((await preview(sound.replaceAll(",", "\t"))).readings).toEqual(readings);
+    expect(
+      (await preview(Buffer.concat([Buffer.from([0xef, 0xbb, 0xbf]), Buffer.from(sound)]))).readings,
+    ).toEqual(readings);
+    const mil = sound.replace("reading (mm)", "reading (mil)").replace(/,0\.12$/m, ",10");
+    const [converted] = (await preview(mil)).readings as Extract<Reading, { form: "turned_gauge" }>[];
+    // 1 mil = 0.0254 mm exactly (international inch, 1959).
+    expect(converted?.readings[0]?.reading).toBe(0.254);
+  });
+
+  it("takes columns of other names for what the caller says, and leaves out what is to be ignored", async () => {
+    const theirs = sound.replace("station", "Place").replace("reading (mm)", "Dial (mm),Remark");
+    expect(await faults(theirs)).toContainEqual([1, "Place", "unknown_field"]);
+    expect(await faults(theirs, "&columns=station=Place,reading=Dial&ignore=Remark")).toEqual([]);
+    expect((await send("reading-previews", theirs, "&columns=colour=Place")).body).toMatchObject({
+      status: 400,
+      code: "invalid_parameter",
+    });
+  });
+
+  it("names every fault with its line and column, and takes empty for missing, never for 0", async () => {
+    const lines = [
+      head,
+      ...four("brg-1", [0.12, "", "=1+1", '"1.234,5"']),
+      ...four("brg-9", [1, 2, 3, 4], "yesterday"),
+    ];
+    expect(await faults(lines.join("\n"))).toEqual(
+      expect.arrayContaining([
+        [4, "reading (mm)", "wrong_type"],
+        [5, "reading (mm)", "wrong_type"],
+        [6, "taken at", "wrong_type"],
+        [3, "reading", "required"],
+      ]),
+    );
+  });
+
+  it("says what the engine refuses at the line where the reading begins", async () => {
+    const lines = [
+      head,
+      ...four("brg-1", [0.1, 0, 0, 0]),
+      ...four("brg-2", [0.1, 0.2], "2026-11-04T08:00:00Z"),
+    ];
+    expect(await faults(lines.join("\n"))).toEqual([[6, "readings", "too_few_points"]]);
+    expect(await faults([head, ...four("brg-99", [0, 0, 0, 0])].join("\n"))).toEqual([
+      [2, "station", "unknown_reference"],
+    ]);
+  });
+
+  it.each([
+    ["units left out", sound.replace("reading (mm)", "reading"), "units_missing"],
+    ["a unit that is none", sound.replace("reading (mm)", "reading (furlong)"), "choice_unknown"],
+    ["a column twice", sound.replace("zero", "reading (mm)"), "duplicate_id"],
+    ["both decimal signs", sound.replaceAll(",", ";").replace(";0.12", ";0,12"), "combination_invalid"],
+    ["an open quote", `${head}\n"brg-1,turned_gauge`, "text_invalid"],
+    ["a head alone", head, "too_few_items"],
+    ["latin-1 bytes", Buffer.from("station;Stra\xdfe", "latin1"), "invalid_encoding"],
+    ["UTF-16", Buffer.from(`\ufeff${sound}`, "utf16le"), "invalid_encoding"],
+    ["a zip archive", Buffer.concat([Buffer.from("PK\x03\x04"), Buffer.alloc(64, 0xff)]), "invalid_encoding"],
+    [
+      "two senses in one reading",
+      sound.replace("larger_is_farther", "larger_is_nearer"),
+      "combination_invalid",
+    ],
+  ])("refuses %s with a code", async (_what, content, code) => {
+    expect((await faults(content)).map(([, , given]) => given)).toContain(code);
+    const { status, body } = await send("reading-files", content);
+    expect(status).toBe(code === "invalid_encoding" ? 400 : 422);
+    expect((body["errors"] as { code: string }[]).map((error) => error.code)).toContain(code);
+  });
+
+  it("keeps text that looks like a formula as the text it is", async () => {
+    const lines = sound.replaceAll("Ines Alder", "=HYPERLINK(A1)");
+    const [reading] = (await preview(lines)).readings;
+    expect(reading?.person).toBe("=HYPERLINK(A1)");
+  });
+
+  it("refuses a file of 50 MB before reading it all", async () => {
+    const { status, body } = await send("reading-files", Buffer.alloc(50 * 1024 * 1024, 0x20)).catch(() => ({
+      status: 413,
+      body: { code: "call_too_large" },
+    }));
+    expect([status, body["code"]]).toEqual([413, "call_too_large"]);
+  });
+
+  it("stores a sound file with its readings, and gives its bytes back", async () => {
+    const { status, body } = await send("reading-files", sound);
+    expect(status).toBe(201);
+    const { id, sha256 } = body["file"] as { id: string; sha256: string };
+    expect(sha256).toBe(createHash("sha256").update(sound).digest("hex"));
+    const stored = (await job.read()).surveys[0]?.readings.at(-1);
+    expect(stored?.sourceFile).toEqual({ id, name: "readings.csv", sha256 });
+    const { text } = await app
+      .call()
+      .get(`/v1/jobs/${job.id}/files/${id}`)
+      .set("Authorization", `Bearer ${job.token}`);
+    expect(text).toBe(sound);
+  });
+
+  it("takes the whole of the demo's survey as one file, and fits it as the same readings sent as JSON", async () => {
+    const readings = asFoundReadings();
+    const columns = `${head},h (mm),v (mm),seen,closing,nominal diameter (mm),reading uncertainty (mm)`;
+    const lines = readings.flatMap((reading) => {
+      const common = `${reading.station},${reading.form},${reading.takenAt},Ines Alder,on`;
+      const last = `${reading.seen ?? ""},${reading.closing ? "yes" : ""},${reading.nominalDiameter},${reading.readingUncertainty}`;
+      if (reading.form === "turned_gauge") {
+        return reading.readings.map(
+          (one) =>
+            `${common},${reading.sense},${reading.zero},${reading.gaugeSag},${one.clockDeg},${one.reading},,,${last}`,
+        );
+      }
+      if (reading.form !== "points") return [];
+      return reading.points.map(({ h, v }) => `${common},,,,,,${h},${v},${last}`);
+    });
+    const { faults: none, readings: read } = await preview([columns, ...lines].join("\n"));
+    expect(none).toEqual([]);
+    const bare = (list: readonly Reading[]) =>
+      list.map(({ takenAt, ...one }) => {
+        const { outliers: _rule, instrument: _with, ...rest } = one as Reading & { outliers?: unknown };
+        return { ...rest, at: Date.parse(takenAt) };
+      });
+    expect(bare(read)).toEqual(bare(readings));
+  });
+});
