@@ -112,6 +112,7 @@ export const operationAccess = {
   readAttachment: readJobs,
   readReport: readJobs,
   readReportFile: readJobs,
+  mailReport: writeJobs,
   listJobFigures: readJobs,
   readJobFigure: readJobs,
   signJob: grant("jobs:write", "admin", "engineer"),

@@ -11,11 +11,14 @@ export const databaseNeeds = [
   { program: "my_print_defaults", package: "mariadb-client-core" },
 ];
 
-/** What the tests run beside the service: a real browser, and the two languages of the examples. */
+/** What the tests run beside the service: a real browser, the two languages of the examples, readers of the reports. */
 export const testNeeds = [
   { program: "chromium", package: "chromium" },
   { program: "curl", package: "curl" },
   { program: "python3", package: "python3" },
+  { program: "pdftotext", package: "poppler-utils" },
+  { program: "soffice", package: "libreoffice-calc-nogui" },
+  { program: "ezdxf", package: "python3-ezdxf" },
 ];
 
 /** SIGINT stops apt at once while it downloads; while dpkg works apt ignores it and dpkg is never cut short. */

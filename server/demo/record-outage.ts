@@ -1,4 +1,3 @@
-import canonicalize from "canonicalize";
 import type { z } from "zod";
 import { axisDeviationResponse } from "../../shared/schemas/axis-deviations.ts";
 import { boreFitResponse } from "../../shared/schemas/bore-fits.ts";
@@ -10,7 +9,7 @@ import { shimMoveKind } from "../calculations/shim-move.ts";
 import type { Deps } from "../deps.ts";
 import { HttpProblem } from "../http/http-problem.ts";
 import type { Caller } from "../services/caller.ts";
-import { runCalculation } from "../services/run-calculation.ts";
+import { storeCalculation } from "../services/store-calculation.ts";
 import {
   cutShortRequest,
   deviationRequest,
@@ -50,7 +49,7 @@ export async function recordOutage(deps: Deps, caller: Caller): Promise<void> {
 }
 
 interface Target<Request, Response> {
-  readonly kind: CalculationKind<Request, object>;
+  readonly kind: CalculationKind<Request, { result: unknown }>;
   readonly response: z.ZodType<Response>;
   readonly path: string;
 }
@@ -59,13 +58,8 @@ function runnerOf(deps: Deps, caller: Caller) {
   return async <Request extends { readonly note?: string | null | undefined }, Response>(
     { kind, response, path }: Target<Request, Response>,
     body: Request,
-  ): Promise<Response> => {
-    const canonicalText = canonicalize(body);
-    if (canonicalText === undefined) throw new Error("A request is a JSON object.");
-    const text = JSON.stringify(body);
-    const call = { deps, caller, body, text, canonicalText, claim: null, requestId: "demo", path };
-    return response.parse((await runCalculation(kind, call)).body);
-  };
+  ): Promise<Response> =>
+    response.parse(await storeCalculation({ deps, caller, requestId: "demo" }, { kind, path }, body));
 }
 
 /** The demo shows a failed record too; one that did not fail would be a fault of ours. */

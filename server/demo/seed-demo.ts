@@ -6,6 +6,7 @@ import type { Caller } from "../services/caller.ts";
 import { createMembers } from "../services/first-admin.ts";
 import { issueKey } from "../services/issue-key.ts";
 import { randomText } from "../services/key-format.ts";
+import { recordJob } from "./record-job.ts";
 import { recordOutage } from "./record-outage.ts";
 
 /** Invented people of an invented works. */
@@ -18,7 +19,8 @@ const PEOPLE: readonly { name: string; email: string; role: Role }[] = [
 ];
 
 /**
- * Makes the demo: an organisation with a member of each role, a key, and the records of an outage. What is there already
+ * Makes the demo: an organisation with a member of each role, a key, the records of an outage, and a machine with a
+ * signed job. What is there already
  * stays, so that a start that was cut short is completed by the next. Passwords are made up anew for each installation,
  * told at the first start and kept in DATA_DIR for its owner alone.
  */
@@ -35,7 +37,11 @@ export async function seedDemo(deps: Deps, url: string, announce: (line: string)
   const hasKey = (await apiKeys.count({ where: { organisationId: organisation.id } })) > 0;
   const call = hasKey || !admin ? [] : await makeKey(deps, memberCaller(admin, organisation), url);
   const engineer = await memberOf("engineer");
-  if (engineer) await recordOutage(deps, memberCaller(engineer, organisation));
+  if (engineer) {
+    const caller = memberCaller(engineer, organisation);
+    await recordOutage(deps, caller);
+    await recordJob(deps, { caller, claim: null, requestId: "demo" });
+  }
 
   if (signIns.length === 0) announce(`The demo's sign-ins are in ${signInsFile(deps)}.`);
   for (const line of [...signIns, ...call]) announce(line);

@@ -6,6 +6,7 @@ import type { MachineHistory } from "../../shared/schemas/machine-history.ts";
 import type { MachineDocument } from "../../shared/schemas/machines.ts";
 import { convertLength } from "../../shared/figures/write-number.ts";
 import { confirmationKind } from "../calculations/confirmation.ts";
+import { isDefinite } from "../compute/confirmation/survey-change.ts";
 
 type History = MachineHistory["stations"][number];
 type Place = NonNullable<History["outages"][number]["asFound"]>;
@@ -121,7 +122,7 @@ function driftsBetween(
   const survey = (places: ReadonlyMap<string, Measured>): ConfirmationRequest["before"] => ({
     stations: shared.map(({ id, z }) => {
       const { position, covariance, dof } = places.get(id) as Measured;
-      return { id, z, centre: position, covariance, dof };
+      return { id, z, centre: position, covariance: testable(covariance), dof };
     }),
   });
   const { axial, bore, offset } = newest.units;
@@ -150,6 +151,15 @@ function driftsBetween(
       ],
     ]),
   );
+}
+
+/**
+ * A station that set a two-station axis lies on it by definition: its covariance is 0, and its drift is
+ * not tested.
+ */
+function testable(covariance: Place["covariance"]): Place["covariance"] {
+  const [[hh = Number.NaN, hv = Number.NaN] = [], [, vv = Number.NaN] = []] = covariance ?? [];
+  return isDefinite({ hhMm2: hh, hvMm2: hv, vvMm2: vv }) ? covariance : null;
 }
 
 function targetOf({ machine }: JobRecord, id: string): unknown {

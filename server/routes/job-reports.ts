@@ -4,6 +4,9 @@ import { callerOf, defineOperation, reply, type Call, type Reply } from "../http
 import { reportFormats } from "../reports/index.ts";
 import type { ReportFormat } from "../reports/report-format.ts";
 import { revisionQuery } from "../../shared/schemas/jobs.ts";
+import { reportMail, reportMailRequest } from "../../shared/schemas/report-mails.ts";
+import { byOf } from "../http/call-parts.ts";
+import { mailReport } from "../services/mail-report.ts";
 import { makeReport } from "../services/make-report.ts";
 
 const tag = "Jobs";
@@ -47,6 +50,26 @@ const readReportFile = defineOperation({
   },
 });
 
+const mailReportOperation = defineOperation({
+  operationId: "mailReport",
+  method: "post",
+  path: "/v1/jobs/{id}/report-mails",
+  tag,
+  summary: "Mail a job's report",
+  description: "To named recipients, in the forms asked for; a report of a job that is not signed says so.",
+  body: reportMailRequest,
+  requestExamples: () => ({
+    owner: {
+      summary: "To the owner's engineer",
+      value: { to: ["owner@fellgate.example"], formats: ["pdf", "xlsx"], message: "As agreed on site." },
+    },
+  }),
+  response: { status: 201, description: "What was sent.", schema: reportMail },
+  errors: ["mail_refused", "mail_unavailable"],
+  handle: async (call) =>
+    reply(201, await mailReport(call.deps, call.params.id ?? "", call.body, byOf(call))),
+});
+
 async function answer(
   call: Pick<Call, "deps" | "caller" | "params">,
   format: ReportFormat,
@@ -67,4 +90,4 @@ async function answer(
   });
 }
 
-export const jobReportOperations = [readReport, readReportFile];
+export const jobReportOperations = [readReport, readReportFile, mailReportOperation];

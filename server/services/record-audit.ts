@@ -27,7 +27,8 @@ export type AuditAction =
   | "job.changed"
   | "job.signed"
   | "job.revised"
-  | "job.entry_withdrawn";
+  | "job.entry_withdrawn"
+  | "job.report_mailed";
 
 export interface AuditEntry {
   readonly action: AuditAction;

@@ -7,6 +7,7 @@ import { seedDemo } from "../../server/demo/seed-demo.ts";
 import { axisDeviationRequest, axisDeviationResponse } from "../../shared/schemas/axis-deviations.ts";
 import { boreFitResponse } from "../../shared/schemas/bore-fits.ts";
 import type { calculationPage, calculationRecord } from "../../shared/schemas/calculations.ts";
+import type { jobPage, jobRecord } from "../../shared/schemas/jobs.ts";
 import { shimMoveRequest } from "../../shared/schemas/shim-moves.ts";
 import { openListeningApp, type ListeningApp } from "../support/listening-app.ts";
 import { runProgram } from "../support/run-program.ts";
@@ -57,16 +58,24 @@ describe("the demo", () => {
     return answer.body as Body;
   }
 
-  /** The records in the order made, whole. */
+  /** The records of the outage in the order made, whole; those of the job are told by the job. */
   async function records(): Promise<StoredRecord[]> {
     const { data } = await read<Page>("/v1/calculations");
-    return Promise.all([...data].reverse().map(({ id }) => read<StoredRecord>(`/v1/calculations/${id}`)));
+    const alone = data.filter(({ jobId }) => jobId === null);
+    return Promise.all([...alone].reverse().map(({ id }) => read<StoredRecord>(`/v1/calculations/${id}`)));
   }
 
   it("prints sign-ins that work, one for each role, and keeps them for the owner alone", async () => {
     for (const role of ["admin", "engineer", "developer", "viewer"]) await signIn(role);
     expect(readFileSync(file, "utf8")).toBe(`${first.join("\n")}\n`);
     expect(statSync(file).mode & 0o777).toBe(0o600);
+  });
+
+  it("has a machine with a signed job, nothing in which wants a person", async () => {
+    const { data } = await read<z.infer<typeof jobPage>>("/v1/jobs");
+    expect(data.map(({ state, machineName }) => [state, machineName])).toEqual([["signed", "Fellgate Unit 2"]]);
+    const job = await read<z.infer<typeof jobRecord>>(`/v1/jobs/${data[0]?.id}`);
+    expect([job.flags, job.signature?.name]).toEqual([[], "Ines Alder"]);
   });
 
   it("tells an outage: a survey refused, as found, deviations, moves, as left, deviations", async () => {
@@ -170,7 +179,7 @@ describe("a first start with the demo that is cut short", () => {
     expect((await app.call().post("/v1/sessions").send({ email, password })).status).toBe(201);
     const [, secret] = /Bearer (\w+)/.exec(kept) ?? [];
     const list = await app.call().get("/v1/calculations").set("Authorization", `Bearer ${secret}`);
-    expect((list.body as Page).data).toHaveLength(6);
+    expect((list.body as Page).data).toHaveLength(12);
     await app.close();
     rmSync(folder, { recursive: true });
   });

@@ -227,6 +227,23 @@ describe("webhook deliveries", () => {
     expect(unknown.body).toMatchObject({ status: 404, code: "not_found" });
   });
 
+  it("are let go when the service stops while the other side says nothing, and go out elsewhere at once", async () => {
+    receiver.answer = () => undefined;
+    const { id } = await hooks.add(receiver.url);
+    await hooks.compute();
+    const stopping = new DeliveryWorker(app.deps);
+    const run = stopping.runDue();
+    while (receiver.received.length === 0) await new Promise((resolve) => setTimeout(resolve, 20));
+    const started = performance.now();
+    await stopping.stop();
+    await run;
+    expect(performance.now() - started).toBeLessThan(7_000); // ms, well within what a stop may take
+    receiver.answer = (response) => response.writeHead(204).end();
+    expect(await hooks.worker.runDue()).toBe(1);
+    const [delivery] = await hooks.deliveries(id);
+    expect(delivery).toMatchObject({ state: "delivered", attempts: [{ attempt: 1, status: 204 }] });
+  }, 15_000);
+
   it("go out once, however many processes look for them", async () => {
     const { id } = await hooks.add(receiver.url);
     for (let made = 0; made < 30; made += 1) await hooks.compute();
