@@ -1,4 +1,5 @@
 import { chromium, type Browser, type Page } from "playwright-core";
+import type { Environment } from "../../server/config.ts";
 import { createMembers } from "../../server/services/first-admin.ts";
 import { findProgram } from "../../server/bootstrap/find-program.mjs";
 import type { Caller } from "../../server/services/caller.ts";
@@ -14,8 +15,8 @@ export interface ConsoleInBrowser {
   close(): Promise<void>;
 }
 
-export async function openConsole(): Promise<ConsoleInBrowser> {
-  const service = await openListeningApp();
+export async function openConsole(environment: Environment = {}): Promise<ConsoleInBrowser> {
+  const service = await openListeningApp(environment);
   const email = "admin@fellgate.example";
   const name = "Fellgate Works";
   const made = await createMembers(service.deps, { name }, [

@@ -15,33 +15,41 @@ const recalculate = `<?xml version="1.0" encoding="UTF-8"?>
 export type OpenedWorkbook = Readonly<Record<string, readonly (readonly string[])[]>>;
 
 /** Opens a workbook in LibreOffice, which computes every formula itself, and reads what the sheets then show. */
-export async function openInSpreadsheetProgram(workbook: Uint8Array): Promise<OpenedWorkbook> {
+export function openInSpreadsheetProgram(workbook: Uint8Array): Promise<OpenedWorkbook> {
+  const everySheet = "csv:Text - txt - csv (StarCalc):44,34,76,1,,0,false,false,false,false,false,-1";
+  return converted(workbook, everySheet, async (folder) => {
+    const sheets = (await readdir(folder)).map(async (file) => {
+      const rows = parse(await readFile(join(folder, file)), { relax_column_count: true });
+      return [file.replace(/^book-(.*)\.csv$/, "$1"), rows] as const;
+    });
+    return Object.fromEntries(await Promise.all(sheets));
+  });
+}
+
+/** A workbook as LibreOffice saves it. */
+export function saveBySpreadsheetProgram(workbook: Uint8Array): Promise<Buffer> {
+  return converted(workbook, "xlsx:Calc MS Excel 2007 XML", (folder) => readFile(join(folder, "book.xlsx")));
+}
+
+async function converted<Result>(
+  workbook: Uint8Array,
+  target: string,
+  read: (folder: string) => Promise<Result>,
+): Promise<Result> {
   const folder = await mkdtemp(join(tmpdir(), "borewright-calc-"));
   try {
     const profile = join(folder, "profile");
     await mkdir(join(profile, "user"), { recursive: true });
     await writeFile(join(profile, "user", "registrymodifications.xcu"), recalculate);
-    await writeFile(join(folder, "book.xlsx"), workbook);
+    const [sent, out] = [join(folder, "book.xlsx"), join(folder, "out")];
+    await writeFile(sent, workbook);
+    const own = `-env:UserInstallation=${pathToFileURL(profile).href}`;
     const { code, stderr } = await runProgram(
-      [
-        "soffice",
-        `-env:UserInstallation=${pathToFileURL(profile).href}`,
-        "--headless",
-        "--convert-to",
-        "csv:Text - txt - csv (StarCalc):44,34,76,1,,0,false,false,false,false,false,-1",
-        "--outdir",
-        join(folder, "out"),
-        join(folder, "book.xlsx"),
-      ],
+      ["soffice", own, "--headless", "--convert-to", target, "--outdir", out, sent],
       {},
     );
     if (code !== 0) throw new Error(stderr);
-    const files = await readdir(join(folder, "out"));
-    const sheets = files.map(async (file) => {
-      const rows = parse(await readFile(join(folder, "out", file)), { relax_column_count: true });
-      return [file.replace(/^book-(.*)\.csv$/, "$1"), rows as string[][]] as const;
-    });
-    return Object.fromEntries(await Promise.all(sheets));
+    return await read(out);
   } finally {
     await rm(folder, { recursive: true, force: true });
   }
