@@ -40,6 +40,9 @@ describe("readConfig", () => {
       drainSeconds: 0,
       requestTimeoutSeconds: 30,
       smtpUrl: null,
+      mailFrom: "no-reply@localhost",
+      webhookAllowedNetworks: [],
+      webhookPorts: [443, 8443],
       logLevel: "info",
     });
     expect(faultyNames({})).toEqual(["DATABASE_URL", "APP_SECRET"]);
@@ -61,6 +64,9 @@ describe("readConfig", () => {
       DRAIN_SECONDS: "-1",
       REQUEST_TIMEOUT_SECONDS: "0x10",
       SMTP_URL: "http://mail.example.com",
+      MAIL_FROM: "nobody",
+      WEBHOOK_ALLOWED_NETWORKS: "10.0.0.0/8, 10.0.0.0/33",
+      WEBHOOK_PORTS: "443,70000",
       LOG_LEVEL: "loud",
     });
     expect(error.exitCode).toBe(78); // EX_CONFIG of sysexits.h
@@ -73,6 +79,7 @@ describe("readConfig", () => {
       "DRAIN_SECONDS",
       "HOST",
       "LOG_LEVEL",
+      "MAIL_FROM",
       "METRICS_TOKEN",
       "PORT",
       "PUBLIC_URL",
@@ -81,8 +88,10 @@ describe("readConfig", () => {
       "SIGN_IN_LIMIT_PER_MINUTE",
       "SMTP_URL",
       "TRUST_PROXY",
+      "WEBHOOK_ALLOWED_NETWORKS",
+      "WEBHOOK_PORTS",
     ]);
-    expect(error.message).toContain("There are 16 faults");
+    expect(error.message).toContain("There are 19 faults");
     for (const { name, detail } of error.faults) expect(error.message).toContain(`  ${name}: ${detail}`);
   });
 

@@ -1,3 +1,4 @@
+import { randomInt } from "node:crypto";
 import { createServer, type Server } from "node:http";
 import { once } from "node:events";
 import type { AddressInfo } from "node:net";
@@ -46,7 +47,7 @@ export function buildDeps(config: Config): Deps {
     secrets,
     now,
     newId,
-    random: Math.random,
+    random: () => randomInt(2 ** 32) / 2 ** 32,
     listeners: new Listeners(database),
     resolveHost,
     mailer: new Mailer(config, log),

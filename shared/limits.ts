@@ -55,6 +55,7 @@ export const limits = {
   watchersPerCredential: 8,
   readingFileBytes: 10 * 1024 * 1024,
   readingRowsPerFile: 50_000,
+  workbookBytes: 10 * 1024 * 1024,
   attachmentBytes: 10 * 1024 * 1024,
   attachmentsPerJob: 200,
   webhooksPerOrganisation: 20,

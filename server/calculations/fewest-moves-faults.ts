@@ -24,6 +24,9 @@ import { componentFaults, stationsSharedFaults } from "./component-faults.ts";
 import { carrierFaults } from "./linkage-faults.ts";
 import { moveStationFaults } from "./shim-move-faults.ts";
 
+/** Reference stations nearer to each other than this share of the machine count as standing at one z. */
+const sameZWithin = 1e-9;
+
 /** What could be read of a body: all of it when it passed the schema, the sound parts when it did not (null elsewhere). */
 interface Readable {
   readonly units: Units;
@@ -121,9 +124,13 @@ function spreadFaults(ids: readonly (string | null)[], zOf: ReadonlyMap<string, 
     return [{ pointer, code: "reference_count", detail, value: 1, allowed: { min: 2 } }];
   }
   const z = ids.flatMap((id) => (id === null ? [] : (zOf.get(id) ?? [])));
-  if (z.length < ids.length || Math.max(...z) > Math.min(...z)) return [];
-  return [{ pointer, code: "stations_coincident", detail: "All reference stations stand at one z." }];
+  const apart = spreadOf(z) > sameZWithin * spreadOf([...zOf.values()]);
+  if (z.length < ids.length || apart) return [];
+  const detail = "The reference stations stand at one z, or far too near to each other to hold an axis.";
+  return [{ pointer, code: "stations_coincident", detail }];
 }
+
+const spreadOf = (values: readonly number[]): number => Math.max(...values) - Math.min(...values);
 
 /** What shim-moves takes and this call would have to leave out. */
 function notComputed({ roll, tilt }: CostedComponentRequest, index: number): Fault[] {

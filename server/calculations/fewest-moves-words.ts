@@ -136,7 +136,7 @@ export function adviceOn(
       ? null
       : {
           code: "optimality_not_proved",
-          detail: `The search ended before its end was proved: a choice may exist that costs less, by ${Number(search.gap.toPrecision(6))} at most.`,
+          detail: `The search ended before its end was proved: a choice may exist that costs less, by ${Number(search.betterBy.toPrecision(6))} at most.`,
         },
     search.tied > 0
       ? {

@@ -49,7 +49,7 @@ const inMil: FewestMovesRequest = (() => {
                 z: along / 304.8,
                 ...(travel ? { travel: across(travel) } : {}),
                 ...stacks,
-              } as typeof support;
+              };
             }),
           }
         : {}),

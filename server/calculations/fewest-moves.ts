@@ -57,6 +57,7 @@ function writeChoice(
   convert: Converters,
 ): FewestMovesResult {
   const { axial, offset } = convert;
+  const { method, proved, betterBy, cuts, tied } = choice.search;
   const shimMoves = handOver(request, choice, convert);
   const moved = stationsMoved(problem, choice);
   const line = ({ at0Mm, slope }: FewestChoice["axis"]["h"]) => ({
@@ -88,7 +89,7 @@ function writeChoice(
       moved.length === 0
         ? []
         : [...new Set([...problem.references.map(({ stationId }) => stationId), ...moved])],
-    search: { ...choice.search },
+    search: { method, proved, gap: betterBy, cuts, tied },
     infeasible: null,
     shimMoves,
     advice: adviceOn(request, choice, shimMoves, moved),

@@ -20,6 +20,7 @@ import { jobReportOperations } from "./job-reports.ts";
 import { jobSurveyOperations } from "./job-surveys.ts";
 import { jobOperations } from "./jobs.ts";
 import { machineHistoryOperations } from "./machine-history.ts";
+import { machineWorkbookOperations } from "./machine-workbooks.ts";
 import { machineOperations } from "./machines.ts";
 import { memberOperations } from "./members.ts";
 import { measurementPlanOperations } from "./measurement-plans.ts";
@@ -47,6 +48,7 @@ export const operations: readonly Operation[] = [
   ...sightLineSetupOperations,
   ...calculationOperations,
   ...machineOperations,
+  ...machineWorkbookOperations,
   ...machineHistoryOperations,
   ...jobOperations,
   ...jobSurveyOperations,

@@ -121,6 +121,13 @@ describe("machines as workbooks", () => {
       expect(await count()).toBe(before + 1);
     });
 
+    it("takes a preview and a store under one key for two calls", async () => {
+      const preview = await send().set("Idempotency-Key", "preview-first");
+      expect(preview.status).toBe(200);
+      const stored = await send("?store=true").set("Idempotency-Key", "preview-first");
+      expect(stored.body).toMatchObject({ status: 422, code: "idempotency_key_reused" });
+    });
+
     it("refuses what is no workbook, what is too large, and other media types", async () => {
       expect((await send("", Buffer.from("station,z"))).body).toMatchObject({
         status: 422,

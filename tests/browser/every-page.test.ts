@@ -67,7 +67,7 @@ describe("every page", () => {
     await page.setViewportSize({ width, height: 800 });
     await signIn(page, opened);
     const records = await recordPaths(page);
-    for (const path of ["/calculations", "/keys", "/try", "/self-test", ...records]) {
+    for (const path of ["/calculations", "/keys", "/webhooks", "/outbox", "/try", "/self-test", ...records]) {
       await page.goto(opened.service.url + path, { waitUntil: "networkidle" });
       await page.getByRole("heading", { level: 1 }).waitFor();
       const scrollWidth = await page.evaluate<number>("document.documentElement.scrollWidth");

@@ -182,6 +182,40 @@ describe("a measurement plan", () => {
   });
 });
 
+describe("a line-of-sight set-up", () => {
+  it("says what to do next, what each support moves, and what air does", () => {
+    const call = callNamed("sight-line-setup", "two-supports-in-mil");
+    show("sight-line-setup", call);
+    expect(screen.getByLabelText("What to do next").textContent).toContain("Move the source");
+    expect(captions()).toEqual([
+      "Beam at the stations, off where it should pass",
+      "Move of the source",
+      "Drift and air",
+    ]);
+    const { adjustment } = resultOf<{ adjustment: { moves: { at: string; h: number; v: number }[] } }>(call);
+    for (const { at, h, v } of adjustment.moves) {
+      expect(rowOf("Move of the source", `at ${at}`).slice(2)).toEqual([
+        writeSigned(h, 2),
+        writeSigned(v, 2),
+      ]);
+    }
+    expect(screen.getByRole("region", { name: "Warnings" }).textContent).toContain(
+      "bend_exceeds_uncertainty",
+    );
+  });
+});
+
+describe("a bore fit", () => {
+  it("has the diameter at 20 °C beside that read, only where it is asked", () => {
+    show("bore-fit", callNamed("bore-fit", "diameters-at-20-degrees"));
+    const [read, reduced] = rowOf("Centres and sizes", "cas-3").slice(5, 7).map(Number);
+    expect(read! - reduced!).toBeGreaterThan(0.1); // mm
+    cleanup();
+    show("bore-fit", callNamed("bore-fit", "turned-gauge-with-sag"));
+    expect(screen.queryByText("diameter at 20 °C")).toBeNull();
+  });
+});
+
 describe("an answer of another version", () => {
   it.each(calculationKinds)("of %s is said not to be drawn", (kind) => {
     show(kind, { name: "other", request: {}, response: { result: {} } });

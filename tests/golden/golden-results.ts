@@ -31,5 +31,6 @@ export function currentResults(): Record<string, string> {
 
 /** A kind's requests stand in the folder of its resource: its name in the plural. */
 function resourceOf(kind: string): string {
+  if (kind.endsWith("s")) return kind;
   return kind.endsWith("y") ? `${kind.slice(0, -1)}ies` : `${kind}s`;
 }

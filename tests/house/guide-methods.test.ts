@@ -3,11 +3,13 @@ import { axisMethods } from "../../console/src/features/guide/content/axis-metho
 import { circleCriteria } from "../../console/src/features/guide/content/circle-criteria.ts";
 import { confirmationMethods } from "../../console/src/features/guide/content/confirmation-methods.ts";
 import { unitUses } from "../../console/src/features/guide/content/conventions.ts";
+import { fewestMoves } from "../../console/src/features/guide/content/fewest-moves.ts";
 import { fitQuality } from "../../console/src/features/guide/content/fit-quality.ts";
 import { moveSolving } from "../../console/src/features/guide/content/move-solving.ts";
 import { planMethods } from "../../console/src/features/guide/content/plan-methods.ts";
 import { readingForms } from "../../console/src/features/guide/content/reading-forms.ts";
 import { repeatabilityMethods } from "../../console/src/features/guide/content/repeatability-methods.ts";
+import { sightMethods } from "../../console/src/features/guide/content/sight-methods.ts";
 import { shimChoice } from "../../console/src/features/guide/content/shim-choice.ts";
 import { targetMethods } from "../../console/src/features/guide/content/target-methods.ts";
 import { verdictRules } from "../../console/src/features/guide/content/verdict-rules.ts";
@@ -40,11 +42,13 @@ const pages: Readonly<Record<string, readonly Method[]>> = {
   axisMethods,
   verdictRules,
   moveSolving,
+  fewestMoves,
   shimChoice,
   targetMethods,
   confirmationMethods,
   repeatabilityMethods,
   planMethods,
+  sightMethods,
 };
 const methods = Object.values(pages).flat();
 

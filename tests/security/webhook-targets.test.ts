@@ -1,5 +1,5 @@
 import { createServer, type Server } from "node:http";
-import type { AddressInfo } from "node:net";
+import { createServer as createTcpServer, type AddressInfo } from "node:net";
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from "vitest";
 import type { Address, ResolveHost } from "../../server/webhooks/check-target.ts";
 import { openTestApp, type TestApp } from "../support/app.ts";
@@ -10,10 +10,9 @@ const v4 = (address: string): Address => ({ address, family: 4 });
 
 /** Names and what they resolve to now. */
 const names = new Map<string, readonly Address[]>();
-const resolveHost: ResolveHost = async (name) => {
+const resolveHost: ResolveHost = (name) => {
   const found = names.get(name);
-  if (!found) throw new Error("ENOTFOUND");
-  return found;
+  return found ? Promise.resolve(found) : Promise.reject(new Error("ENOTFOUND"));
 };
 
 /** An address of the public network that no test connects to. */
@@ -138,6 +137,32 @@ describe("where a webhook may go", () => {
       expect(test.body).toMatchObject({ state: "delivered", attempts: [{ status: 204 }] });
       expect(receiver.received.at(-1)?.headers.host).toBe(`pinned.invalid:${receiver.port}`);
     } finally {
+      await own.close();
+    }
+  });
+
+  it("is spoken to in TLS, at the number that was checked and under the name that was given", async () => {
+    const hellos: Buffer[] = [];
+    const port = createTcpServer((socket) => {
+      socket.on("error", () => undefined);
+      socket.once("data", (data) => {
+        hellos.push(data);
+        socket.destroy();
+      });
+    });
+    await new Promise<void>((resolve) => port.listen(0, "127.0.0.1", resolve));
+    const own = await openTestApp(localWebhooks, { resolveHost });
+    try {
+      const local = await WebhookDriver.open(own);
+      names.set("pinned.invalid", [v4("127.0.0.1")]);
+      const { id } = await local.add(`https://pinned.invalid:${(port.address() as AddressInfo).port}/hook`);
+      const test = await local.post(`/v1/webhooks/${id}/test`);
+      expect(test.body).toMatchObject({ state: "failed", attempts: [{ error: "connection_failed" }] });
+      // RFC 8446: a record of type 22 with a ClientHello, whose server_name stands in it in plain letters (RFC 6066).
+      expect(hellos[0]?.[0]).toBe(22);
+      expect(hellos[0]?.includes("pinned.invalid")).toBe(true);
+    } finally {
+      port.close();
       await own.close();
     }
   });

@@ -10,12 +10,18 @@ export function Navigation() {
   const member = useMember();
   const mayCompute = useMay("calculations:write");
   const mayReadKeys = useMay("keys:read");
+  const mayReadWebhooks = useMay("webhooks:read");
+  const mayReadOutbox = useMay("outbox:read");
   return (
     <nav aria-label="Main">
       <ul className="flex flex-wrap gap-x-6 gap-y-1">
+        {member && <PageLink to={paths.jobs}>Jobs</PageLink>}
+        {member && <PageLink to={paths.machines}>Machines</PageLink>}
         {member && <PageLink to={paths.calculations}>Calculations</PageLink>}
         {mayCompute && <PageLink to={paths.tryCall}>Try a call</PageLink>}
         {mayReadKeys && <PageLink to={paths.keys}>Keys</PageLink>}
+        {mayReadWebhooks && <PageLink to={paths.webhooks}>Webhooks</PageLink>}
+        {mayReadOutbox && <PageLink to={paths.outbox}>Outbox</PageLink>}
         <PageLink to={paths.guide}>Guide</PageLink>
         {/* On a narrow screen the footer's link has to do. */}
         <li className="max-sm:hidden">

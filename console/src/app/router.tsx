@@ -21,12 +21,56 @@ const memberPages: RouteObject[] = [
     lazy: async () => ({ Component: (await import("./routes/calculation-page.tsx")).CalculationPage }),
   },
   {
+    path: paths.machines,
+    lazy: async () => ({ Component: (await import("./routes/machines-page.tsx")).MachinesPage }),
+  },
+  {
+    path: paths.newMachine,
+    lazy: async () => ({ Component: (await import("./routes/new-machine-page.tsx")).NewMachinePage }),
+  },
+  {
+    path: `${paths.machines}/:id`,
+    lazy: async () => ({ Component: (await import("./routes/machine-page.tsx")).MachinePage }),
+  },
+  {
+    path: `${paths.machines}/:id/edit`,
+    lazy: async () => ({ Component: (await import("./routes/edit-machine-page.tsx")).EditMachinePage }),
+  },
+  {
+    path: `${paths.machines}/:id/history`,
+    lazy: async () => ({ Component: (await import("./routes/machine-history-page.tsx")).MachineHistoryPage }),
+  },
+  {
+    path: paths.jobs,
+    lazy: async () => ({ Component: (await import("./routes/jobs-page.tsx")).JobsPage }),
+  },
+  {
+    path: paths.newJob,
+    lazy: async () => ({ Component: (await import("./routes/new-job-page.tsx")).NewJobPage }),
+  },
+  {
+    path: `${paths.jobs}/:id`,
+    lazy: async () => ({ Component: (await import("./routes/job-page.tsx")).JobPage }),
+  },
+  {
     path: paths.tryCall,
     lazy: async () => ({ Component: (await import("./routes/try-page.tsx")).TryPage }),
   },
   {
     path: paths.keys,
     lazy: async () => ({ Component: (await import("./routes/keys-page.tsx")).KeysPage }),
+  },
+  {
+    path: paths.webhooks,
+    lazy: async () => ({ Component: (await import("./routes/webhooks-page.tsx")).WebhooksPage }),
+  },
+  {
+    path: `${paths.webhooks}/:id`,
+    lazy: async () => ({ Component: (await import("./routes/webhook-page.tsx")).WebhookPage }),
+  },
+  {
+    path: paths.outbox,
+    lazy: async () => ({ Component: (await import("./routes/outbox-page.tsx")).OutboxPage }),
   },
   {
     path: paths.selfTest,

@@ -1,5 +1,5 @@
 import type { z } from "zod";
-import { sendRequest, type ServiceAnswer, type ServiceRequest } from "./send-request.ts";
+import { requestFile, sendRequest, type ServiceAnswer, type ServiceRequest } from "./send-request.ts";
 import { readSession, renewSession } from "./session-store.ts";
 import { NoAnswerError, ProblemError } from "./service-error.ts";
 
@@ -12,17 +12,32 @@ type Call = Omit<ServiceRequest, "accessToken">;
  * A call in the member's name. A token about to end is renewed first; a 401 is tried once more with a new token.
  * @throws ProblemError, NoAnswerError
  */
-export async function callAsMember(call: Call): Promise<ServiceAnswer> {
+export function callAsMember(call: Call): Promise<ServiceAnswer> {
+  return asMember(call, sendRequest);
+}
+
+/**
+ * A file, asked for in the member's name: a link could not carry the token.
+ * @throws ProblemError, NoAnswerError
+ */
+export function fetchFileAsMember(call: Call): Promise<Blob> {
+  return asMember(call, requestFile);
+}
+
+async function asMember<Result>(
+  call: Call,
+  send: (request: ServiceRequest) => Promise<Result>,
+): Promise<Result> {
   const session = readSession();
   if (session.status === "open" && Date.parse(session.session.expiresAt) - Date.now() < renewAheadMs) {
     await renewSession();
   }
   try {
-    return await sendRequest(withToken(call));
+    return await send(withToken(call));
   } catch (error) {
     if (!(error instanceof ProblemError) || error.problem.status !== 401) throw error;
     if (!(await renewSession())) throw error;
-    return sendRequest(withToken(call));
+    return send(withToken(call));
   }
 }
 

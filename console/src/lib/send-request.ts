@@ -2,13 +2,22 @@ import { problemSchema } from "../../../shared/schemas/problem.ts";
 import { NoAnswerError, ProblemError } from "./service-error.ts";
 
 export interface ServiceRequest {
-  readonly method: "GET" | "POST" | "DELETE";
+  readonly method: "GET" | "POST" | "PATCH" | "DELETE";
   readonly path: string;
   /** The body as text, so that what is sent is what was written. */
   readonly bodyText?: string;
+  /** A file as the body, in place of text. */
+  readonly file?: SentFile;
+  /** The version that a change was made from, as its ETag. */
+  readonly ifMatch?: string;
   readonly idempotencyKey?: string;
   readonly accessToken?: string;
   readonly signal?: AbortSignal;
+}
+
+export interface SentFile {
+  readonly content: Blob;
+  readonly mediaType: string;
 }
 
 export interface ServiceAnswer {
@@ -26,17 +35,39 @@ export async function sendRequest(request: ServiceRequest): Promise<ServiceAnswe
   const requestId = response.headers.get("x-request-id");
   const body = await readBody(response, requestId);
   if (response.ok) return { status: response.status, body, requestId };
+  throw refusalOf(response, body, requestId);
+}
+
+/**
+ * A file that the service answers with.
+ * @throws ProblemError for a refusal, NoAnswerError when nothing readable came back
+ */
+export async function requestFile(request: ServiceRequest): Promise<Blob> {
+  const response = await exchange(request, "*/*");
+  const requestId = response.headers.get("x-request-id");
+  if (!response.ok) throw refusalOf(response, await readBody(response, requestId), requestId);
+  return response.blob().catch(() => {
+    throw new NoAnswerError("The file broke off. Check the connection and try again.", requestId);
+  });
+}
+
+function refusalOf(response: Response, body: unknown, requestId: string | null): Error {
   const problem = problemSchema.safeParse(body);
-  if (problem.success) throw new ProblemError(problem.data);
-  throw new NoAnswerError(
+  if (problem.success) return new ProblemError(problem.data);
+  return new NoAnswerError(
     `The service answered ${response.status} in a form the console cannot read.`,
     requestId,
   );
 }
 
-async function exchange(request: ServiceRequest): Promise<Response> {
-  const headers = new Headers({ Accept: "application/json, application/problem+json" });
-  if (request.bodyText !== undefined) headers.set("Content-Type", "application/json");
+async function exchange(
+  request: ServiceRequest,
+  accept = "application/json, application/problem+json",
+): Promise<Response> {
+  const headers = new Headers({ Accept: accept });
+  const body = request.file?.content ?? request.bodyText;
+  if (body !== undefined) headers.set("Content-Type", request.file?.mediaType ?? "application/json");
+  if (request.ifMatch !== undefined) headers.set("If-Match", request.ifMatch);
   if (request.idempotencyKey !== undefined) headers.set("Idempotency-Key", request.idempotencyKey);
   if (request.accessToken !== undefined) headers.set("Authorization", `Bearer ${request.accessToken}`);
   try {
@@ -44,7 +75,7 @@ async function exchange(request: ServiceRequest): Promise<Response> {
       method: request.method,
       headers,
       credentials: "same-origin",
-      ...(request.bodyText === undefined ? {} : { body: request.bodyText }),
+      ...(body === undefined ? {} : { body }),
       ...(request.signal === undefined ? {} : { signal: request.signal }),
     });
   } catch (error) {

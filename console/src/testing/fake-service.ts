@@ -9,6 +9,8 @@ export interface Call {
   readonly query: URLSearchParams;
   readonly headers: Headers;
   readonly bodyText: string;
+  /** The body, where it is a file. */
+  readonly file: Blob | null;
 }
 
 export interface Answer {
@@ -77,6 +79,7 @@ export class FakeService {
       query: url.searchParams,
       headers: new Headers(init.headers),
       bodyText: typeof init.body === "string" ? init.body : "",
+      file: init.body instanceof Blob ? init.body : null,
     };
     this.calls.push(call);
     const route = `${call.method} ${call.path}`;

@@ -1,6 +1,12 @@
-import { equalCost, stockOrder } from "./choice-frontier.ts";
+import { equalCost } from "./choice-frontier.ts";
+import {
+  comparePicks,
+  enumerateColumns,
+  valueOfPicks,
+  withoutBeaten,
+  type BestPick,
+} from "./enumerate-columns.ts";
 import type { MoveAim } from "./move-problem.ts";
-import { sameThicknessMm } from "./shim-changes.ts";
 import { solveStockProgram, type Column, type Unit } from "./stock-program.ts";
 
 export interface Picked {
@@ -14,6 +20,10 @@ export interface Picked {
 
 /** Branches of the enumeration before the program is handed to the solver. */
 const branchesMost = 100_000;
+/** Time for the least cost, and for each of fewest pieces and least change among those that cost as little. */
+const costSeconds = 3;
+const tieSeconds = 1;
+
 /**
  * One column for each unit so that no short line is overdrawn after any component: of least cost (the sum, or the largest
  * and then the sum), then fewest pieces, then least total change, then stock order; null when there is none. By
@@ -26,106 +36,25 @@ export function pickColumns(
   quantities: readonly number[],
   aim: MoveAim,
   enumerateMost = branchesMost,
+  ties: "broken" | "left" = "broken",
 ): Picked | null {
   if (units.some(({ columns }) => columns.length === 0)) return null;
-  const found = enumerate(units, quantities, aim, enumerateMost);
-  if (found.complete) {
-    const { best } = found;
-    return best && { picks: best.picks, method: "enumeration", proved: true, bound: best.value.sum };
-  }
-  return byProgram(units, quantities, aim);
+  const enumerated = ({ best }: { readonly best: BestPick | null }): Picked | null =>
+    best && { picks: best.picks, method: "enumeration", proved: true, bound: best.value.sum };
+  const found = enumerateColumns(units, quantities, aim, enumerateMost);
+  if (found.complete) return enumerated(found);
+  const fewer = withoutBeaten(units);
+  const second = enumerateColumns(fewer.units, quantities, aim, enumerateMost, "fewest_pieces");
+  const picked = second.complete ? enumerated(second) : byProgram(fewer.units, quantities, aim, ties);
+  return picked && { ...picked, picks: picked.picks.map((pick, u) => fewer.from[u]?.[pick] ?? -1) };
 }
 
-interface Value {
-  readonly largest: number;
-  readonly sum: number;
-  readonly handled: number;
-  readonly totalMm: number;
-  readonly taken: readonly number[];
-}
-
-interface Best {
-  readonly picks: readonly number[];
-  readonly value: Value;
-}
-
-function valueOf(units: readonly Unit[], picks: readonly number[]): Value {
-  const columns = units.flatMap(({ columns: all }, u) => all[picks[u] ?? -1] ?? []);
-  const sum = (of: (column: Column) => number) => columns.reduce((total, column) => total + of(column), 0);
-  return {
-    largest: Math.max(0, ...columns.map(({ cost }) => cost)),
-    sum: sum(({ cost }) => cost),
-    handled: sum(({ handled }) => handled),
-    totalMm: sum(({ totalMm }) => totalMm),
-    taken: (columns[0]?.taken ?? []).map((_, line) => sum(({ taken }) => taken[line] ?? 0)),
-  };
-}
-
-/** Below 0 when `a` is the better. */
-function compare(a: Value, b: Value, aim: MoveAim): number {
-  const costs = (one: number, other: number) =>
-    Math.abs(one - other) <= equalCost(Math.min(one, other)) ? 0 : one - other;
-  return (
-    (aim === "minimax" ? costs(a.largest, b.largest) : 0) ||
-    costs(a.sum, b.sum) ||
-    a.handled - b.handled ||
-    (Math.abs(a.totalMm - b.totalMm) <= sameThicknessMm ? 0 : a.totalMm - b.totalMm) ||
-    stockOrder(a.taken, b.taken)
-  );
-}
-
-function enumerate(
+function byProgram(
   units: readonly Unit[],
   quantities: readonly number[],
   aim: MoveAim,
-  most: number,
-): { readonly complete: boolean; readonly best: Best | null } {
-  const inOrder = units.map(({ columns }) =>
-    columns.map((column, at) => ({ column, at })).sort((a, b) => a.column.cost - b.column.cost),
-  );
-  const leastLater = new Array<number>(units.length + 1).fill(0);
-  for (let u = units.length - 1; u >= 0; u--)
-    leastLater[u] = (leastLater[u + 1] ?? 0) + (inOrder[u]?.[0]?.column.cost ?? 0);
-  let best: Best | null = null;
-  let branches = 0;
-  const picks: number[] = [];
-  const descend = (u: number, sum: number, largest: number, net: readonly number[]): void => {
-    const unit = units[u];
-    if (!unit) {
-      const value = valueOf(units, picks);
-      if (!best || compare(value, best.value, aim) < 0) best = { picks: [...picks], value };
-      return;
-    }
-    const componentEnds = units[u + 1]?.component !== unit.component;
-    for (const { column, at } of inOrder[u] ?? []) {
-      if (++branches > most) return;
-      const least = sum + column.cost + (leastLater[u + 1] ?? 0);
-      const held: Best | null = best;
-      if (held) {
-        const { value } = held;
-        const worse =
-          aim === "minimax"
-            ? Math.max(largest, column.cost) > value.largest + equalCost(value.largest)
-            : least > value.sum + equalCost(value.sum);
-        if (worse) break;
-      }
-      const next = net.map((count, k) => count + (column.net[k] ?? 0));
-      if (componentEnds && next.some((count, k) => count > (quantities[k] ?? Infinity))) continue;
-      picks.push(at);
-      descend(u + 1, sum + column.cost, Math.max(largest, column.cost), next);
-      picks.pop();
-    }
-  };
-  descend(
-    0,
-    0,
-    0,
-    quantities.map(() => 0),
-  );
-  return { complete: branches <= most, best };
-}
-
-function byProgram(units: readonly Unit[], quantities: readonly number[], aim: MoveAim): Picked | null {
+  ties: "broken" | "left",
+): Picked | null {
   const least = units.map(({ columns }) => Math.min(...columns.map(({ cost }) => cost)));
   const floor = least.reduce((sum, cost) => sum + cost, 0);
   const ceiling = aim === "minimax" ? leastLargest(units, quantities) : Infinity;
@@ -136,22 +65,25 @@ function byProgram(units: readonly Unit[], quantities: readonly number[], aim: M
   );
   const above = (column: Column) => column.cost - (leastOf.get(column) ?? 0);
   const base = { units, quantities, allowed };
-  const first = solveStockProgram({ ...base, of: above, within: [] });
+  const first = solveStockProgram({ ...base, of: above, within: [] }, costSeconds);
   if (!first) return null;
   let best = first.picks;
-  const reached = valueOf(units, best);
+  const reached = valueOfPicks(units, best);
   const bound = floor + Math.max(0, first.bound);
   const excess = reached.sum - floor + equalCost(reached.sum);
   const cheap = { of: above, most: excess };
   const keep = (picks: readonly number[] | undefined) => {
-    if (picks && compare(valueOf(units, picks), valueOf(units, best), aim) < 0) best = picks;
+    if (picks && comparePicks(valueOfPicks(units, picks), valueOfPicks(units, best), aim) < 0) best = picks;
   };
-  const fewest = solveStockProgram({ ...base, of: ({ handled }) => handled, within: [cheap] });
-  keep(fewest?.picks);
-  const handled = { of: (column: Column) => column.handled, most: valueOf(units, best).handled };
-  keep(solveStockProgram({ ...base, of: ({ totalMm }) => totalMm, within: [cheap, handled] })?.picks);
   const proved = first.optimal && reached.sum - bound <= 1e-6 * (1 + reached.sum);
-  return { picks: best, method: "mixed_integer_program", proved, bound };
+  const picked = () => ({ picks: best, method: "mixed_integer_program" as const, proved, bound });
+  if (ties === "left") return picked();
+  const fewest = solveStockProgram({ ...base, of: ({ handled }) => handled, within: [cheap] }, tieSeconds);
+  keep(fewest?.picks);
+  const handled = { of: (column: Column) => column.handled, most: valueOfPicks(units, best).handled };
+  const leastChange = { ...base, of: ({ totalMm }: Column) => totalMm, within: [cheap, handled] };
+  keep(solveStockProgram(leastChange, tieSeconds)?.picks);
+  return picked();
 }
 
 /** The least largest cost: the smallest of the columns' costs at which what is left still fits. */

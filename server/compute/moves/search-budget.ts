@@ -13,8 +13,14 @@ export class SearchBudget {
   private spent = 0;
   private refusal: ComputeError | null = null;
 
-  /** `times` as many trials for the call as a call has that chooses each component's shims once. */
-  constructor(private readonly times = 1) {}
+  /**
+   * `times` as many trials for the call as a call has that chooses each component's shims once, and `share` of the
+   * trials for each component.
+   */
+  constructor(
+    private readonly times = 1,
+    private readonly share = 1,
+  ) {}
 
   startComponent(): void {
     this.spentOnComponent = 0;
@@ -39,8 +45,9 @@ export class SearchBudget {
     this.spentOnComponent += trials;
     this.spent += trials;
     // Told so that what is not a number is too much as well.
-    const over = !(this.spentOnComponent <= mostPerComponent)
-      ? mostPerComponent
+    const ofComponent = this.share * mostPerComponent;
+    const over = !(this.spentOnComponent <= ofComponent)
+      ? ofComponent
       : !(this.spent <= this.times * mostPerCall)
         ? this.times * mostPerCall
         : null;

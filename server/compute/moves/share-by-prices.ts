@@ -17,9 +17,14 @@ export interface PricedPick {
   readonly method: Picked["method"];
   readonly proved: boolean;
   readonly betterBy: number;
+  /** Every choice met, unit by unit, and the cost below which none lies. */
+  readonly pool: readonly (readonly ShimChoice[])[];
+  readonly floor: number;
 }
 
 const roundsMost = 60;
+/** Choices of one unit that one round adds. */
+const newMost = 40;
 /** Bounds this near, as a share of (1 + cost), are not worth another round. */
 const nearEnough = 1e-6;
 /** Trials that listing the choices between the bounds may take, as a share of a call's. */
@@ -39,6 +44,7 @@ interface Bound {
  * P. Wolfe, Operations Research 8 (1960) 101–111, from memory). Then every choice whose priced cost lies within the gap
  * of its unit's least is listed: none but those can be part of anything better than the best pick so far, so that the
  * pick from them is the best there is.
+ * `floor`: a cost below which none lies, from what was known before; `keepsRest`: whether choices keep the other lines.
  * @throws ComputeError too_many_choices, not_converged
  */
 export function shareByPrices(
@@ -46,6 +52,8 @@ export function shareByPrices(
   short: readonly number[],
   quantities: readonly number[],
   budget: SearchBudget,
+  floor: number,
+  keepsRest: (chosen: readonly ShimChoice[]) => boolean,
 ): PricedPick | null {
   const pool = units.map(({ known }) => [...known]);
   const programOf = (choices: readonly (readonly ShimChoice[])[]): StockProgram => ({
@@ -75,7 +83,7 @@ export function shareByPrices(
         const { choices, proved } = chooseShims(own, 0, budget);
         if (!proved || choices.length === 0) return;
         least.push(Math.min(...choices.map((choice) => pricedCost(choice, short, prices[u] ?? []))));
-        addNew(pool[u] ?? [], choices);
+        addNew(pool[u] ?? [], choices, (choice) => pricedCost(choice, short, prices[u] ?? []));
       }
       const paid = duals.byRow.reduce((sum, price, row) => {
         const line = Math.floor(row / componentsOf(program).length);
@@ -87,37 +95,52 @@ export function shareByPrices(
     }
   };
   budget.lasts(search, () => true);
-  const first = pickColumns(programOf(pool).units, quantities, "least_squares");
+  const first = pickColumns(programOf(pool).units, quantities, "least_squares", undefined, "left");
   if (!first) return null;
   const chosenOf = (choices: readonly (readonly ShimChoice[])[], { picks }: Picked) =>
     picks.flatMap((pick, u) => choices[u]?.[pick] ?? []);
-  const chosen = chosenOf(pool, first);
-  const cost = chosen.reduce((sum, choice) => sum + choice.cost, 0);
+  const cost = chosenOf(pool, first).reduce((sum, choice) => sum + choice.cost, 0);
   const bound: Bound | null = best;
-  if (!bound) return { chosen, method: first.method, proved: false, betterBy: cost };
-  const gap = Math.max(0, cost - boundValue(bound)) + roundingRoom * (1 + cost);
+  const least = Math.max(floor, bound ? boundValue(bound) : floor);
+  const gap = Math.max(0, cost - least) + roundingRoom * (1 + cost);
+  const asFound = (): PricedPick => {
+    const ties = pickColumns(programOf(pool).units, quantities, "least_squares") ?? first;
+    return {
+      chosen: chosenOf(pool, ties),
+      method: ties.method,
+      proved: false,
+      betterBy: gap,
+      pool,
+      floor: least,
+    };
+  };
+  // What overdraws other lines is not the answer: those are counted next.
+  if (!bound || !keepsRest(chosenOf(pool, first))) return asFound();
   const listed: ShimChoice[][] = [];
   let complete = true;
   const list = () => {
     for (const [u, { task }] of units.entries()) {
       budget.startComponent();
-      const offer = chooseShims({ ...task, prices: pricesIn(bound, u) }, 0, budget, gap);
+      const offer = chooseShims({ ...task, prices: pricesIn(bound, u) }, 0, budget, gapOver(bound, cost));
       complete &&= offer.proved;
       listed.push([...offer.choices]);
     }
   };
   complete = budget.lasts(list, () => true) && complete;
-  if (!complete) return { chosen, method: first.method, proved: false, betterBy: gap };
-  const last = pickColumns(programOf(listed).units, quantities, "least_squares");
-  if (!last) return { chosen, method: first.method, proved: false, betterBy: gap };
+  const last = complete ? pickColumns(programOf(listed).units, quantities, "least_squares") : null;
+  if (!last) return asFound();
   return {
     chosen: chosenOf(listed, last),
     method: last.method,
     proved: last.proved,
     betterBy: last.proved ? 0 : gap,
+    pool,
+    floor: least,
   };
 }
 
+const gapOver = (bound: Bound, cost: number): number =>
+  Math.max(0, cost - boundValue(bound)) + roundingRoom * (1 + cost);
 const boundValue = ({ value }: Bound): number => value;
 const pricesIn = ({ prices }: Bound, unit: number): readonly number[] => prices[unit] ?? [];
 
@@ -138,8 +161,17 @@ function pricesByUnit(program: StockProgram, byRow: readonly number[]): number[]
 const pricedCost = (choice: ShimChoice, short: readonly number[], prices: readonly number[]): number =>
   short.reduce((sum, line, k) => sum + (prices[k] ?? 0) * (choice.net[line] ?? 0), choice.cost);
 
-function addNew(pool: ShimChoice[], choices: readonly ShimChoice[]): void {
+/** Adds those that are not there, the cheapest with their prices, then those of fewest pieces, up to so many. */
+function addNew(
+  pool: ShimChoice[],
+  choices: readonly ShimChoice[],
+  priced: (choice: ShimChoice) => number,
+): void {
   const keyOf = ({ cost, handled, totalMm, net }: ShimChoice) => [cost, handled, totalMm, ...net].join(" ");
   const known = new Set(pool.map(keyOf));
-  for (const choice of choices) if (!known.has(keyOf(choice))) pool.push(choice);
+  const inOrder = choices
+    .filter((choice) => !known.has(keyOf(choice)))
+    .map((choice) => ({ choice, price: Math.round(priced(choice) * 1e9) }))
+    .sort((a, b) => a.price - b.price || a.choice.handled - b.choice.handled);
+  for (const { choice } of inOrder.slice(0, newMost)) pool.push(choice);
 }

@@ -139,32 +139,36 @@ function priced(
     supply,
     alone.map((each) => each?.choices ?? null),
   );
+  // Fewer lines counted leave more open: what was met then is known, and no choice costs less than was proved then.
+  let met: readonly (readonly ShimChoice[])[] | null = null;
+  let floor = alone.reduce((sum, each) => sum + (each?.floor ?? 0), 0);
   for (;;) {
-    const units = components.flatMap((own, k) =>
+    const counted = components.flatMap((own, k) =>
       (alone[k] ? own.tasks : []).map((task, t): PricedUnit => {
         const could = couldHave(supply, components.slice(0, k), own, task).with({ counted: short });
         const known = [alone[k]?.choices[t], inTurn[k]?.[t]].filter((choice) => choice !== undefined);
         return { component: own.index, task: { ...task, supply: could }, known };
       }),
     );
+    const units = counted.map((unit, u) => ({ ...unit, known: met?.[u] ?? unit.known }));
     const quantities = short.map((line) => supply.available[line] ?? 0);
-    const best = shareByPrices(units, short, quantities, budget);
-    const chosen = best?.chosen ?? [];
-    const byComponent = new Map(
-      components.map(({ index }, k) => [
-        index,
-        best && alone[k] ? chosen.filter((_, u) => units[u]?.component === index) : (inTurn[k] ?? null),
-      ]),
-    );
-    const over = overdrawnBy(
-      supply,
-      components.map(({ index }) => byComponent.get(index) ?? null),
-    );
+    const byComponentOf = (chosen: readonly ShimChoice[] | null) =>
+      components.map(({ index }, k) =>
+        chosen && alone[k] ? chosen.filter((_, u) => units[u]?.component === index) : (inTurn[k] ?? null),
+      );
+    const keepsRest = (chosen: readonly ShimChoice[]) =>
+      overdrawnBy(supply, byComponentOf(chosen)).length === 0;
+    const best = shareByPrices(units, short, quantities, budget, floor, keepsRest);
+    const choices = byComponentOf(best?.chosen ?? null);
+    const byComponent = new Map(components.map(({ index }, k) => [index, choices[k] ?? null]));
+    const over = overdrawnBy(supply, choices);
     if (over.length === 0) {
       const { method, proved, betterBy } = best ?? { method: "in_turn", proved: false, betterBy: null };
       return { byComponent, search: { method, proved, betterBy } };
     }
     short = [...new Set([...short, ...over])].sort((a, b) => a - b);
+    met = best?.pool ?? null;
+    floor = best?.floor ?? floor;
   }
 }
 

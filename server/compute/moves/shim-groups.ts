@@ -77,7 +77,7 @@ export function groupOptions(
       const errors = sharesOf(group, changes).map((mm, k) => mm - (group[k]?.centreMm ?? 0));
       return Math.abs(meanAlong(group, errors)) <= reachMm + sameThicknessMm;
     })
-    .flatMap((changes) => everyWayOf(changes, supply));
+    .flatMap((changes) => everyWayOf(changes, supply, budget));
   budget.spend(near.length);
   if (supply.counted.length === 0 && group.every(({ row }) => lengthOf(row) === 0))
     return leastHandled(near).map((set) => optionOf(group, set, supply, prices));
@@ -88,21 +88,32 @@ export function groupOptions(
     .map(({ option }) => option);
 }
 
+/** Ways put together that take as long as one trial of the search. */
+const pairsPerTrial = 4;
+
 /** The ways to make the changes of a group: one for each, or of those that take other pieces of the counted lines, all. */
-function everyWayOf(changes: readonly ChangeWays[], supply: ShimSupply): ShimChange[][] {
-  const combined = changes.reduce<ShimChange[][]>(
-    (all, { ways }) => all.flatMap((before) => ways.map((way) => [...before, way])),
-    [[]],
-  );
-  if (combined.length < 2) return combined;
-  const handledBy = (set: readonly ShimChange[]) => set.reduce((sum, { handled }) => sum + handled, 0);
-  const fewest = new Map<string, ShimChange[]>();
-  for (const set of combined) {
-    const use = supply.countedOf(set).join(" ");
-    const known = fewest.get(use);
-    if (!known || handledBy(set) < handledBy(known)) fewest.set(use, set);
+function everyWayOf(
+  changes: readonly ChangeWays[],
+  supply: ShimSupply,
+  budget: SearchBudget,
+): ShimChange[][] {
+  const [firsts = [], seconds] = changes.map(({ ways }) => ways);
+  if (!seconds) return firsts.map((way) => [way]);
+  const pairs = firsts.length * seconds.length;
+  budget.spend(pairs / pairsPerTrial);
+  if (pairs < 2) return firsts.flatMap((first) => seconds.map((second) => [first, second]));
+  const used = (ways: readonly ShimChange[]) => ways.map((way) => ({ way, use: supply.countedOf([way]) }));
+  const others = used(seconds);
+  const fewest = new Map<string, readonly [ShimChange, ShimChange]>();
+  for (const first of used(firsts)) {
+    for (const second of others) {
+      const use = first.use.map((count, k) => count + (second.use[k] ?? 0)).join(" ");
+      const known = fewest.get(use);
+      const handled = first.way.handled + second.way.handled;
+      if (!known || handled < known[0].handled + known[1].handled) fewest.set(use, [first.way, second.way]);
+    }
   }
-  return [...fewest.values()];
+  return [...fewest.values()].map((pair) => [...pair]);
 }
 
 function optionOf(

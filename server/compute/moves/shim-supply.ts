@@ -24,6 +24,8 @@ const leastStepMm = 1e-4;
 /** What shims can be had for a choice: cut to size, from stock, or both, and how many of each. */
 export class ShimSupply {
   private tables: StockSums | null = null;
+  /** Changes found before, by stack and range: rounds of prices ask for the same again. */
+  private readonly found = new Map<string, readonly ChangeWays[]>();
 
   constructor(
     readonly incrementMm: number | null,
@@ -39,6 +41,18 @@ export class ShimSupply {
   with(rest: { readonly available?: readonly number[]; readonly counted?: readonly number[] }): ShimSupply {
     const { incrementMm, lines, reuse, available, counted } = this;
     return new ShimSupply(incrementMm, lines, reuse, rest.available ?? available, rest.counted ?? counted);
+  }
+
+  /** The same with no more than `most` of each line for any one stack, nothing counted over several. */
+  limitedTo(most: readonly number[]): ShimSupply {
+    const { incrementMm, lines, reuse } = this;
+    const limited = lines.map((line, k) => ({ ...line, quantity: most[k] ?? 0, returnable: 0 }));
+    return new ShimSupply(
+      incrementMm,
+      limited,
+      reuse,
+      limited.map(() => Infinity),
+    );
   }
 
   /** About how far apart the changes of a stack lie. */
@@ -59,12 +73,21 @@ export class ShimSupply {
    * The changes of one stack within `from` to `to`, thinnest first.
    * @throws ComputeError too_many_choices
    */
-  changesWithin(stack: ShimStack, from: number, to: number, budget: SearchBudget): ChangeWays[] {
+  changesWithin(stack: ShimStack, from: number, to: number, budget: SearchBudget): readonly ChangeWays[] {
     if (this.lines.length === 0 && this.incrementMm !== null) {
       const cut = changesWithin(stack, this.incrementMm, from, to, budget);
       return cut.map((change) => ({ changeMm: change.changeMm, ways: [change] }));
     }
-    return stockChangesWithin(this, stack, from, to, budget);
+    if (this.counted.length === 0) return stockChangesWithin(this, stack, from, to, budget);
+    const { thicknessMm, minMm, maxMm, maxCount, piecesMm } = stack;
+    const key = [from, to, thicknessMm, minMm, maxMm, maxCount, piecesMm === null, ...(piecesMm ?? [])].join(
+      " ",
+    );
+    const known = this.found.get(key);
+    if (known) return known;
+    const changes = stockChangesWithin(this, stack, from, to, budget);
+    this.found.set(key, changes);
+    return changes;
   }
 
   /** What uncounted pieces make, up to `mostMm` at least. */

@@ -11,7 +11,10 @@ import { chooseAlone, chooseFromRest, overdrawnBy, type TasksOf } from "./take-f
 export type SolvePass = (shimsOf: (index: number) => ComponentShims | null) => SolvedComponent[];
 
 /** Sharing stock solves every component some tens of times. */
-const callsShared = 6;
+const callsShared = 3;
+const shareShared = 0.5;
+/** What comes of taking in turn is only where sharing begins. */
+const shareInTurn = 0.1;
 
 interface Solved {
   readonly inOrder: SolvedComponent[];
@@ -51,7 +54,7 @@ export function solveWithShims(problem: MoveProblem, pass: SolvePass): Solved {
     return { inOrder, search: { method: "in_turn", proved: false, betterBy: null } };
   }
   const turn: (readonly ShimChoice[] | null)[] = [];
-  const turnBudget = new SearchBudget();
+  const turnBudget = new SearchBudget(1, shareInTurn);
   for (const each of components) {
     turnBudget.startComponent();
     turn.push(chooseFromRest(supply, turn, each, turnBudget));
@@ -62,7 +65,7 @@ export function solveWithShims(problem: MoveProblem, pass: SolvePass): Solved {
     components,
     alone,
     turn,
-    new SearchBudget(problem.aim === "minimax" ? 1 : callsShared),
+    problem.aim === "minimax" ? new SearchBudget() : new SearchBudget(callsShared, shareShared),
   );
   const inOrder = pass((index) => ({ supply, choose: () => shared.byComponent.get(index) ?? null }));
   return { inOrder, search: shared.search };

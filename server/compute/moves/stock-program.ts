@@ -1,5 +1,5 @@
-import loadHighs from "highs";
 import { ComputeError } from "../compute-error.ts";
+import { highs } from "./highs.ts";
 
 /** One way to serve a unit whole: what it costs and what it takes of the lines that are short. */
 export interface Column {
@@ -35,8 +35,6 @@ const timeLimitSeconds = 20;
 /** Near the tightest that the solver takes. */
 const feasibilityTolerance = 1e-9;
 
-const highs = await loadHighs();
-
 /**
  * Solves the program with whole columns (HiGHS, branch and cut); null when nothing fits. `bound` is 0 where the time
  * limit ended it.
@@ -44,6 +42,7 @@ const highs = await loadHighs();
  */
 export function solveStockProgram(
   program: StockProgram,
+  seconds = timeLimitSeconds,
 ): { readonly picks: readonly number[]; readonly optimal: boolean; readonly bound: number } | null {
   const names = namesOf(program);
   if (names.some((own) => own.length === 0)) return null;
@@ -54,7 +53,7 @@ export function solveStockProgram(
     mip_abs_gap: 0,
     mip_feasibility_tolerance: feasibilityTolerance,
     primal_feasibility_tolerance: feasibilityTolerance,
-    time_limit: timeLimitSeconds,
+    time_limit: seconds,
   });
   if (answer.Status === "Infeasible") return null;
   if (answer.Status !== "Optimal" && answer.Status !== "Time limit reached") {

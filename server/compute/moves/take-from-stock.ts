@@ -1,5 +1,5 @@
 import { chooseForTasks, type TasksChoice } from "./choose-for-tasks.ts";
-import type { SearchBudget } from "./search-budget.ts";
+import { SearchBudget } from "./search-budget.ts";
 import { piecesOf } from "./shim-changes.ts";
 import type { ShimSupply } from "./shim-supply.ts";
 import type { ShimChoice, ShimTask } from "./shim-task.ts";
@@ -39,7 +39,10 @@ export function overdrawnBy(
   return [...over].sort((a, b) => a - b);
 }
 
-/** Chooses for a component with what those before it leave. */
+/**
+ * Chooses for a component with what those before it leave. Where that takes more trials than there are, every stack has an
+ * equal share of each line for itself: then nothing has to be counted over them, and the choice may be less good.
+ */
 export function chooseFromRest(
   supply: ShimSupply,
   before: readonly (readonly ShimChoice[] | null)[],
@@ -53,13 +56,24 @@ export function chooseFromRest(
   for (const choices of before) choices?.forEach(take);
   const made: ShimChoice[] = [];
   for (const task of tasks) {
-    const own = chooseForTasks([{ ...task, supply: task.supply.with({ available: [...rest] }) }], budget);
-    const [choice] = own?.choices ?? [];
+    const own: TasksChoice[] = [];
+    const whole = () => {
+      const all = { ...task, supply: task.supply.with({ available: [...rest] }) };
+      own.push(...[chooseForTasks([all], budget) ?? []].flat());
+    };
+    if (!budget.lasts(whole, () => true)) own.push(...[chooseFromShares(task, rest) ?? []].flat());
+    const [choice] = own[0]?.choices ?? [];
     if (!choice) return null;
     take(choice);
     made.push(choice);
   }
   return made;
+}
+
+function chooseFromShares(task: ShimTask, rest: readonly number[]): TasksChoice | null {
+  const stacks = task.loaded.length + task.following.length;
+  const shares = rest.map((count) => Math.max(0, Math.floor(count / stacks)));
+  return chooseForTasks([{ ...task, supply: task.supply.limitedTo(shares) }], new SearchBudget());
 }
 
 /** The stock that could be there for a task at best: all of it, and what is given back before its turn or beside it. */

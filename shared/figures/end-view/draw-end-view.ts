@@ -33,6 +33,10 @@ export function drawEndView(
   return { width, height: bottom + 1, shapes, title: "End view", alternative: describeEndView(model) };
 }
 
+/** Heights of capitals that a name is tried in before it is cut. */
+const nameHeights = [lettering.height, 2, 1.8] as const;
+const smallestName = 1.8;
+
 function drawStation(
   model: EndViewModel,
   station: EndViewStation,
@@ -79,17 +83,24 @@ function nameOf(
   { side, nameHeight }: EndViewScale,
 ): Shape[] {
   const words = reference ? `${id} (ref.)` : id;
-  const room = Math.max(1, Math.floor((side - 1) / textWidth("0")));
+  const height = nameHeights.find((one) => textWidth(words, one) <= side - 1) ?? smallestName;
   return [
     {
       kind: "text",
       at: { x: origin.x, y: origin.y - side / 2 - nameHeight * 0.2 },
-      text: words.length <= room ? words : `${words.slice(0, room - 1)}\u2026`,
-      height: lettering.height,
+      text: cutMiddle(words, Math.floor((side - 1) / textWidth("0", height))),
+      height,
       anchor: "middle",
       tone: "ink",
     },
   ];
+}
+
+/** Names often differ at their ends: what is cut is the middle. */
+function cutMiddle(words: string, room: number): string {
+  if (words.length <= room) return words;
+  const kept = Math.max(1, Math.floor((room - 1) / 2));
+  return `${words.slice(0, kept)}\u2026${words.slice(-kept)}`;
 }
 
 function drawTolerance(

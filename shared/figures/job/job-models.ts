@@ -4,13 +4,16 @@ import type { BoreSectionModel } from "../bore-section/bore-section-model.ts";
 import { endViewOf } from "../end-view/end-view-of.ts";
 import type { EndViewModel } from "../end-view/end-view-model.ts";
 import { planElevationOf, surveyOf } from "../plan-elevation/plan-elevation-of.ts";
-import type { PlanElevationModel } from "../plan-elevation/plan-elevation-model.ts";
+import { inertText } from "../inert-text.ts";
+import type { PlanElevationModel, Survey } from "../plan-elevation/plan-elevation-model.ts";
 import { comparedSurveys, type ComputedSurvey } from "./compared-surveys.ts";
 
 type Drawn = Pick<JobRecord, "machine" | "surveys" | "details">;
+/** How a station's name is written where it is drawn: a drawing leaves room for what it then holds. */
+type Write = (name: string) => string;
 
 /** As found and as left over the machine's z, each from its own axis; null before a survey is computed. */
-export function planElevationOfJob(record: Drawn): PlanElevationModel | null {
+export function planElevationOfJob(record: Drawn, write: Write = inertText): PlanElevationModel | null {
   const compared = comparedSurveys(record);
   const newest = compared.at(-1);
   if (!newest) return null;
@@ -19,23 +22,41 @@ export function planElevationOfJob(record: Drawn): PlanElevationModel | null {
   const moved = compared.some(({ result }) => !sameAxis(result.axis, newest.result.axis));
   return {
     ...model,
-    ...(moved ? { axisWords: `each survey's own axis, of the newest: ${model.axisWords}` } : {}),
-    surveys: compared.map(({ name, result }) => surveyOf(name, result)),
+    axisWords: write(moved ? `each survey's own axis, of the newest: ${model.axisWords}` : model.axisWords),
+    stations: model.stations.map(renamed(write)),
+    surveys: compared.map(({ name, result }) => named(surveyOf(name, result), write)),
   };
 }
 
 /** The same stations' deviations as vectors; null before a survey is computed. */
-export function endViewOfJob(record: Drawn): EndViewModel | null {
+export function endViewOfJob(record: Drawn, write: Write = inertText): EndViewModel | null {
   const compared = comparedSurveys(record);
   const newest = compared.at(-1);
   if (!newest) return null;
   const { units, stations } = record.machine;
-  return endViewOf(
+  const model = endViewOf(
     { units, stations },
     compared.map(({ name, result }) => surveyOf(name, result)),
     new Set(newest.result.axis.through),
   );
+  return {
+    ...model,
+    stations: model.stations.map(renamed(write)),
+    surveys: model.surveys.map((survey) => named(survey, write)),
+  };
 }
+
+const renamed =
+  (write: Write) =>
+  <Station extends { readonly id: string }>(station: Station): Station => ({
+    ...station,
+    id: write(station.id),
+  });
+
+const named = (survey: Survey, write: Write): Survey => ({
+  ...survey,
+  stations: survey.stations.map(renamed(write)),
+});
 
 /** A bore as one survey's reading of it was fitted; null where its readings are no wall points, or were not fitted. */
 export function boreSectionOfJob(

@@ -5,11 +5,15 @@ import type { Figure, Shape } from "../shape.ts";
 /** Flags named on a figure; the record and the report hold all of them. */
 const flagsNamed = 8;
 
-/** A job's flags as sentences, the same one said once. */
-export function flagSentences(flags: readonly Pick<JobFlag, "code" | "detail">[], most = Infinity): string[] {
+/** A job's flags as sentences, the same one said once. The rest of more than `most` are listed elsewhere: `where`. */
+export function flagSentences(
+  flags: readonly Pick<JobFlag, "code" | "detail">[],
+  most = Infinity,
+  where = "in the job's report",
+): string[] {
   const said = [...new Set(flags.map(({ code, detail }) => `${code}: ${detail}`))];
   const rest = said.length - most;
-  return rest > 0 ? [...said.slice(0, most), `and ${rest} more, listed in the job's report.`] : said;
+  return rest > 0 ? [...said.slice(0, most), `and ${rest} more, listed ${where}.`] : said;
 }
 
 /** A figure with what a reader must know of it written underneath, and said in its text alternative. */

@@ -1,5 +1,5 @@
 import { useDeferredValue, useId, useRef, type RefObject } from "react";
-import { lineAndColumn, type Place } from "../../../lib/json-text.ts";
+import { lineAndColumn, type Place } from "../../lib/json-text.ts";
 
 interface JsonEditorProps {
   label: string;

@@ -29,6 +29,11 @@ export const guidePages = [
     lead: "How certain readings make a centre before they are taken, and where to read more.",
   },
   {
+    slug: "line-of-sight",
+    title: "Line of sight",
+    lead: "How to shift and tilt the source so that its beam runs through the bores, and what bends it.",
+  },
+  {
     slug: "bore-fits",
     title: "Bore fits",
     lead: "From readings of a wall to a centre, a size and how well both are known.",

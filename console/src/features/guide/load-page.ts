@@ -9,6 +9,7 @@ export const loadPage: Readonly<Record<GuideSlug, () => Promise<ComponentType>>>
   "worked-example": async () => (await import("./components/worked-example.tsx")).WorkedExample,
   "cold-targets": async () => (await methodPages()).ColdTargets,
   "measurement-plans": async () => (await methodPages()).MeasurementPlans,
+  "line-of-sight": async () => (await methodPages()).LineOfSight,
   "bore-fits": async () => (await import("./components/bore-fits.tsx")).BoreFits,
   "axis-and-verdicts": async () => (await import("./components/axis-and-verdicts.tsx")).AxisAndVerdicts,
   moves: async () => (await import("./components/moves.tsx")).Moves,

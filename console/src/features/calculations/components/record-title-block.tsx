@@ -1,5 +1,5 @@
 import type { CalculationRecord } from "../../../../../shared/schemas/calculations.ts";
-import { CopyButton } from "../../../components/ui/copy-button.tsx";
+import { Copied } from "../../../components/ui/copied.tsx";
 import { Instant } from "../../../components/ui/instant.tsx";
 import { TitleBlock } from "../../../components/ui/title-block.tsx";
 import { computations } from "../../../config/paths.ts";
@@ -53,14 +53,5 @@ export function RecordTitleBlock({ record, owner }: RecordTitleBlockProps) {
         ...(record.note ? [{ name: "note", value: record.note, span: 2 as const }] : []),
       ]}
     />
-  );
-}
-
-function Copied({ text, what }: { text: string; what: string }) {
-  return (
-    <span className="flex items-start justify-between gap-2">
-      <span className="min-w-0 text-xs leading-5 break-all">{text}</span>
-      <CopyButton text={text} what={what} />
-    </span>
   );
 }

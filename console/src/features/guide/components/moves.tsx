@@ -1,5 +1,6 @@
 import { FigureView } from "../../../components/ui/figure-view.tsx";
 import { SectionHeading } from "../../../components/ui/section-heading.tsx";
+import { fewestMoves } from "../content/fewest-moves.ts";
 import { moveSolving } from "../content/move-solving.ts";
 import { shimChoice } from "../content/shim-choice.ts";
 import { drawShimSigns } from "../drawings/draw-shim-signs.ts";
@@ -11,6 +12,10 @@ export function Moves() {
       <section>
         <SectionHeading>Moves</SectionHeading>
         <MethodSheet methods={moveSolving} />
+      </section>
+      <section>
+        <SectionHeading>Fewest moves</SectionHeading>
+        <MethodSheet methods={fewestMoves} />
       </section>
       <section>
         <SectionHeading>Shims</SectionHeading>

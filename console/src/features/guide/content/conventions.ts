@@ -35,7 +35,10 @@ export const unitUses: readonly UnitUse[] = [
     dimension: "offset",
     used: "readings from nominal, centres, targets, deviations, tolerances, shims, uncertainties; covariances in its square",
   },
-  { dimension: "temperature", used: "hot and cold metal; expansion is per degree of it" },
+  {
+    dimension: "temperature",
+    used: "hot and cold metal, gauge and part; expansion is per degree of it, a gradient in it per m or ft",
+  },
   { dimension: "mass", used: "masses on the rotor, a hung mass; a wire's mass per m or ft" },
   { dimension: "force", used: "tension of a wire; reactions" },
   { dimension: "density", used: "of the shaft" },

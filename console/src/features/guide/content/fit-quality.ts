@@ -18,6 +18,22 @@ export const fitQuality: readonly Method[] = [
     sources: [ownRule],
   },
   {
+    id: "at-20-degrees",
+    title: "Diameter at 20 °C",
+    asked: "gaugeTemperature, partTemperature, each with a coefficient or a material",
+    says: [
+      "`diameter` is as read. Where a bore states how warm its gauge, its part or both were, `diameterAt20C` stands beside it: a warm gauge has long divisions and reads short, a warm part is large. A 1200 mm steel bore at 45 °C is 0.36 mm large. The gauge is whatever carries the scale: the instrument, or the master that it was set to.",
+      "With one side stated the other is taken as it was read, and the answer warns `one_temperature_stated`. Centres are not touched. What is not known of temperatures and coefficients is left out of every uncertainty: 1 °C on that bore is 0.014 mm.",
+    ],
+    formulas: ["D_20 = D · (1 + α_g · (t_g − 20 °C)) / (1 + α_p · (t_p − 20 °C))"],
+    where: [
+      ["D", "diameter as read"],
+      ["α_g, t_g", "mean expansion and temperature of the gauge"],
+      ["α_p, t_p", "those of the part"],
+    ],
+    sources: ["ISO 1:2016"],
+  },
+  {
     id: "mad",
     title: "Readings that stand out",
     asked: "outliers: {rule: mad, threshold}",
@@ -68,6 +84,39 @@ export const fitQuality: readonly Method[] = [
       ["u", "standard uncertainty from the covariance"],
     ],
     sources: ["Abramowitz & Stegun 26.7.1"],
+  },
+  {
+    id: "monte-carlo",
+    title: "First order held against Monte Carlo",
+    asked: "monteCarlo: {trials, seed, significantDigits}, of bore fits, axis deviations and alignments",
+    says: [
+      "Every expanded uncertainty here is of first order: as if the fit were linear over the reach of its errors. On short arcs, with limiting circles, and where a few readings set the scatter, it is not. Then each trial draws every reading anew, fits the bore or sets the axis anew, and the spread of the results stands beside the first order.",
+      "Readings are normal with the uncertainties stated, points in h and v alike. Where nothing is stated, or the scatter passes it, the scale itself is drawn with its degrees of freedom (Student's t). Centres of stations are drawn with their whole covariance, targets in h and v. Clock angles, z and readings put aside stay as they are.",
+      "`confirmed` is true when both ends of both intervals agree within the tolerance d, false with `first_order_not_confirmed` when they do not. It is null with `trials_too_few` where so many trials cannot tell, and with `uncertainty_unknown` where there is nothing to draw. A trial that cannot be computed is counted, `trials_failed`, and might have fallen anywhere.",
+      "The same seed gives the same numbers. The stream of each bore and station comes from seed and id, so that their order changes nothing. A cold target is a plain sum of normal growths: there first order is exact, and no trials are needed.",
+    ],
+    formulas: [
+      "confirmed: |y − U − y_low| ≤ d and |y + U − y_high| ≤ d",
+      "y_low, y_high: ranks r and r + q of M sorted results,   q = level · M,   r = (M − q)/2",
+      "d = 10^L/2 where u = c · 10^L",
+      "i_j ← a_j · i_j mod m_j,   j = 1 … 4;   uniform = Σ i_j/m_j less its whole part",
+      "normal = √(−2 · ln r_1) · cos(2π · r_2) and √(−2 · ln r_1) · sin(2π · r_2)",
+    ],
+    where: [
+      ["y, u, U", "value, standard and expanded uncertainty of first order"],
+      ["c", "a whole number of one digit, of two where u begins with 1, or as asked"],
+      ["a_j, m_j", "11600, 47003, 23000, 33000; 2147483579, 2147483543, 2147483423, 2147483123"],
+      ["r_1, r_2", "uniform draws"],
+    ],
+    sources: [
+      "JCGM 101:2008, 8.1",
+      "JCGM 101:2008, 7.7",
+      "JCGM 101:2008, 7.9.2",
+      "JCGM 101:2008, 6.4.9",
+      "JCGM 102:2011, 5.3.2",
+      "JCGM 101:2008, C.3",
+      "JCGM 101:2008, C.4",
+    ],
   },
   {
     id: "coverage",

@@ -22,6 +22,11 @@ export const jobSteps: readonly JobStep[] = [
     slug: "measurement-plans",
   },
   {
+    does: "Bring the line of sight roughly onto the bore line, its source outside the stations measured.",
+    kind: "sight-line-setup",
+    slug: "line-of-sight",
+  },
+  {
     does: "Prove that readings repeat before trusting them.",
     kind: "repeatability-study",
     slug: "repeatability",
@@ -31,6 +36,11 @@ export const jobSteps: readonly JobStep[] = [
     does: "Set the reference axis, and judge every deviation.",
     kind: "axis-deviation",
     slug: "axis-and-verdicts",
+  },
+  {
+    does: "Where moving parts is dear, choose the axis and the fewest parts to move together.",
+    kind: "fewest-moves",
+    slug: "moves",
   },
   { does: "Plan the moves, the shims and their order.", kind: "shim-move", slug: "moves" },
   {

@@ -9,7 +9,7 @@ import { tabulatePlanElevation } from "../../../../../shared/figures/plan-elevat
 import type { AxisDeviationResult as Result } from "../../../../../shared/schemas/axis-deviations.ts";
 import { FigureView } from "../../../components/ui/figure-view.tsx";
 import { NumberTable } from "../../../components/ui/number-table.tsx";
-import { VerdictWord } from "../../../components/ui/verdict-mark.tsx";
+import { VerdictSummary } from "./verdict-summary.tsx";
 import { Warnings, type PlacedWarning } from "./warnings.tsx";
 
 interface AxisDeviationResultProps {
@@ -26,36 +26,11 @@ export function AxisDeviationResult({ call, result, predicted }: AxisDeviationRe
   return (
     <div className="sheet-stack">
       <FigureView number={2} draw={(width) => drawPlanElevation(model, width)} />
-      <Summary summary={result.summary} />
+      <VerdictSummary summary={result.summary} />
       {found && <NumberTable table={found} />}
       <NumberTable table={tabulateAxis(result.axis, call.units)} />
       <Warnings warnings={warningsOf(result)} />
     </div>
-  );
-}
-
-function Summary({ summary }: { summary: Result["summary"] }) {
-  const judged = (["conforms", "undecided", "exceeds"] as const).filter((verdict) => summary[verdict] > 0);
-  return (
-    <dl className="flex flex-wrap gap-x-10 gap-y-3" aria-label="Verdicts">
-      {judged.map((verdict) => (
-        <div key={verdict}>
-          <dt>
-            <VerdictWord verdict={verdict} />
-          </dt>
-          <dd className="text-xl">{summary[verdict]}</dd>
-        </div>
-      ))}
-      {summary.worst !== null && (
-        <div>
-          <dt className="field-name">uses most of its tolerance</dt>
-          <dd className="text-xl">
-            {summary.worst.id}{" "}
-            <span className="whitespace-nowrap">{(summary.worst.ratio * 100).toFixed(0)} %</span>
-          </dd>
-        </div>
-      )}
-    </dl>
   );
 }
 

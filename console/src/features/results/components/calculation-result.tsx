@@ -6,9 +6,11 @@ import { AxisDeviationResult } from "./axis-deviation-result.tsx";
 import { BoreFitResult } from "./bore-fit-result.tsx";
 import { ColdTargetResult } from "./cold-target-result.tsx";
 import { ConfirmationResult } from "./confirmation-result.tsx";
+import { FewestMovesResult } from "./fewest-moves-result.tsx";
 import { MeasurementPlanResult } from "./measurement-plan-result.tsx";
 import { RepeatabilityResult } from "./repeatability-result.tsx";
 import { ShimMoveResult } from "./shim-move-result.tsx";
+import { SightLineResult } from "./sight-line-result.tsx";
 
 interface CalculationResultProps {
   kind: CalculationKind;
@@ -43,12 +45,16 @@ export function CalculationResult({ kind, request, response, chosen, onChoose }:
       );
     case "shim-move":
       return <ShimMoveResult request={read.request} result={read.result} />;
+    case "fewest-moves":
+      return <FewestMovesResult request={read.request} result={read.result} />;
     case "cold-target":
       return <ColdTargetResult request={read.request} result={read.result} />;
     case "confirmation":
       return <ConfirmationResult request={read.request} result={read.result} />;
     case "measurement-plan":
       return <MeasurementPlanResult request={read.request} plans={read.result.bores} />;
+    case "sight-line-setup":
+      return <SightLineResult request={read.request} result={read.result} />;
     case "repeatability-study":
       return <RepeatabilityResult request={read.request} result={read.result} />;
   }

@@ -13,7 +13,13 @@ import { Tables } from "./tables.tsx";
 import { Warnings, type PlacedWarning } from "./warnings.tsx";
 
 /** Whether the moves did what they should and nothing else: the judgement first, then what it rests on. */
-export function ConfirmationResult({ request, result }: { request: ConfirmationRequest; result: Result }) {
+export function ConfirmationResult({
+  request,
+  result,
+}: {
+  request: Pick<ConfirmationRequest, "units">;
+  result: Result;
+}) {
   const { units } = request;
   const long = [tabulateMoved(result, units), tabulateUnmoved(result, units), tabulateAsLeft(result, units)];
   return (

@@ -30,6 +30,12 @@ import {
   type ConfirmationRequest,
 } from "../../../../../shared/schemas/confirmations.ts";
 import {
+  fewestMovesRequest,
+  fewestMovesResponse,
+  type FewestMovesRequest,
+  type FewestMovesResult,
+} from "../../../../../shared/schemas/fewest-moves.ts";
+import {
   measurementPlanRequest,
   measurementPlanResponse,
   type BoreMeasurementPlan,
@@ -47,6 +53,12 @@ import {
   type ShimMoveRequest,
   type ShimMoveResult,
 } from "../../../../../shared/schemas/shim-moves.ts";
+import type { SightLineResult } from "../../../../../shared/schemas/sight-line-answers.ts";
+import {
+  sightLineSetupRequest,
+  sightLineSetupResponse,
+  type SightLineSetupRequest,
+} from "../../../../../shared/schemas/sight-line-setups.ts";
 import type { CalculationKind } from "../../../config/paths.ts";
 
 /** A call of a kind and what of its answer is drawn. */
@@ -60,11 +72,13 @@ export type ReadCalculation =
   | Read<"bore-fit", BoreFitRequest, { readonly bores: readonly BoreFitResult[] }>
   | Read<"axis-deviation", AxisDeviationRequest, AxisDeviationResult>
   | Read<"shim-move", ShimMoveRequest, ShimMoveResult>
+  | Read<"fewest-moves", FewestMovesRequest, FewestMovesResult>
   | Read<"alignment", AlignmentRequest, AlignmentResult>
   | Read<"cold-target", ColdTargetRequest, ColdTargetResult>
   | Read<"confirmation", ConfirmationRequest, ConfirmationResult>
   | Read<"repeatability-study", RepeatabilityStudyRequest, RepeatabilityStudyResult>
-  | Read<"measurement-plan", MeasurementPlanRequest, { readonly bores: readonly BoreMeasurementPlan[] }>;
+  | Read<"measurement-plan", MeasurementPlanRequest, { readonly bores: readonly BoreMeasurementPlan[] }>
+  | Read<"sight-line-setup", SightLineSetupRequest, SightLineResult>;
 
 /** A call and its answer in the forms of this version; null where the forms are of another version. */
 export function readCalculation(
@@ -89,6 +103,8 @@ export function readCalculation(
       return of(kind, read(alignmentRequest, alignmentResponse));
     case "shim-move":
       return of(kind, read(shimMoveRequest, shimMoveResponse));
+    case "fewest-moves":
+      return of(kind, read(fewestMovesRequest, fewestMovesResponse));
     case "cold-target":
       return of(kind, read(coldTargetRequest, coldTargetResponse));
     case "confirmation":
@@ -97,6 +113,8 @@ export function readCalculation(
       return of(kind, read(repeatabilityStudyRequest, repeatabilityStudyResponse));
     case "measurement-plan":
       return of(kind, read(measurementPlanRequest, measurementPlanResponse));
+    case "sight-line-setup":
+      return of(kind, read(sightLineSetupRequest, sightLineSetupResponse));
   }
 }
 

@@ -44,35 +44,38 @@ export interface Endpoint {
 }
 
 /** The service's own document is where the examples come from, so that none here can be out of date. */
-export const examplesQuery = queryOptions({
-  queryKey: ["examples"],
+export const documentQuery = queryOptions({
+  queryKey: ["document"],
   staleTime: Infinity,
   queryFn: async ({ signal }) => {
     const answer = await sendRequest({ method: "GET", path: serverPaths.document, signal });
-    return endpointsOf(readAnswer(documentSchema, answer));
+    return readAnswer(documentSchema, answer);
   },
 });
 
 export function useExamples() {
-  return useQuery(examplesQuery);
+  return useQuery({ ...documentQuery, select: endpointsOf });
 }
 
-function endpointsOf(document: z.infer<typeof documentSchema>): ReadonlyMap<CalculationKind, Endpoint> {
+type Document = z.infer<typeof documentSchema>;
+
+/** The examples of what is posted to `path`. */
+export function examplesAt(document: Document, path: string): Example[] {
+  const post = document.paths[path]?.post;
+  const examples = Object.entries(post?.requestBody?.content["application/json"]?.examples ?? {});
+  return examples.map(([name, example]) => ({
+    name,
+    summary: example.summary ?? name,
+    text: writeJson(example.value),
+  }));
+}
+
+function endpointsOf(document: Document): ReadonlyMap<CalculationKind, Endpoint> {
   return new Map(
     calculationKinds.map((kind) => {
-      const post = document.paths[computations[kind].path]?.post;
-      const examples = Object.entries(post?.requestBody?.content["application/json"]?.examples ?? {});
-      return [
-        kind,
-        {
-          summary: post?.summary ?? "",
-          examples: examples.map(([name, example]) => ({
-            name,
-            summary: example.summary ?? name,
-            text: writeJson(example.value),
-          })),
-        },
-      ];
+      const { path } = computations[kind];
+      const summary = document.paths[path]?.post?.summary ?? "";
+      return [kind, { summary, examples: examplesAt(document, path) }];
     }),
   );
 }

@@ -1,12 +1,9 @@
-import { useDeferredValue, useEffect, useId, useMemo, useRef } from "react";
+import type { Problem } from "../../../../../shared/schemas/problem.ts";
 import { Button } from "../../../components/ui/button.tsx";
 import { CopyButton } from "../../../components/ui/copy-button.tsx";
-import { FaultList } from "../../../components/ui/fault-list.tsx";
-import type { Problem } from "../../../../../shared/schemas/problem.ts";
-import { lineAndColumn, parseJsonText, placeOfPointer, type Place } from "../../../lib/json-text.ts";
+import { JsonDocument } from "../../../components/ui/json-document.tsx";
+import { useDraftText } from "../../../lib/use-draft-text.ts";
 import type { TriedCall } from "../api/send-call.ts";
-import { JsonEditor } from "./json-editor.tsx";
-import { useCallText } from "./use-call-text.ts";
 import { writeCurl } from "./write-curl.ts";
 
 interface CallFormProps {
@@ -20,109 +17,29 @@ interface CallFormProps {
 }
 
 export function CallForm({ path, draftName, exampleText, busy, refusal, onSend }: CallFormProps) {
-  const draft = useCallText(draftName, exampleText);
-  const editor = useRef<HTMLTextAreaElement>(null);
-  const faultsId = useId();
-  const deferredText = useDeferredValue(draft.text);
-  const parsed = useMemo(() => parseJsonText(deferredText), [deferredText]);
-  const faults = useMemo(() => {
-    const standing =
-      refusal !== null && refusal.bodyText === deferredText ? (refusal.problem.errors ?? []) : [];
-    return parsed.ok
-      ? standing.map((fault) => ({ fault, place: placeOfPointer(parsed.places, fault.pointer ?? "") }))
-      : [];
-  }, [refusal, deferredText, parsed]);
-  const marks = parsed.ok
-    ? faults.flatMap(({ place }) => (place === null ? [] : [narrowed(deferredText, place)]))
-    : [{ from: parsed.fault.at, to: parsed.fault.at + 1 }];
-  useEffect(() => {
-    // A refusal brings its first fault into view; focus stays where the writer has it.
-    const first = faults[0]?.place;
-    if (first) scrollTo(editor.current, lineAndColumn(deferredText, first.from).line);
-  }, [faults, deferredText]);
-  const go = (place: Place): void => {
-    editor.current?.focus();
-    editor.current?.setSelectionRange(place.from, place.to);
-    scrollTo(editor.current, lineAndColumn(draft.text, place.from).line);
-  };
-  const send = (): void => {
-    const now = parseJsonText(draft.text);
-    if (busy) return;
-    if (now.ok) onSend({ path, bodyText: draft.text, request: now.value });
-    else go({ from: now.fault.at, to: now.fault.at + 1 });
-  };
+  const draft = useDraftText(draftName, exampleText);
   return (
-    <div className="grid gap-4">
-      <JsonEditor
-        label="Request body, JSON"
-        text={draft.text}
-        faults={marks}
-        describedBy={faultsId}
-        onChange={draft.change}
-        onSend={send}
-        editor={editor}
-      />
-      <div id={faultsId} role="status" className="text-sm">
-        {!parsed.ok && (
-          <SyntaxFault text={deferredText} at={parsed.fault.at} detail={parsed.fault.detail} go={go} />
-        )}
-        {faults.length > 0 && (
-          <FaultList
-            faults={faults.map(({ fault }) => fault)}
-            more={refusal?.problem.more}
-            placeOf={(fault) => {
-              const place = faults.find((known) => known.fault === fault)?.place ?? null;
-              if (place === null) return null;
-              return { words: `line ${lineAndColumn(deferredText, place.from).line}`, go: () => go(place) };
-            }}
+    <JsonDocument
+      label="Request body, JSON"
+      text={draft.text}
+      onChange={draft.change}
+      busy={busy}
+      refusal={refusal && { problem: refusal.problem, text: refusal.bodyText }}
+      onSend={(bodyText, request) => onSend({ path, bodyText, request })}
+    >
+      {(send) => (
+        <div className="flex flex-wrap gap-2">
+          <Button look="main" busy={busy} onClick={send}>
+            Send call
+          </Button>
+          <CopyButton
+            label="Copy as curl"
+            what="the call as curl"
+            text={() => writeCurl(location.origin, path, draft.text)}
           />
-        )}
-      </div>
-      <div className="flex flex-wrap gap-2">
-        <Button look="main" busy={busy} onClick={send}>
-          Send call
-        </Button>
-        <CopyButton
-          label="Copy as curl"
-          what="the call as curl"
-          text={() => writeCurl(location.origin, path, draft.text)}
-        />
-        {draft.isEdited && <Button onClick={draft.restore}>Restore example</Button>}
-      </div>
-    </div>
+          {draft.isEdited && <Button onClick={draft.restore}>Restore example</Button>}
+        </div>
+      )}
+    </JsonDocument>
   );
-}
-
-function SyntaxFault({
-  text,
-  at,
-  detail,
-  go,
-}: {
-  text: string;
-  at: number;
-  detail: string;
-  go: (place: Place) => void;
-}) {
-  const { line, column } = lineAndColumn(text, at);
-  return (
-    <p className="text-signal">
-      <button type="button" className="link cursor-pointer" onClick={() => go({ from: at, to: at + 1 })}>
-        Line {line}, column {column}
-      </button>
-      : {detail}.
-    </p>
-  );
-}
-
-/** A fault in a whole object is marked on its first line only: what is wrong is what it is or lacks, not all it holds. */
-function narrowed(text: string, place: Place): Place {
-  const lineEnd = text.indexOf("\n", place.from);
-  return { from: place.from, to: lineEnd === -1 ? place.to : Math.min(place.to, lineEnd) };
-}
-
-function scrollTo(area: HTMLTextAreaElement | null, line: number): void {
-  if (!area) return;
-  const lineHeight = area.scrollHeight / area.value.split("\n").length;
-  area.scrollTop = Math.max(0, (line - 5) * lineHeight);
 }

@@ -1,22 +1,22 @@
 import { useState } from "react";
-import { readDraft, writeDraft } from "../../../lib/drafts.ts";
+import { readDraft, writeDraft } from "./drafts.ts";
 
-/** The text of a call, begun from an example and kept for this tab as soon as it differs from it. */
-export function useCallText(name: string, exampleText: string) {
+/** A text begun from another and kept for this tab as soon as it differs from it. */
+export function useDraftText(name: string, beginning: string) {
   const [edited, setEdited] = useState<{ name: string; text: string | null }>(() => ({
     name,
     text: readDraft(name),
   }));
-  // Another endpoint or example has a draft of its own.
+  // Another name has a draft of its own.
   const current = edited.name === name ? edited : { name, text: readDraft(name) };
   if (current !== edited) setEdited(current);
   const change = (text: string | null): void => {
-    const kept = text === exampleText ? null : text;
+    const kept = text === beginning ? null : text;
     writeDraft(name, kept);
     setEdited({ name, text: kept });
   };
   return {
-    text: current.text ?? exampleText,
+    text: current.text ?? beginning,
     isEdited: current.text !== null,
     change: (text: string): void => change(text),
     restore: (): void => change(null),
