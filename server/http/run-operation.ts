@@ -67,13 +67,9 @@ async function runOnce(operation: Operation, call: Call): Promise<Reply> {
   }
 }
 
-/** What makes two calls the same call. */
-export function callText({
-  request,
-  path,
-  canonicalText,
-}: Pick<Call, "request" | "path" | "canonicalText">): string {
-  return `${request.method} ${path}\n${canonicalText}`;
+/** What makes two calls the same call: the address with its query, since store=true is another call than a preview. */
+export function callText({ request, canonicalText }: Pick<Call, "request" | "canonicalText">): string {
+  return `${request.method} ${request.originalUrl}\n${canonicalText}`;
 }
 
 /** The key as sent, bare or as a quoted string. */

@@ -92,7 +92,7 @@ function sentenceOf(issue: Issue): string {
 }
 
 /** The unit and range of the number at `path`, where its schema says what it measures. */
-function quantityAt(
+export function quantityAt(
   schema: z.ZodType,
   path: readonly PropertyKey[],
   body: unknown,

@@ -5,7 +5,7 @@ import type { ShimMoveResult } from "../../shared/schemas/shim-moves.ts";
 import { convertersFor } from "../../shared/units.ts";
 import type { Fault } from "../../shared/error-codes.ts";
 import { unknownReference } from "../calculations/common-faults.ts";
-import { followMove } from "../compute/moves/follow-move.ts";
+import { followMove } from "../compute/following/follow-move.ts";
 
 /** Most that readings may differ from the rigid move, where the machine does not say: as POST /v1/shim-moves has it. */
 const misfitDefaultMm = 0.02;

@@ -1,10 +1,10 @@
 import { ComputeError, assertFinite } from "../compute-error.ts";
 import type { PlaneVector } from "../plane.ts";
 import { clockDirection } from "../bore/clock-direction.ts";
-import { dot } from "./least-squares-in-order.ts";
-import { planes, type MoveIndicator, type MoveSupport, type Plane } from "./move-problem.ts";
-import { rigidFitOf } from "./rigid-fit.ts";
-import { modesOf, rowAlong, type Mode } from "./rigid-freedom.ts";
+import { dot } from "../moves/least-squares-in-order.ts";
+import { planes, type MoveIndicator, type MoveSupport, type Plane } from "../moves/move-problem.ts";
+import { rigidFitOf } from "../moves/rigid-fit.ts";
+import { modesOf, rowAlong, type Mode } from "../moves/rigid-freedom.ts";
 
 /** What has been read since a component began to move, in millimetres. */
 export interface MoveReadings {
