@@ -25,7 +25,7 @@ const { accessToken } = await post<{ accessToken: string }>("/v1/sessions", {
 // The machine, and a job on it as it stands today.
 const machine = await post<{ id: string; revision: number }>(
   "/v1/machines",
-  read("machines/fellgate-unit-2.json"),
+  read("machines/fellgate-gas-turbine.json"),
 );
 console.log(`Machine ${machine.id}, revision ${machine.revision}`);
 const job = await post<{ id: string }>("/v1/jobs", {

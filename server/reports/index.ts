@@ -6,4 +6,10 @@ import type { ReportFormat } from "./report-format.ts";
 import { xlsxReport } from "./xlsx/xlsx-report.ts";
 
 /** Every form of a report, the first being the one sent where a caller states none. */
-export const reportFormats: readonly ReportFormat[] = [jsonReport, pdfReport, xlsxReport, csvReport, dxfReport];
+export const reportFormats: readonly ReportFormat[] = [
+  jsonReport,
+  pdfReport,
+  xlsxReport,
+  csvReport,
+  dxfReport,
+];

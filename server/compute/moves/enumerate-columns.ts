@@ -17,6 +17,7 @@ export interface BestPick {
   readonly value: PickValue;
 }
 
+/** What one column of each unit comes to: the largest cost, their sum, pieces handled, total change, and what the stock gives. */
 export function valueOfPicks(units: readonly Unit[], picks: readonly number[]): PickValue {
   const columns = units.flatMap(({ columns: all }, u) => all[picks[u] ?? -1] ?? []);
   const sum = (of: (column: Column) => number) => columns.reduce((total, column) => total + of(column), 0);

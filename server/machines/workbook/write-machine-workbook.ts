@@ -154,11 +154,7 @@ function guide(units: Units): Sheet {
       [textCell("Several ids or numbers in one cell stand one a line, or with semicolons between them.")],
       [],
       ...tableNames.flatMap((name) => {
-        const {
-          name: sheet,
-          what,
-          fields,
-        }: { name: string; what: string; fields: readonly Field[] } = tableSheets[name];
+        const { name: sheet, what, fields, root }: TableSheet = tableSheets[name];
         return [
           [textCell(sheet, { fontWeight: "bold" }), textCell(what, wrapped)],
           ...fields.map((field) => [

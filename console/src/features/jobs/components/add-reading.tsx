@@ -13,7 +13,7 @@ import { ProblemError } from "../../../lib/service-error.ts";
 import { useDraftText } from "../../../lib/use-draft-text.ts";
 import { useAddToJob } from "../api/add-to-job.ts";
 import { readingForms, stationChoices } from "./job-words.ts";
-import { bodyOf, emptyDraft, type ReadingDraft, type TypedForm } from "./reading-draft.ts";
+import { bodyOf, emptyDraft, readKeptDraft, type ReadingDraft, type TypedForm } from "./reading-draft.ts";
 import { GaugeFields, WireFields } from "./reading-fields.tsx";
 import { ReadingRows } from "./reading-rows.tsx";
 
@@ -24,7 +24,7 @@ export function AddReading({ record, survey }: { record: JobRecord; survey: stri
     JSON.stringify(emptyDraft(stations[0]?.value ?? "", toLocalMoment(new Date()))),
   );
   const text = useDraftText(`job.${record.id}.${survey}.reading`, beginning);
-  const draft = JSON.parse(text.text) as ReadingDraft;
+  const draft = readKeptDraft(text.text, beginning);
   const set = (change: Partial<ReadingDraft>): void => text.change(JSON.stringify({ ...draft, ...change }));
   const [faults, setFaults] = useState<PointerFaults>({});
   const [stored, setStored] = useState<string | null>(null);

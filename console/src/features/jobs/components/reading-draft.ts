@@ -1,3 +1,4 @@
+import { z } from "zod";
 import type { Reading } from "../../../../../shared/schemas/job-entries.ts";
 import { fromLocalMoment } from "../../../lib/local-moment.ts";
 import { readDecimal } from "../../../lib/read-decimal.ts";
@@ -21,6 +22,30 @@ export interface ReadingDraft {
   readonly sag: string;
   /** One cell a column of the form, one row a reading; each form keeps its own. */
   readonly rows: Readonly<Record<TypedForm, readonly (readonly string[])[]>>;
+}
+
+const text = z.string();
+const rows = z.array(z.array(text)).readonly();
+const draftSchema: z.ZodType<ReadingDraft> = z.object({
+  station: text,
+  form: z.enum(["turned_gauge", "points", "wire"]),
+  takenAt: text,
+  person: text,
+  upperHalf: text,
+  closing: z.boolean(),
+  sense: text,
+  zero: text,
+  gaugeSag: text,
+  measuredTo: text,
+  wireDiameter: text,
+  sag: text,
+  rows: z.object({ turned_gauge: rows, points: rows, wire: rows }),
+});
+
+/** A draft as it was kept; `beginning` where it was kept by another version of the console. */
+export function readKeptDraft(kept: string, beginning: string): ReadingDraft {
+  const parsed = draftSchema.safeParse(JSON.parse(kept));
+  return parsed.success ? parsed.data : (JSON.parse(beginning) as ReadingDraft);
 }
 
 /** The columns of the table that is typed in, each with the dimension whose unit stands in its head. */

@@ -1,0 +1,140 @@
+import { JSDOM } from "jsdom";
+import { describe, expect, it } from "vitest";
+import { jobFigures } from "../../../shared/figures/job/job-figures.ts";
+import type { JobRecord } from "../../../shared/schemas/jobs.ts";
+import { hostileJob } from "../../../tests/support/hostile-job.ts";
+import { fellgateReport, writeFellgateJob } from "../../../tests/support/job-record.ts";
+import type { ReportContext } from "../report-format.ts";
+import { writeJobFigure } from "./figure-sheet.ts";
+import { escapeXml, writeSvg } from "./write-svg.ts";
+
+interface Report {
+  readonly record: JobRecord;
+  readonly context: ReportContext;
+}
+const signed = fellgateReport({ signed: true });
+const hostileWriter = hostileJob();
+const hostile: Report = { record: hostileWriter.record(), context: hostileWriter.context() };
+
+const svgOf = ({ record, context }: Report, wanted: string): string => {
+  const figure = jobFigures(record).find(({ id }) => id === wanted);
+  if (!figure) throw new Error(`There is no figure ${wanted}.`);
+  return writeJobFigure(figure, record, context);
+};
+/** @throws where the text is no well-formed XML */
+const parse = (svg: string): Document => new JSDOM(svg, { contentType: "image/svg+xml" }).window.document;
+const textsOf = (svg: string): string[] =>
+  [...parse(svg).querySelectorAll("text")].map(({ textContent }) => textContent);
+
+describe("the figures of a job", () => {
+  it("are plan and elevation, end view, and a section of every bore of every survey that was read on its wall", () => {
+    const { record } = signed;
+    const figures = jobFigures(record);
+    const sections = record.surveys.flatMap((_, survey) =>
+      record.machine.stations.map((_station, station) => `bore-${survey + 1}-${station + 1}`),
+    );
+    expect(figures.map(({ id }) => id)).toEqual(["plan-elevation", "end-view", ...sections]);
+    expect(figures.find(({ id }) => id === "bore-2-3")).toMatchObject({
+      survey: record.surveys[1]?.id,
+      station: record.machine.stations[2]?.id,
+      title: "Bore section cas-2, as left",
+    });
+  });
+
+  it("are none before a survey is computed", () => {
+    expect(jobFigures(writeFellgateJob("started").record())).toEqual([]);
+  });
+});
+
+describe("a figure as SVG", () => {
+  it.each(jobFigures(signed.record).map(({ id }) => id))("is well-formed, named and described: %s", (id) => {
+    const root = parse(svgOf(signed, id)).documentElement;
+    expect(root.localName).toBe("svg");
+    expect(root.namespaceURI).toBe("http://www.w3.org/2000/svg");
+    for (const [attribute, element] of [
+      ["aria-labelledby", "title"],
+      ["aria-describedby", "desc"],
+    ] as const) {
+      const named = root.querySelector(element);
+      expect(named?.getAttribute("id")).toBe(root.getAttribute(attribute));
+      expect(named?.textContent.length).toBeGreaterThan(5);
+    }
+  });
+
+  it("holds shapes and text alone: nothing that runs, loads or links", () => {
+    for (const report of [signed, hostile]) {
+      for (const { id } of jobFigures(report.record)) {
+        const svg = svgOf(report, id);
+        const elements = new Set([...parse(svg).querySelectorAll("*")].map(({ localName }) => localName));
+        for (const name of elements)
+          expect("svg title desc rect g line polyline polygon circle path text".split(" ")).toContain(name);
+        expect(svg).not.toMatch(/<[^>]*\s(on\w+|href|style|src)\s*=/i);
+      }
+    }
+  });
+
+  it("is as large on paper as it says: a user unit is a millimetre", () => {
+    const root = parse(svgOf(signed, "plan-elevation")).documentElement;
+    const [, , width, height] = (root.getAttribute("viewBox") ?? "").split(" ");
+    expect(root.getAttribute("width")).toBe(`${width}mm`);
+    expect(root.getAttribute("height")).toBe(`${height}mm`);
+    expect(Number(width)).toBe(260);
+  });
+
+  it("shows as found and as left together, every station, the record's hash and its state", () => {
+    for (const id of ["plan-elevation", "end-view"]) {
+      const words = textsOf(svgOf(signed, id)).join(" ");
+      for (const part of ["as found", "as left", signed.context.recordHash, "Signed by Ines Alder"])
+        expect(words).toContain(part);
+      for (const station of signed.record.machine.stations) expect(words).toContain(station.id);
+    }
+    const draft = writeFellgateJob();
+    expect(
+      textsOf(svgOf({ record: draft.record(), context: draft.context() }, "end-view")).join(" "),
+    ).toContain("DRAFT, not signed");
+  });
+
+  it("bears the record's flags, drawn and said", () => {
+    for (const id of ["plan-elevation", "end-view", "bore-1-1"]) {
+      const svg = svgOf(hostile, id);
+      expect(textsOf(svg).join(" ")).toContain("Flag: set_up_unchecked");
+      expect(parse(svg).querySelector("desc")?.textContent).toContain("Flag: set_up_unchecked");
+    }
+  });
+
+  it("shows names that would act as text", () => {
+    const texts = textsOf(svgOf(hostile, "plan-elevation"));
+    for (const name of ["<b>&amp;</b>", 'say "no"', "[U+202E]lamron", "'quoted"])
+      expect(texts).toContain(name);
+    expect(svgOf(hostile, "plan-elevation")).not.toContain("\u202e");
+  });
+
+  it("is the same for the same record", () => {
+    expect(svgOf(fellgateReport({ signed: true }), "end-view")).toBe(svgOf(signed, "end-view"));
+  });
+});
+
+describe("writeSvg", () => {
+  it("draws arcs clockwise from the top, the long way round where they are longer than half", () => {
+    const svg = writeSvg({
+      width: 20,
+      height: 20,
+      title: "arcs",
+      alternative: "two arcs",
+      shapes: [90, 270].map((endDeg) => ({
+        kind: "arc" as const,
+        pen: "narrow" as const,
+        centre: { x: 10, y: 10 },
+        radius: 5,
+        startDeg: 0,
+        endDeg,
+      })),
+    });
+    const paths = [...parse(svg).querySelectorAll("path")].map((path) => path.getAttribute("d"));
+    expect(paths).toEqual(["M10 5A5 5 0 0 1 15 10", "M10 5A5 5 0 1 1 5 10"]);
+  });
+
+  it("escapes what XML reserves, and writes what it cannot hold as a code point", () => {
+    expect(escapeXml(`<a b="c" d='e'>&\u0000`)).toBe("&lt;a b=&quot;c&quot; d=&#39;e&#39;&gt;&amp;[U+0000]");
+  });
+});
