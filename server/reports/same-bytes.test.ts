@@ -19,7 +19,7 @@ describe("the same record is the same bytes", () => {
     );
     const { code, stdout, stderr } = await runProgram(
       ["node", "--import", "tsx", "tests/support/report-in-zone.ts"],
-      { TZ: "Pacific/Chatham" },
+      { TZ: "Pacific/Chatham", LC_ALL: "tr_TR.UTF-8" },
     );
     expect(stderr).toBe("");
     expect(code).toBe(0);

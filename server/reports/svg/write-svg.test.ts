@@ -1,9 +1,9 @@
-import { JSDOM } from "jsdom";
 import { describe, expect, it } from "vitest";
 import { jobFigures } from "../../../shared/figures/job/job-figures.ts";
 import type { JobRecord } from "../../../shared/schemas/jobs.ts";
 import { hostileJob } from "../../../tests/support/hostile-job.ts";
 import { fellgateReport, writeFellgateJob } from "../../../tests/support/job-record.ts";
+import { readXml, type XmlElement } from "../../../tests/support/read-xml.ts";
 import type { ReportContext } from "../report-format.ts";
 import { writeJobFigure } from "./figure-sheet.ts";
 import { escapeXml, writeSvg } from "./write-svg.ts";
@@ -21,10 +21,11 @@ const svgOf = ({ record, context }: Report, wanted: string): string => {
   if (!figure) throw new Error(`There is no figure ${wanted}.`);
   return writeJobFigure(figure, record, context);
 };
-/** @throws where the text is no well-formed XML */
-const parse = (svg: string): Document => new JSDOM(svg, { contentType: "image/svg+xml" }).window.document;
+const parse = (svg: string): XmlElement[] => readXml([svg])[0] ?? [];
+const textOf = (elements: readonly XmlElement[], wanted: string): string =>
+  elements.find(({ name }) => name === wanted)?.text ?? "";
 const textsOf = (svg: string): string[] =>
-  [...parse(svg).querySelectorAll("text")].map(({ textContent }) => textContent);
+  parse(svg).flatMap(({ name, text }) => (name === "text" ? [text] : []));
 
 describe("the figures of a job", () => {
   it("are plan and elevation, end view, and a section of every bore of every survey that was read on its wall", () => {
@@ -47,37 +48,41 @@ describe("the figures of a job", () => {
 });
 
 describe("a figure as SVG", () => {
-  it.each(jobFigures(signed.record).map(({ id }) => id))("is well-formed, named and described: %s", (id) => {
-    const root = parse(svgOf(signed, id)).documentElement;
-    expect(root.localName).toBe("svg");
-    expect(root.namespaceURI).toBe("http://www.w3.org/2000/svg");
-    for (const [attribute, element] of [
-      ["aria-labelledby", "title"],
-      ["aria-describedby", "desc"],
-    ] as const) {
-      const named = root.querySelector(element);
-      expect(named?.getAttribute("id")).toBe(root.getAttribute(attribute));
-      expect(named?.textContent.length).toBeGreaterThan(5);
-    }
-  });
+  const every = [signed, hostile].flatMap((report) =>
+    jobFigures(report.record).map(({ id }) => svgOf(report, id)),
+  );
+  const parsed = readXml(every);
 
-  it("holds shapes and text alone: nothing that runs, loads or links", () => {
-    for (const report of [signed, hostile]) {
-      for (const { id } of jobFigures(report.record)) {
-        const svg = svgOf(report, id);
-        const elements = new Set([...parse(svg).querySelectorAll("*")].map(({ localName }) => localName));
-        for (const name of elements)
-          expect("svg title desc rect g line polyline polygon circle path text".split(" ")).toContain(name);
-        expect(svg).not.toMatch(/<[^>]*\s(on\w+|href|style|src)\s*=/i);
+  it("is well-formed, named and described", () => {
+    expect(parsed).toHaveLength(60);
+    for (const elements of parsed) {
+      const [root] = elements;
+      expect(root).toMatchObject({ name: "svg", namespace: "http://www.w3.org/2000/svg" });
+      for (const [attribute, wanted] of [
+        ["aria-labelledby", "title"],
+        ["aria-describedby", "desc"],
+      ] as const) {
+        const named = elements.find(({ name }) => name === wanted);
+        expect(named?.attributes["id"]).toBe(root?.attributes[attribute]);
+        expect(named?.text.length).toBeGreaterThan(5);
       }
     }
   });
 
+  it("holds shapes and text alone: nothing that runs, loads or links", () => {
+    const allowed = "svg title desc rect g line polyline polygon circle path text".split(" ");
+    for (const { name, attributes } of parsed.flat()) {
+      expect(allowed).toContain(name);
+      for (const attribute of Object.keys(attributes))
+        expect(attribute).not.toMatch(/^on|href$|^style$|^src$/);
+    }
+  });
+
   it("is as large on paper as it says: a user unit is a millimetre", () => {
-    const root = parse(svgOf(signed, "plan-elevation")).documentElement;
-    const [, , width, height] = (root.getAttribute("viewBox") ?? "").split(" ");
-    expect(root.getAttribute("width")).toBe(`${width}mm`);
-    expect(root.getAttribute("height")).toBe(`${height}mm`);
+    const { attributes = {} } = parse(svgOf(signed, "plan-elevation"))[0] ?? {};
+    const [, , width, height] = (attributes["viewBox"] ?? "").split(" ");
+    expect(attributes["width"]).toBe(`${width}mm`);
+    expect(attributes["height"]).toBe(`${height}mm`);
     expect(Number(width)).toBe(260);
   });
 
@@ -98,7 +103,7 @@ describe("a figure as SVG", () => {
     for (const id of ["plan-elevation", "end-view", "bore-1-1"]) {
       const svg = svgOf(hostile, id);
       expect(textsOf(svg).join(" ")).toContain("Flag: set_up_unchecked");
-      expect(parse(svg).querySelector("desc")?.textContent).toContain("Flag: set_up_unchecked");
+      expect(textOf(parse(svg), "desc")).toContain("Flag: set_up_unchecked");
     }
   });
 
@@ -130,7 +135,7 @@ describe("writeSvg", () => {
         endDeg,
       })),
     });
-    const paths = [...parse(svg).querySelectorAll("path")].map((path) => path.getAttribute("d"));
+    const paths = parse(svg).flatMap(({ name, attributes }) => (name === "path" ? [attributes["d"]] : []));
     expect(paths).toEqual(["M10 5A5 5 0 0 1 15 10", "M10 5A5 5 0 1 1 5 10"]);
   });
 

@@ -51,7 +51,7 @@ describe("a job's page", () => {
     expect(within(before).getAllByText(/^Next:/)).toHaveLength(1);
     expect(before.textContent).toContain("cas-1 exceeds its tolerance.");
     expect(within(before).getByRole("link", { name: "Go there" }).getAttribute("href")).toBe("#concessions");
-    expect((screen.getByRole("button", { name: "Sign job" }) as HTMLButtonElement).disabled).toBe(true);
+    expect(screen.getByRole<HTMLButtonElement>("button", { name: "Sign job" }).disabled).toBe(true);
   });
 
   it("strikes a reading that counts no more, and keeps it in sight", async () => {
@@ -238,7 +238,7 @@ describe("what is done on a job's page", () => {
     await user.type(screen.getByLabelText("reading, row 2"), "0,05");
     await user.click(screen.getByRole("button", { name: "Store reading" }));
     expect(await screen.findByText("The reading was not stored.")).toBeTruthy();
-    expect((screen.getByLabelText("reading, row 1") as HTMLInputElement).value).toBe("0,12");
+    expect(screen.getByLabelText<HTMLInputElement>("reading, row 1").value).toBe("0,12");
     service.on(readings, added);
     await user.click(screen.getByRole("button", { name: "Store reading" }));
     expect(await screen.findByText("The reading of brg-1 is stored.")).toBeTruthy();
@@ -253,6 +253,6 @@ describe("what is done on a job's page", () => {
         },
       ],
     });
-    expect((screen.getByLabelText("reading, row 1") as HTMLInputElement).value).toBe("");
+    expect(screen.getByLabelText<HTMLInputElement>("reading, row 1").value).toBe("");
   });
 });

@@ -103,7 +103,7 @@ describe("starting a job", () => {
     await user.type(screen.getByLabelText("u of a reading, instrument 1"), "0,008");
     await user.click(screen.getByRole("button", { name: "Start job" }));
     expect((await screen.findByRole("alert")).textContent).toContain("The job was not started.");
-    expect((screen.getByLabelText("Title") as HTMLInputElement).value).toBe("Unit 2, major outage");
+    expect(screen.getByLabelText<HTMLInputElement>("Title").value).toBe("Unit 2, major outage");
 
     service.on("POST /v1/jobs", answer(jobRecord, sampleJob(), 201));
     await user.click(screen.getByRole("button", { name: "Start job" }));

@@ -115,7 +115,7 @@ describe("describing a machine", () => {
       new File(['{"name":"Unit 9"}'], "unit-9.json"),
     );
     await waitFor(() =>
-      expect((screen.getByLabelText("Machine, JSON") as HTMLTextAreaElement).value).toBe('{"name":"Unit 9"}'),
+      expect(screen.getByLabelText<HTMLTextAreaElement>("Machine, JSON").value).toBe('{"name":"Unit 9"}'),
     );
     await user.click(screen.getByText("From a workbook"));
     const faults = [

@@ -1,4 +1,4 @@
-import { useDeferredValue, useEffect, useId, useMemo, useRef, type ReactNode } from "react";
+import { useDeferredValue, useEffect, useId, useMemo, useRef, type ReactNode, type SubmitEvent } from "react";
 import type { Problem } from "../../../../shared/schemas/problem.ts";
 import { lineAndColumn, parseJsonText, placeOfPointer, type Place } from "../../lib/json-text.ts";
 import { FaultList } from "./fault-list.tsx";
@@ -13,8 +13,8 @@ interface JsonDocumentProps {
   refusal: { readonly problem: Pick<Problem, "errors" | "more">; readonly text: string } | null;
   /** With a text that is JSON; another one is shown its fault. */
   onSend: (text: string, value: unknown) => void;
-  /** What stands under the text: the button that sends, and others. */
-  children: (send: () => void) => ReactNode;
+  /** What stands under the text: the button that submits, and others. */
+  children: ReactNode;
 }
 
 /** A JSON text to write, with the faults of form and those of the service at their places in it. */
@@ -48,8 +48,12 @@ export function JsonDocument({ label, text, onChange, busy, refusal, onSend, chi
     if (now.ok) onSend(text, now.value);
     else go({ from: now.fault.at, to: now.fault.at + 1 });
   };
+  const submit = (event: SubmitEvent<HTMLFormElement>): void => {
+    event.preventDefault();
+    send();
+  };
   return (
-    <div className="grid gap-4">
+    <form onSubmit={submit} noValidate className="grid gap-4">
       <JsonEditor
         label={label}
         text={text}
@@ -75,8 +79,8 @@ export function JsonDocument({ label, text, onChange, busy, refusal, onSend, chi
           />
         )}
       </div>
-      {children(send)}
-    </div>
+      {children}
+    </form>
   );
 }
 

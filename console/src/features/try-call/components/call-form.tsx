@@ -27,19 +27,17 @@ export function CallForm({ path, draftName, exampleText, busy, refusal, onSend }
       refusal={refusal && { problem: refusal.problem, text: refusal.bodyText }}
       onSend={(bodyText, request) => onSend({ path, bodyText, request })}
     >
-      {(send) => (
-        <div className="flex flex-wrap gap-2">
-          <Button look="main" busy={busy} onClick={send}>
-            Send call
-          </Button>
-          <CopyButton
-            label="Copy as curl"
-            what="the call as curl"
-            text={() => writeCurl(location.origin, path, draft.text)}
-          />
-          {draft.isEdited && <Button onClick={draft.restore}>Restore example</Button>}
-        </div>
-      )}
+      <div className="flex flex-wrap gap-2">
+        <Button look="main" busy={busy} type="submit">
+          Send call
+        </Button>
+        <CopyButton
+          label="Copy as curl"
+          what="the call as curl"
+          text={() => writeCurl(location.origin, path, draft.text)}
+        />
+        {draft.isEdited && <Button onClick={draft.restore}>Restore example</Button>}
+      </div>
     </JsonDocument>
   );
 }
