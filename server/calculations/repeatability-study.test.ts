@@ -11,7 +11,10 @@ import {
   type RepeatabilityStudyRequest,
 } from "../../shared/schemas/repeatability-studies.ts";
 import type { Units } from "../../shared/units.ts";
-import { gaugeStudy, gaugeStudyPrinted as printed } from "../../tests/support/gauge-study.ts";
+import {
+  publishedStudy,
+  publishedStudyPrinted as printed,
+} from "../compute/repeatability/published-study.ts";
 import { seededRandom } from "../../tests/support/seeded-random.ts";
 import { CalculationRefusal } from "./calculation-kind.ts";
 import { repeatabilityStudyKind } from "./repeatability-study.ts";
@@ -36,7 +39,7 @@ const minutes = (each: number) =>
   }));
 
 /** The published example: parts as stations, appraisers as people. */
-const cells: CrossedStudyRequest["cells"] = gaugeStudy.flatMap((people, i) =>
+const cells: CrossedStudyRequest["cells"] = publishedStudy.flatMap((people, i) =>
   people.map((trials, j) => ({
     station: `part-${i + 1}`,
     person: "ABC"[j]!,

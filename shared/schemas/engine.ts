@@ -3,7 +3,15 @@ import { z } from "zod";
 const checkedFigure = z
   .object({
     id: z.string().meta({ description: "Of the case." }),
-    area: z.enum(["bore-fit", "axis-deviation", "shim-move", "cold-target", "statistics"]),
+    area: z.enum([
+      "bore-fit",
+      "axis-deviation",
+      "shim-move",
+      "cold-target",
+      "repeatability-study",
+      "confirmation",
+      "statistics",
+    ]),
     source: z.string().meta({ description: "Where the example and its answer are published." }),
     figure: z.string(),
     expected: z.number().meta({ description: "As printed, in the units of the source." }),

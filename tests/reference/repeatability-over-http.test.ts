@@ -3,7 +3,10 @@ import type { CrossedResult, OneStationResult } from "../../shared/schemas/repea
 import { openTestApp, type TestApp } from "../support/app.ts";
 import { exactMoments } from "../support/exact-moments.ts";
 import { makeOrganisation } from "../support/factories.ts";
-import { gaugeStudy, gaugeStudyPrinted as printed } from "../support/gauge-study.ts";
+import {
+  publishedStudy,
+  publishedStudyPrinted as printed,
+} from "../../server/compute/repeatability/published-study.ts";
 import { describeCases, mismatches } from "./read-cases.ts";
 
 /** The published cases through the whole service: JSON in, a stored record, JSON out. */
@@ -70,7 +73,7 @@ describeCases<{ x: number[]; alpha: number }, object>(
 );
 
 describe("POST /v1/repeatability-studies on the worked example of a gauge study", () => {
-  const cells = gaugeStudy.flatMap((people, i) =>
+  const cells = publishedStudy.flatMap((people, i) =>
     people.map((trials, j) => ({
       station: `part-${i + 1}`,
       person: "ABC"[j],

@@ -53,8 +53,14 @@ describe("every page", () => {
     renderConsole("/calculations");
     await screen.findByText("No calculations yet");
     const links = within(screen.getByRole("navigation", { name: "Main" })).getAllByRole("link");
-    expect(links.map((link) => link.textContent)).toEqual(["Calculations", "Guide", "Documents"]);
-    expect(links[0]?.getAttribute("aria-current")).toBe("page");
+    expect(links.map((link) => link.textContent)).toEqual([
+      "Jobs",
+      "Machines",
+      "Calculations",
+      "Guide",
+      "Documents",
+    ]);
+    expect(links[2]?.getAttribute("aria-current")).toBe("page");
   });
 
   it("wears the theme that is chosen, and keeps it", async () => {

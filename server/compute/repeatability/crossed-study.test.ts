@@ -1,6 +1,6 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { gaugeStudy, gaugeStudyPrinted as printed } from "../../../tests/support/gauge-study.ts";
+import { publishedStudy, publishedStudyPrinted as printed } from "./published-study.ts";
 import { projectedSums } from "../../../tests/support/projected-sums.ts";
 import { seededRandom } from "../../../tests/support/seeded-random.ts";
 import type { PlaneVector } from "../plane.ts";
@@ -15,7 +15,7 @@ const lineOf = (study: CrossedStudy, name: LineName, plane: "h" | "v" = "h") =>
   study.table[plane].find((line) => line.name === name)!;
 
 /** The published example in h and, turned over and shifted, in v. */
-const published: CrossedReadings = gaugeStudy.map((people) =>
+const published: CrossedReadings = publishedStudy.map((people) =>
   people.map((trials) => trials.map((value) => ({ hMm: value, vMm: 5 - value }))),
 );
 

@@ -1,6 +1,11 @@
 import { circleCases } from "./circle-cases.ts";
+import { criterionCases } from "./criterion-cases.ts";
 import { factorCases } from "./factor-cases.ts";
 import { lineCases } from "./line-cases.ts";
+import { moveCases } from "./move-cases.ts";
+import { optimalAxisCases } from "./optimal-axis-cases.ts";
+import { sagCases } from "./sag-cases.ts";
+import { scatterCases } from "./scatter-cases.ts";
 import type { SelfCase } from "./self-case.ts";
 import { targetCases } from "./target-cases.ts";
 
@@ -16,7 +21,17 @@ export interface CheckedFigure {
   readonly passed: boolean;
 }
 
-export const selfCases: readonly SelfCase[] = [...circleCases, ...lineCases, ...factorCases, ...targetCases];
+export const selfCases: readonly SelfCase[] = [
+  ...circleCases,
+  ...criterionCases,
+  ...lineCases,
+  ...optimalAxisCases,
+  ...moveCases,
+  ...targetCases,
+  ...sagCases,
+  ...scatterCases,
+  ...factorCases,
+];
 
 /** Computes every shipped published case anew and holds each printed figure against what comes out. */
 export function runSelfTest(cases: readonly SelfCase[] = selfCases): CheckedFigure[] {

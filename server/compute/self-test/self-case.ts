@@ -9,7 +9,14 @@ export interface SelfFigure {
 /** A published worked example that ships with the engine, so that the engine can check itself anywhere. */
 export interface SelfCase {
   readonly id: string;
-  readonly area: "bore-fit" | "axis-deviation" | "shim-move" | "cold-target" | "statistics";
+  readonly area:
+    | "bore-fit"
+    | "axis-deviation"
+    | "shim-move"
+    | "cold-target"
+    | "repeatability-study"
+    | "confirmation"
+    | "statistics";
   readonly source: string;
   readonly figures: readonly SelfFigure[];
   /** What the engine gives today, by figure, in the units of the source. */

@@ -23,7 +23,7 @@ describe("the PDF report", () => {
   beforeAll(async () => {
     signed = await write(record, context);
     draft = await writeJob(writeFellgateJob());
-  });
+  }, 60_000);
 
   it("reads back the numbers of the record, station by station and survey by survey", () => {
     const lines = pageWith(signed, "Deviations as found, as left")

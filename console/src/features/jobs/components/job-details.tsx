@@ -63,24 +63,22 @@ function EditDetails({ record }: { record: JobRecord }) {
       refusal={problem && { problem: { ...problem, errors: withinDetails(problem.errors) }, text: sent }}
       onSend={(text) => save(text, base.version)}
     >
-      <>
-        {change.isError && (
-          <Failure error={change.error} what="The details were not changed.">
-            {isStale && (
-              <p className="mt-2">
-                Somebody added to the job meanwhile. Its details are now shown above; your text is kept.{" "}
-                <Button onClick={() => save(draft.text, record.version)}>Change them all the same</Button>
-              </p>
-            )}
-          </Failure>
-        )}
-        <div className="flex flex-wrap gap-2">
-          <Button look="main" busy={change.isPending} type="submit">
-            Change details
-          </Button>
-          {draft.isEdited && <Button onClick={draft.restore}>Put back</Button>}
-        </div>
-      </>
+      {change.isError && (
+        <Failure error={change.error} what="The details were not changed.">
+          {isStale && (
+            <p className="mt-2">
+              Somebody added to the job meanwhile. Its details are now shown above; your text is kept.{" "}
+              <Button onClick={() => save(draft.text, record.version)}>Change them all the same</Button>
+            </p>
+          )}
+        </Failure>
+      )}
+      <div className="flex flex-wrap gap-2">
+        <Button look="main" busy={change.isPending} type="submit">
+          Change details
+        </Button>
+        {draft.isEdited && <Button onClick={draft.restore}>Put back</Button>}
+      </div>
     </JsonDocument>
   );
 }

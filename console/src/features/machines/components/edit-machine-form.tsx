@@ -65,35 +65,33 @@ export function EditMachineForm({ machine }: { machine: Machine }) {
         refusal={problem && { problem: withinDocument(problem), text: sent }}
         onSend={save}
       >
-        <>
-          <TextField
-            label="Reason"
-            value={reason.text}
-            maxLength={limits.noteLength}
-            hint="Why it changed: kept with the revision."
-            error={reasonFault}
-            onChange={(event) => {
-              setNeedsReason(false);
-              reason.change(event.target.value);
-            }}
-          />
-          {change.isError && <Failure error={change.error} what="The machine was not changed." />}
-          <div className="flex flex-wrap gap-2">
-            <Button look="main" busy={change.isPending} type="submit">
-              Store as a new revision
+        <TextField
+          label="Reason"
+          value={reason.text}
+          maxLength={limits.noteLength}
+          hint="Why it changed: kept with the revision."
+          error={reasonFault}
+          onChange={(event) => {
+            setNeedsReason(false);
+            reason.change(event.target.value);
+          }}
+        />
+        {change.isError && <Failure error={change.error} what="The machine was not changed." />}
+        <div className="flex flex-wrap gap-2">
+          <Button look="main" busy={change.isPending} type="submit">
+            Store as a new revision
+          </Button>
+          {draft.isEdited && (
+            <Button
+              onClick={() => {
+                draft.restore();
+                adopt();
+              }}
+            >
+              Put back the newest
             </Button>
-            {draft.isEdited && (
-              <Button
-                onClick={() => {
-                  draft.restore();
-                  adopt();
-                }}
-              >
-                Put back the newest
-              </Button>
-            )}
-          </div>
-        </>
+          )}
+        </div>
       </JsonDocument>
     </div>
   );

@@ -68,15 +68,13 @@ export function NewMachineForm() {
           );
         }}
       >
-        <>
-          {change.isError && <Failure error={change.error} what="The machine was not stored." />}
-          <div className="flex flex-wrap gap-2">
-            <Button look="main" busy={change.isPending} type="submit">
-              Store machine
-            </Button>
-            {draft.isEdited && <Button onClick={draft.restore}>Clear</Button>}
-          </div>
-        </>
+        {change.isError && <Failure error={change.error} what="The machine was not stored." />}
+        <div className="flex flex-wrap gap-2">
+          <Button look="main" busy={change.isPending} type="submit">
+            Store machine
+          </Button>
+          {draft.isEdited && <Button onClick={draft.restore}>Clear</Button>}
+        </div>
       </JsonDocument>
     </div>
   );

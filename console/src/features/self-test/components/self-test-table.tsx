@@ -11,6 +11,8 @@ const areaWords: Record<Figure["area"], string> = {
   "axis-deviation": "Axis and deviations",
   "shim-move": "Shim moves",
   "cold-target": "Cold targets",
+  "repeatability-study": "Repeatability",
+  confirmation: "Confirmations",
   statistics: "Statistics",
 };
 

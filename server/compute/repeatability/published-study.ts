@@ -3,7 +3,7 @@
  * 4th ed. 2010, III-B, a row a part. Data and the figures below as quoted by public test suites of general statistics
  * packages that check themselves against the handbook.
  */
-export const gaugeStudy: readonly (readonly (readonly number[])[])[] = [
+export const publishedStudy: readonly (readonly (readonly number[])[])[] = [
   [0.29, 0.41, 0.64, 0.08, 0.25, 0.07, 0.04, -0.11, -0.15],
   [-0.56, -0.68, -0.58, -0.47, -1.22, -0.68, -1.38, -1.13, -0.96],
   [1.34, 1.17, 1.27, 1.19, 0.94, 1.34, 0.88, 1.09, 0.67],
@@ -17,7 +17,7 @@ export const gaugeStudy: readonly (readonly (readonly number[])[])[] = [
 ].map((row) => [row.slice(0, 3), row.slice(3, 6), row.slice(6)]);
 
 /** What the handbook and the packages print of it, and half of the last digit printed. */
-export const gaugeStudyPrinted = {
+export const publishedStudyPrinted = {
   sumOfSquares: {
     station: 88.3619,
     person: 3.1673,
