@@ -26,9 +26,15 @@ export function dateOf({ signature, ...record }: JobRecord): Date {
   const moments = [
     record.createdAt,
     ...record.surveys.flatMap((survey) => [survey.createdAt, survey.result?.createdAt ?? survey.createdAt]),
-    ...[record.plans, record.moves, record.confirmations, record.concessions, record.comments].flatMap(
-      (entries) => entries.map(({ createdAt }) => createdAt),
-    ),
+    ...[
+      record.plans,
+      record.moves,
+      record.confirmations,
+      record.concessions,
+      record.axisAcceptances,
+      record.comments,
+      record.attachments,
+    ].flatMap((entries) => entries.map(({ createdAt }) => createdAt)),
   ];
   return new Date(Math.max(...moments.map((moment) => Date.parse(moment))));
 }

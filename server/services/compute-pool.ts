@@ -4,6 +4,7 @@ import { Piscina } from "piscina";
 import type { CalculationKind } from "../calculations/calculation-kind.ts";
 import { HttpProblem } from "../http/http-problem.ts";
 import { computeOutcome, type ComputeOutcome } from "./compute-outcome.ts";
+import type { ReportTask } from "./write-report.ts";
 
 /** One core stays with the loop that answers. */
 const threads = Math.max(1, availableParallelism() - 1);
@@ -25,6 +26,19 @@ export class ComputePool {
   /** @throws HttpProblem unavailable when too many long calculations wait */
   run<Request>(kind: CalculationKind<Request, object>, request: Request): Promise<ComputeOutcome> {
     if (!kind.isLong?.(request)) return computeOutcome(kind, request);
+    return this.inThread({ kind: kind.kind, request }, "compute") as Promise<ComputeOutcome>;
+  }
+
+  /**
+   * Writes a report in a thread: drawing a hundred sheets takes seconds.
+   * @throws HttpProblem unavailable when too much waits
+   */
+  async report(task: ReportTask): Promise<Buffer> {
+    const bytes = (await this.inThread(task, "report")) as Uint8Array;
+    return Buffer.from(bytes.buffer, bytes.byteOffset, bytes.byteLength);
+  }
+
+  private inThread(task: object, name: "compute" | "report"): Promise<unknown> {
     this.pool ??= new Piscina({
       filename: fileURLToPath(new URL("compute-worker.mjs", import.meta.url)),
       minThreads: 1,
@@ -34,12 +48,12 @@ export class ComputePool {
     if (this.pool.queueSize > this.waitingMax) {
       throw new HttpProblem(
         "unavailable",
-        "Too many long calculations are waiting.",
+        "Too many long calculations and reports are waiting.",
         { retryAfterSeconds: 5 },
         { "Retry-After": "5" },
       );
     }
-    return this.pool.run({ kind: kind.kind, request }, { name: "compute" }) as Promise<ComputeOutcome>;
+    return this.pool.run(task, { name });
   }
 
   /** Ends the threads; what runs in them is lost. */

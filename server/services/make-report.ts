@@ -48,7 +48,7 @@ export async function makeReport(
   format: ReportFormat,
 ): Promise<MadeReport> {
   const { record, context } = await readForReport(deps, organisationId, job);
-  const bytes = await format.write(record, context);
+  const bytes = await deps.compute.report({ extension: format.extension, record, context });
   const name = `${record.title} r${record.revision}${record.signature ? "" : " draft"}`;
   return {
     bytes,
