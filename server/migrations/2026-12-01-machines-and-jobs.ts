@@ -34,7 +34,7 @@ const tables = {
     requestText LONGTEXT NOT NULL, createdAt ${time} NOT NULL, memberId ${id} NULL, keyId ${id} NULL,
     PRIMARY KEY (jobId, id), CONSTRAINT job_indications_job FOREIGN KEY (jobId) REFERENCES jobs (id)`,
 
-  stored_files: `id ${id} PRIMARY KEY, organisationId ${id} NOT NULL, name ${name} NOT NULL, mediaType ${word} NOT NULL,
+  stored_files: `id ${id} PRIMARY KEY, organisationId ${id} NOT NULL, name ${name} NOT NULL, mediaType VARCHAR(127) NOT NULL,
     bytes INT UNSIGNED NOT NULL, sha256 ${hash} NOT NULL, createdAt ${time} NOT NULL,
     CONSTRAINT stored_files_organisation FOREIGN KEY (organisationId) REFERENCES organisations (id)`,
 

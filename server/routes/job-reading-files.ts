@@ -1,3 +1,4 @@
+import type { Request } from "express";
 import { limits } from "../../shared/limits.ts";
 import { addedReadingFile, readingFileQuery, readingPreview } from "../../shared/schemas/reading-files.ts";
 import { byOf } from "../http/call-parts.ts";
@@ -7,13 +8,13 @@ import { callerOf, defineOperation, reply } from "../http/operation.ts";
 import { changeOnce } from "../services/change-once.ts";
 import { surveyOf } from "../services/job-computations.ts";
 import { appendEntries, loadJob, refuseSigned } from "../services/job-store.ts";
-import { previewReadings } from "../services/read-reading-file.ts";
+import { previewReadings, readingMediaTypes, type ReadingMediaType } from "../services/read-reading-file.ts";
 import { storeFile } from "../services/stored-files.ts";
 
 const tag = "Jobs";
-const file = { mediaTypes: ["text/csv"], limitBytes: limits.readingFileBytes };
+const file = { mediaTypes: readingMediaTypes, limitBytes: limits.readingFileBytes };
 const layout =
-  "One row a reading of the instrument, with a head row: station, form, taken at, clock (deg), reading (mm), h (mm), v (mm), …; rows of one station and moment are one reading. Decimal point or comma, semicolon, tab or comma between cells.";
+  "One row a reading of the instrument, with a head row: station, form, taken at, clock (deg), reading (mm), h (mm), v (mm), …; rows of one station and moment are one reading. As CSV in UTF-8 (decimal point or comma; semicolon, tab or comma between cells), or as the first sheet of an XLSX workbook.";
 
 const previewReadingFile = defineOperation({
   operationId: "previewReadingFile",
@@ -32,7 +33,11 @@ const previewReadingFile = defineOperation({
     surveyOf(loaded.state.surveys, survey);
     return reply(
       200,
-      await previewReadings(call.deps, loaded, survey, { ...call.query, content: call.bytes }),
+      await previewReadings(call.deps, loaded, survey, {
+        ...call.query,
+        mediaType: sentAs(call.request),
+        content: call.bytes,
+      }),
     );
   },
 });
@@ -62,7 +67,12 @@ const addReadingFile = defineOperation({
     const loaded = await loadJob(deps, organisationId, call.params.id ?? "");
     surveyOf(loaded.state.surveys, survey);
     refuseSigned(loaded.row);
-    const { readings, faults } = await previewReadings(deps, loaded, survey, { ...query, content: bytes });
+    const mediaType = sentAs(call.request);
+    const { readings, faults } = await previewReadings(deps, loaded, survey, {
+      ...query,
+      mediaType,
+      content: bytes,
+    });
     if (faults.length > 0) {
       throw problemOfFaults(
         faults.map(({ line, column, code, detail }) => ({
@@ -74,7 +84,7 @@ const addReadingFile = defineOperation({
     }
     return changeOnce(deps, call, 201, async (transaction) => {
       const locked = await loadJob(deps, organisationId, call.params.id ?? "", { transaction });
-      const sent = { name: query.name, mediaType: "text/csv", content: bytes };
+      const sent = { name: query.name, mediaType, content: bytes };
       const { id, name, sha256 } = await storeFile(deps, transaction, organisationId, sent);
       const entries = readings.map((reading) => ({
         kind: "reading" as const,
@@ -88,5 +98,10 @@ const addReadingFile = defineOperation({
     });
   },
 });
+
+/** Nothing else is let through to here. */
+function sentAs(request: Request): ReadingMediaType {
+  return readingMediaTypes.find((mediaType) => request.is(mediaType)) ?? "text/csv";
+}
 
 export const jobReadingFileOperations = [previewReadingFile, addReadingFile];

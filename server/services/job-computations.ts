@@ -56,9 +56,14 @@ export async function checkedReadings(
       refused.map((fault) => ({ ...fault, pointer: fault.pointer.replace(/^\/bores\//, "/readings/") })),
     );
   }
+  // Each keeps the end it was seen from: the job's may be entered anew, and must not turn what was read before.
   return readings.map((reading) => ({
     kind: "reading",
-    document: { survey: surveyId, reading, sourceFile },
+    document: {
+      survey: surveyId,
+      reading: { ...reading, seen: reading.seen ?? state.details.seen },
+      sourceFile,
+    },
   }));
 }
 

@@ -4,14 +4,23 @@ import type { ReadingPreview } from "../../shared/schemas/reading-files.ts";
 import type { Deps } from "../deps.ts";
 import { HttpProblem } from "../http/http-problem.ts";
 import { parseCsv } from "../jobs/reading-files/parse-csv.ts";
+import { parseWorkbook } from "../jobs/reading-files/parse-workbook.ts";
 import { mapColumns, readingColumns, type ReadingColumn } from "../jobs/reading-files/reading-columns.ts";
 import { readingsOfTable } from "../jobs/reading-files/readings-of-table.ts";
 import { UnreadableFile, type Table, type TableFault } from "../jobs/reading-files/table.ts";
 import { checkedReadings } from "./job-computations.ts";
 import type { LoadedJob } from "./job-store.ts";
 
+/** What a file of readings may be sent as. */
+export const readingMediaTypes = [
+  "text/csv",
+  "application/vnd.openxmlformats-officedocument.spreadsheetml.sheet",
+] as const;
+export type ReadingMediaType = (typeof readingMediaTypes)[number];
+
 interface Sent {
   readonly name: string;
+  readonly mediaType: ReadingMediaType;
   readonly columns?: string | undefined;
   readonly ignore?: string | undefined;
   readonly content: Buffer;
@@ -25,12 +34,12 @@ export async function previewReadings(
   deps: Deps,
   loaded: LoadedJob,
   surveyId: string,
-  { name, columns = "", ignore = "", content }: Sent,
+  { name, mediaType, columns = "", ignore = "", content }: Sent,
 ): Promise<ReadingPreview> {
   const sha256 = createHash("sha256").update(content).digest("hex");
   const file = { name, bytes: content.length, sha256 };
   const nothing = { file, delimiter: null, decimal: null, columns: [], readings: [] };
-  const table = tryTable(content);
+  const table = await tryTable(content, mediaType);
   if (table instanceof UnreadableFile) return { ...nothing, faults: [table.fault] };
 
   const mapped = mapColumns(table.head, { names: namesOf(columns), ignored: listOf(ignore) });
@@ -49,9 +58,9 @@ export async function previewReadings(
   };
 }
 
-function tryTable(content: Buffer): Table | UnreadableFile {
+async function tryTable(content: Buffer, mediaType: ReadingMediaType): Promise<Table | UnreadableFile> {
   try {
-    return parseCsv(content);
+    return mediaType === "text/csv" ? parseCsv(content) : await parseWorkbook(content);
   } catch (error) {
     if (error instanceof UnreadableFile) return error;
     throw error;

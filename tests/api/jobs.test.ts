@@ -119,6 +119,21 @@ describe("jobs", () => {
     expect((await job.read()).surveys[0]?.readings).toEqual([]);
   });
 
+  it("keeps with each reading the end it was seen from, whatever the job's details say later", async () => {
+    const job = await started();
+    const survey = await job.add("/surveys", { stage: "as_found", sameSetUp: false });
+    const { seen: _unsaid, ...reading } = asFoundReadings()[0] ?? {};
+    await job.add(`/surveys/${survey}/readings`, { readings: [reading] });
+    const turned = await app
+      .call()
+      .patch(`/v1/jobs/${job.id}`)
+      .set("Authorization", `Bearer ${job.token}`)
+      .set("If-Match", `"${(await job.read()).version}"`)
+      .send({ details: { ...fellgateJobDetails, seen: "upstream" } });
+    expect(turned.status).toBe(200);
+    expect((await job.read()).surveys[0]?.readings[0]?.reading.seen).toBe("downstream");
+  });
+
   it("says that a result is outdated once readings have changed, and computes it anew", async () => {
     const job = await started();
     const found = await job.survey("as_found", asFoundReadings());

@@ -1,4 +1,5 @@
 import { createHash } from "node:crypto";
+import writeExcelFile from "write-excel-file/node";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { asFoundReadings } from "../../server/demo/fellgate-job.ts";
 import type { Reading } from "../../shared/schemas/job-entries.ts";
@@ -27,12 +28,17 @@ describe("files of readings", () => {
   });
   afterAll(() => app.close());
 
-  const send = async (kind: "reading-previews" | "reading-files", content: string | Buffer, query = "") => {
+  const send = async (
+    kind: "reading-previews" | "reading-files",
+    content: string | Buffer,
+    query = "",
+    mediaType = "text/csv",
+  ) => {
     const { status, body } = await app
       .call()
       .post(`/v1/jobs/${job.id}/surveys/${survey}/${kind}?name=readings.csv${query}`)
       .set("Authorization", `Bearer ${job.token}`)
-      .set("Content-Type", "text/csv")
+      .set("Content-Type", mediaType)
       .send(content);
     return { status, body: body as Record<string, unknown> };
   };
@@ -141,6 +147,39 @@ describe("files of readings", () => {
     const { status, body } = await send("reading-files", content);
     expect(status).toBe(code === "invalid_encoding" ? 400 : 422);
     expect((body["errors"] as { code: string }[]).map((error) => error.code)).toContain(code);
+  });
+
+  const xlsx = "application/vnd.openxmlformats-officedocument.spreadsheetml.sheet";
+  const workbookOf = (rows: (string | number | null | { type: "Formula"; value: string })[][]) =>
+    writeExcelFile(
+      rows.map((row) => row.map((cell) => (typeof cell === "object" ? cell : { value: cell }))) as never,
+      { sheet: "Readings" },
+    ).toBuffer();
+
+  it("reads the first sheet of a workbook as it reads the same in CSV, and refuses a formula in it", async () => {
+    const rows = sound
+      .split("\r\n")
+      .map((line) => line.split(",").map((cell) => (/^-?\d+(\.\d+)?$/.test(cell) ? Number(cell) : cell)));
+    const { body } = await send("reading-previews", await workbookOf(rows), "", xlsx);
+    const read = body as unknown as ReadingPreview;
+    expect(read.faults).toEqual([]);
+    expect(read.readings).toEqual((await preview(sound)).readings);
+    const computed = [
+      ...rows.slice(0, -1),
+      [...(rows.at(-1)?.slice(0, -1) ?? []), { type: "Formula" as const, value: "A1+1" }],
+    ];
+    const refused = (await send("reading-previews", await workbookOf(computed), "", xlsx))
+      .body as unknown as ReadingPreview;
+    expect(refused.faults).toMatchObject([{ line: 5, code: "wrong_type" }]);
+    const stored = await send("reading-files", await workbookOf(rows), "", xlsx);
+    expect(stored.status).toBe(201);
+  });
+
+  it("refuses a workbook that is none, and CSV that is sent as a workbook", async () => {
+    for (const content of [Buffer.from("PK\x03\x04 no zip"), Buffer.from(sound)]) {
+      const { status, body } = await send("reading-files", content, "", xlsx);
+      expect([status, (body["errors"] as { code: string }[])[0]?.code]).toEqual([422, "file_not_as_stated"]);
+    }
   });
 
   it("keeps text that looks like a formula as the text it is", async () => {

@@ -47,7 +47,7 @@ describe("a job in the console", () => {
     const survey = page.getByRole("region", { name: "Survey 1, as found" });
     await survey.getByText("Upload a file of readings").click();
     const readings = asFoundReadings();
-    await survey.getByLabel("File of readings, CSV").setInputFiles({
+    await survey.getByLabel("File of readings, CSV or XLSX").setInputFiles({
       name: "as-found.csv",
       mimeType: "text/csv",
       buffer: Buffer.from(writeReadingsFile(readings)),

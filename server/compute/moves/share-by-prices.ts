@@ -77,21 +77,25 @@ export function shareByPrices(
       if (!duals) return;
       const prices = pricesByUnit(program, duals.byRow);
       const least: number[] = [];
+      const met = sizeOf(pool);
       for (const [u, { task }] of units.entries()) {
         budget.startComponent();
         const own = { ...task, prices: prices[u] ?? [] };
         const { choices, proved } = chooseShims(own, 0, budget);
-        if (!proved || choices.length === 0) return;
-        least.push(Math.min(...choices.map((choice) => pricedCost(choice, short, prices[u] ?? []))));
-        addNew(pool[u] ?? [], choices, (choice) => pricedCost(choice, short, prices[u] ?? []));
+        if (choices.length === 0) return;
+        const priced = (choice: ShimChoice) => pricedCost(choice, short, prices[u] ?? []);
+        // What is not proved the least says nothing of the bound, and can be part of a better pick all the same.
+        least.push(proved ? Math.min(...choices.map(priced)) : -Infinity);
+        addNew(pool[u] ?? [], choices, priced);
       }
       const paid = duals.byRow.reduce((sum, price, row) => {
         const line = Math.floor(row / componentsOf(program).length);
         return sum + (price === 0 ? 0 : price * (quantities[line] ?? 0));
       }, 0);
       const value = least.reduce((sum, one) => sum + one, 0) - paid;
-      if (!best || value > best.value) best = { value, prices, least };
-      if (duals.value - best.value <= nearEnough * (1 + duals.value)) return;
+      if (value > (best?.value ?? -Infinity)) best = { value, prices, least };
+      if (best && duals.value - best.value <= nearEnough * (1 + duals.value)) return;
+      if (sizeOf(pool) === met) return;
     }
   };
   budget.lasts(search, () => true);
@@ -160,6 +164,9 @@ function pricesByUnit(program: StockProgram, byRow: readonly number[]): number[]
 
 const pricedCost = (choice: ShimChoice, short: readonly number[], prices: readonly number[]): number =>
   short.reduce((sum, line, k) => sum + (prices[k] ?? 0) * (choice.net[line] ?? 0), choice.cost);
+
+const sizeOf = (pool: readonly (readonly ShimChoice[])[]): number =>
+  pool.reduce((sum, choices) => sum + choices.length, 0);
 
 /** Adds those that are not there, the cheapest with their prices, then those of fewest pieces, up to so many. */
 function addNew(

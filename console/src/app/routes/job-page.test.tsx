@@ -186,7 +186,7 @@ describe("what is done on a job's page", () => {
       },
     });
     await user.upload(
-      screen.getByLabelText("File of readings, CSV"),
+      screen.getByLabelText("File of readings, CSV or XLSX"),
       new File(["station\nbrg-1"], "found.csv", { type: "application/vnd.ms-excel" }),
     );
     const faults = await screen.findByRole("table", { name: "Faults by line" });

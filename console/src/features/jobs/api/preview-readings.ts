@@ -3,6 +3,8 @@ import { readingPreview } from "../../../../../shared/schemas/reading-files.ts";
 import { apiPaths } from "../../../config/paths.ts";
 import { callAsMember, readAnswer } from "../../../lib/call-api.ts";
 
+const workbook = "application/vnd.openxmlformats-officedocument.spreadsheetml.sheet";
+
 export interface ReadingFile {
   readonly file: File;
   /** What columns of other names stand for, and which to leave out: as the service takes them; empty for none. */
@@ -38,5 +40,9 @@ export function readingFilePath(
 
 /** Browsers name the type of such a file by what else is installed: the service is told by its name. */
 export function fileOf({ file }: Pick<ReadingFile, "file">) {
-  return { content: file, mediaType: "text/csv", name: file.name };
+  return {
+    content: file,
+    mediaType: file.name.toLowerCase().endsWith(".xlsx") ? workbook : "text/csv",
+    name: file.name,
+  };
 }

@@ -28,14 +28,14 @@ export function UploadReadings({ job, survey }: { job: string; survey: string })
   return (
     <div className="grid gap-4">
       <Field
-        label="File of readings, CSV"
+        label="File of readings, CSV or XLSX"
         hint="A head row, then one row a reading of the instrument: station, form, taken at, clock (deg), reading (mm) and so on."
       >
         {(attributes) => (
           <input
             {...attributes}
             type="file"
-            accept=".csv,text/csv"
+            accept=".csv,.xlsx,text/csv"
             className="control"
             onChange={(event) => choose(event.target.files?.[0] ?? null)}
           />
