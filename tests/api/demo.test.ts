@@ -73,7 +73,9 @@ describe("the demo", () => {
 
   it("has a machine with a signed job, nothing in which wants a person", async () => {
     const { data } = await read<z.infer<typeof jobPage>>("/v1/jobs");
-    expect(data.map(({ state, machineName }) => [state, machineName])).toEqual([["signed", "Fellgate Unit 2"]]);
+    expect(data.map(({ state, machineName }) => [state, machineName])).toEqual([
+      ["signed", "Fellgate Unit 2"],
+    ]);
     const job = await read<z.infer<typeof jobRecord>>(`/v1/jobs/${data[0]?.id}`);
     expect([job.flags, job.signature?.name]).toEqual([[], "Ines Alder"]);
   });
