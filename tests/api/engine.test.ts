@@ -22,9 +22,9 @@ describe("GET /v1/engine/self-test", () => {
     const { figures, passed, failed, engineVersion: version } = answer.body as SelfTest;
     expect(version).toBe(engineVersion);
     expect(figures.length).toBe(passed + failed);
-    expect(figures.length).toBeGreaterThan(50);
+    expect(figures.length).toBeGreaterThan(150);
     expect(figures.filter((figure) => !figure.passed)).toEqual([]);
-    expect(new Set(figures.map(({ area }) => area)).size).toBeGreaterThanOrEqual(3);
+    expect(new Set(figures.map(({ area }) => area)).size).toBe(7);
   });
 
   it("tells how the last run ended, and what changed in the engine, to anyone", async () => {

@@ -64,6 +64,9 @@ function printEngine(engine: readonly EngineTimes[]): void {
       ].join(" "),
     );
   }
+  const perPoint = (points: number) => (engine.find((each) => each.points === points)?.fit ?? NaN) / points;
+  const growth = perPoint(10_000) / perPoint(1_000);
+  console.log(`A point of 10,000 takes ${growth.toFixed(2)} times as long as one of 1,000: 1 is linear.`);
 }
 
 /** How many times as long the libraries take for their bare fit as the engine for all of `fitBore`. */

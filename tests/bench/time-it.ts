@@ -11,6 +11,13 @@ export function microsecondsOf(run: () => unknown, rounds = 60, roundMs = 2): nu
   return least;
 }
 
+/** Seconds of one call and what it gives, for what takes long: once, since nobody waits for the least of many. */
+export function timeOnce<Result>(run: () => Result): { readonly seconds: number; readonly result: Result } {
+  const started = performance.now();
+  const result = run();
+  return { seconds: (performance.now() - started) / 1000, result };
+}
+
 /** Enough calls to be measured, and enough before them to have the code compiled. */
 function callsFor(run: () => unknown, roundMs: number): number {
   const warm = performance.now();

@@ -127,8 +127,6 @@ describeCases<{ x: number[]; y: number[] }, { l1?: [number, number] }>(
     expect(Math.abs(axis.h.at0 - (recomputed?.l1?.[0] ?? NaN))).toBeLessThan(1e-12);
     expect(Math.abs(axis.h.slope - (recomputed?.l1?.[1] ?? NaN))).toBeLessThan(1e-12);
   },
-  // The other robust criteria (least median of squares, Huber's) are no method of the service.
-  ({ recomputed }) => recomputed?.l1 !== undefined,
 );
 
 const spread = (covariance: LineCovariance) => ({
@@ -221,18 +219,12 @@ describeCases<{ z: [number, number]; h: [number, number]; v: [number, number]; q
 describeCases<
   { powers: number[]; x: number[]; y: number[] },
   { coefficients: number[]; sd: number[]; residual_sd: number }
->(
-  "POST /v1/axis-deviations on certified regressions",
-  ["linear-regression"],
-  async ({ input, expected }) => {
-    const { axis } = await fitAxis(stationsOf(input.x, input.y));
-    const covariance = axis.covariance?.h as LineCovariance;
-    const got = [axis.h.at0, axis.h.slope, Math.sqrt(covariance[0][0]), Math.sqrt(covariance[1][1])];
-    const wanted = [...expected.coefficients, ...expected.sd];
-    // 1e-12 relative: what double arithmetic can promise of NIST's 15 certified digits.
-    for (const [index, value] of got.entries())
-      expect(Math.abs(value / (wanted[index] ?? NaN) - 1)).toBeLessThan(1e-12);
-  },
-  // The service fits a line with intercept: polynomials and a line through the origin are not its job.
-  ({ input }) => JSON.stringify(input.powers) === "[0,1]",
-);
+>("POST /v1/axis-deviations on certified regressions", ["linear-regression"], async ({ input, expected }) => {
+  const { axis } = await fitAxis(stationsOf(input.x, input.y));
+  const covariance = axis.covariance?.h as LineCovariance;
+  const got = [axis.h.at0, axis.h.slope, Math.sqrt(covariance[0][0]), Math.sqrt(covariance[1][1])];
+  const wanted = [...expected.coefficients, ...expected.sd];
+  // 1e-12 relative: what double arithmetic can promise of NIST's 15 certified digits.
+  for (const [index, value] of got.entries())
+    expect(Math.abs(value / (wanted[index] ?? NaN) - 1)).toBeLessThan(1e-12);
+});

@@ -1,5 +1,6 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
+import { enumerateColumns, withoutBeaten } from "./enumerate-columns.ts";
 import { pickColumns } from "./pick-columns.ts";
 import type { Unit } from "./stock-program.ts";
 
@@ -40,6 +41,9 @@ const sumsOf = (units: readonly Unit[], picks: readonly number[]): Sums => {
     totalMm: Math.round(sum(({ totalMm }) => totalMm) * 1e6) / 1e6,
   };
 };
+
+const takenBy = (units: readonly Unit[], picks: readonly number[]): number[] =>
+  [0, 1].map((line) => units.reduce((sum, { columns }, u) => sum + columns[picks[u]!]!.taken[line]!, 0));
 
 function everyPick(units: readonly Unit[], quantities: readonly number[]): number[][] {
   const all = units.reduce<number[][]>(
@@ -86,6 +90,32 @@ describe("pickColumns", () => {
       { numRuns: 120 },
     );
     expect(Math.min(answered.none, answered.some)).toBeGreaterThan(3);
+  });
+
+  it("finds the same in every order of trying, and without what others beat", () => {
+    fc.assert(
+      fc.property(
+        someUnits,
+        fc.tuple(fc.integer({ min: 0, max: 5 }), fc.integer({ min: 0, max: 5 })),
+        fc.constantFrom("least_squares", "minimax"),
+        (units, quantities, aim) => {
+          const plain = enumerateColumns(units, quantities, aim, 1e6);
+          const fewer = withoutBeaten(units);
+          const other = enumerateColumns(fewer.units, quantities, aim, 1e6, "fewest_pieces");
+          expect([plain.complete, other.complete]).toEqual([true, true]);
+          const own = other.best ? other.best.picks.map((pick, u) => fewer.from[u]![pick]!) : null;
+          expect(own && sumsOf(units, own)).toEqual(plain.best && sumsOf(units, plain.best.picks));
+          expect(own && takenBy(units, own)).toEqual(plain.best && takenBy(units, plain.best.picks));
+        },
+      ),
+      { numRuns: 300 },
+    );
+  });
+
+  it("leaves out a column that another beats in all but what rounding tells apart", () => {
+    const column = (cost: number, handled: number) => ({ cost, handled, totalMm: 0, net: [1], taken: [1] });
+    const columns = [column(1, 2), column(1 + 1e-15, 1), column(0.5, 3)];
+    expect(withoutBeaten([{ component: 0, columns }]).from).toEqual([[2, 1]]);
   });
 
   it("finds nothing where a unit has no column", () => {

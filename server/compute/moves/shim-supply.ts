@@ -18,6 +18,9 @@ export interface ChangeWays {
   readonly ways: readonly ShimChange[];
 }
 
+/** Pieces that go in, by line of the stock, and pieces that come out. */
+type Exchange = Pick<ShimChange, "stockLines" | "removeMm">;
+
 /** Shims finer than this apart are one step to the search; what it finds does not depend on it. */
 const leastStepMm = 1e-4;
 
@@ -114,7 +117,7 @@ export class ShimSupply {
   }
 
   /** Per line, the pieces that changes take from stock. */
-  takenBy(changes: readonly ShimChange[]): number[] {
+  takenBy(changes: readonly Exchange[]): number[] {
     const taken = this.lines.map(() => 0);
     for (const { stockLines = [] } of changes)
       for (const line of stockLines) taken[line] = (taken[line] ?? 0) + 1;
@@ -122,7 +125,7 @@ export class ShimSupply {
   }
 
   /** Per line, the pieces that changes take, less those that they give back. */
-  netOf(changes: readonly ShimChange[]): number[] {
+  netOf(changes: readonly Exchange[]): number[] {
     const net = this.takenBy(changes);
     if (!this.reuse) return net;
     for (const { removeMm } of changes) {
@@ -135,7 +138,7 @@ export class ShimSupply {
   }
 
   /** The same of the counted lines alone. */
-  countedOf(changes: readonly ShimChange[]): number[] {
+  countedOf(changes: readonly Exchange[]): number[] {
     if (this.counted.length === 0) return [];
     const net = this.netOf(changes);
     return this.counted.map((line) => net[line] ?? 0);

@@ -11,8 +11,8 @@ import { chooseAlone, chooseFromRest, overdrawnBy, type TasksOf } from "./take-f
 export type SolvePass = (shimsOf: (index: number) => ComponentShims | null) => SolvedComponent[];
 
 /** Sharing stock solves every component some tens of times. */
-const callsShared = 3;
-const shareShared = 0.5;
+const callsShared = 1.2;
+const shareShared = 0.25;
 /** What comes of taking in turn is only where sharing begins. */
 const shareInTurn = 0.1;
 

@@ -45,24 +45,20 @@ export function stockChangesWithin(
       const leastMm = lowMm + sumMm - taken.mm;
       const mostMm = highMm + sumMm - taken.mm;
       if (mostMm < -sameThicknessMm) continue;
-      for (const { entry } of sums.within(leastMm, mostMm, budget)) {
+      // Pieces beside those taken are of lines that are not counted.
+      const use = supply.countedOf([{ stockLines: taken.lines, removeMm: pieces }]).join(" ");
+      for (const { sumMm: besideMm, entry } of sums.within(leastMm, mostMm, budget)) {
         if (left + taken.lines.length + entry.pieces > stack.maxCount) continue;
         budget.spend(trialsPerWay);
+        const ways = ensure(kept, Math.round((taken.mm + besideMm - sumMm) / sameThicknessMm));
+        const handled = pieces.length + taken.lines.length + entry.pieces;
+        if ((ways.get(use)?.handled ?? Infinity) <= handled) continue;
         const made = piecesOfEntry(entry);
         const stockLines = [...taken.lines, ...made.lines].sort((a, b) => a - b);
         const addMm = stockLines.map((line) => supply.lines[line]?.thicknessMm ?? 0);
         if (made.cutMm > 0) addMm.push(made.cutMm);
         const changeMm = addMm.reduce((sum, mm) => sum + mm, 0) - sumMm;
-        const change: ShimChange = {
-          changeMm,
-          addMm,
-          removeMm: pieces,
-          handled: pieces.length + addMm.length,
-          stockLines,
-        };
-        const ways = ensure(kept, Math.round(changeMm / sameThicknessMm));
-        const use = supply.countedOf([change]).join(" ");
-        if ((ways.get(use)?.handled ?? Infinity) > change.handled) ways.set(use, change);
+        ways.set(use, { changeMm, addMm, removeMm: pieces, handled, stockLines });
       }
     }
   }

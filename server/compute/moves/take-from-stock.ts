@@ -10,17 +10,28 @@ export interface TasksOf {
   readonly tasks: readonly ShimTask[];
 }
 
-/** Chooses for a component with all of the stock that could be there when its turn comes. */
+/**
+ * Chooses for a component with all of the stock that could be there when its turn comes. Where that takes more trials
+ * than there are, its stacks have equal shares of the stock, and nothing is proved.
+ * @throws ComputeError too_many_choices, not_converged
+ */
 export function chooseAlone(
   supply: ShimSupply,
   before: readonly TasksOf[],
   { index, tasks }: TasksOf,
   budget: SearchBudget,
 ): TasksChoice | null {
-  return chooseForTasks(
-    tasks.map((task) => ({ ...task, supply: couldHave(supply, before, { index, tasks }, task) })),
-    budget,
-  );
+  const own: (TasksChoice | null)[] = [];
+  const whole = () => {
+    const could = tasks.map((task) => ({
+      ...task,
+      supply: couldHave(supply, before, { index, tasks }, task),
+    }));
+    own.push(chooseForTasks(could, budget));
+  };
+  if (budget.lasts(whole, () => supply.lines.length > 0)) return own[0] ?? null;
+  const shared = chooseFromShares(tasks, supply.available);
+  return shared && { ...shared, proved: false };
 }
 
 /** Lines of which the choices of components, made in this order, take more than there is at some point. */
@@ -56,12 +67,12 @@ export function chooseFromRest(
   for (const choices of before) choices?.forEach(take);
   const made: ShimChoice[] = [];
   for (const task of tasks) {
-    const own: TasksChoice[] = [];
+    const own: (TasksChoice | null)[] = [];
     const whole = () => {
       const all = { ...task, supply: task.supply.with({ available: [...rest] }) };
-      own.push(...[chooseForTasks([all], budget) ?? []].flat());
+      own.push(chooseForTasks([all], budget));
     };
-    if (!budget.lasts(whole, () => true)) own.push(...[chooseFromShares(task, rest) ?? []].flat());
+    if (!budget.lasts(whole, () => true)) own.push(chooseFromShares([task], rest));
     const [choice] = own[0]?.choices ?? [];
     if (!choice) return null;
     take(choice);
@@ -70,10 +81,11 @@ export function chooseFromRest(
   return made;
 }
 
-function chooseFromShares(task: ShimTask, rest: readonly number[]): TasksChoice | null {
-  const stacks = task.loaded.length + task.following.length;
+function chooseFromShares(tasks: readonly ShimTask[], rest: readonly number[]): TasksChoice | null {
+  const stacks = tasks.reduce((sum, { loaded, following }) => sum + loaded.length + following.length, 0);
   const shares = rest.map((count) => Math.max(0, Math.floor(count / stacks)));
-  return chooseForTasks([{ ...task, supply: task.supply.limitedTo(shares) }], new SearchBudget());
+  const limited = tasks.map((task) => ({ ...task, supply: task.supply.limitedTo(shares) }));
+  return chooseForTasks(limited, new SearchBudget());
 }
 
 /** The stock that could be there for a task at best: all of it, and what is given back before its turn or beside it. */

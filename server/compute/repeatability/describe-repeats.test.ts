@@ -86,8 +86,6 @@ describeCases<{ powers: number[]; x: number[]; y: number[] }, { coefficients: nu
     // h and v are one and the same series: there is no scatter across them to test both with.
     expect(drift!.together).toBeNull();
   },
-  // A straight line with intercept: polynomials and a line through the origin are no drift.
-  ({ input: { powers } }) => JSON.stringify(powers) === "[0,1]",
 );
 
 describe("describeRepeats", () => {

@@ -85,20 +85,20 @@ const problemOf = (
   ...rest,
 });
 
-/** Sizes of a set of gauge blocks in thousandths, one block of each, up to the thickest. */
-const blocks = (thickest: number): StockItem[] => {
+/** The set of 81 gauge blocks, one of each size. */
+const blocks = (): StockItem[] => {
   const series = (from: number, to: number, step: number) =>
     Array.from({ length: Math.round((to - from) / step) + 1 }, (_, k) => from + k * step);
   return [
     ...series(1001, 1009, 1),
     ...series(1010, 1490, 10),
     ...series(500, 9500, 500),
-    ...series(10_000, thickest, 10_000),
-  ].map((thousandths) => ({ thicknessMm: thousandths / 1000, quantity: 1 }));
+    ...series(10_000, 40_000, 10_000),
+  ].map((units) => ({ thicknessMm: units / 1000, quantity: 1 }));
 };
 
 /** Raises a bearing on one pad below it, from an empty stack, by the target: what is put in makes it up. */
-function blocksFor(targetThousandths: number, thickest: number): readonly number[] {
+function blocksFor(target: number): readonly number[] {
   const stack = { ...endless, maxCount: 5 };
   const pad: MoveSupport = {
     id: "seat",
@@ -108,12 +108,10 @@ function blocksFor(targetThousandths: number, thickest: number): readonly number
     pads: [{ id: "below", clockDeg: 180, stack }],
   };
   const plan = solveMoves(
-    problemOf([stationAt("bore", 0, -targetThousandths / 1000, 0.01)], [pad], { stock: blocks(thickest) }),
+    problemOf([stationAt("bore", 0, -target / 1000, 0.01)], [pad], { stock: blocks() }),
   );
   return plan.search?.proved ? (plan.components[0]?.stacks[0]?.addMm ?? []) : [];
 }
-
-const sumOf = (values: readonly number[]): number => values.reduce((sum, value) => sum + value, 0);
 
 /** Stations that lie −z² off on two supports: the best move takes the parabola to an eighth. */
 function largestOffParabola(): Readonly<Record<string, number>> {
@@ -165,45 +163,17 @@ export const moveCases: readonly SelfCase[] = [
     compute: largestOffParabola,
   },
   {
-    id: "stock-gauge-blocks-metric",
+    id: "stock-gauge-blocks",
     area: "shim-move",
     source:
-      "Worked example of a gauge-block stack at online-tools-metal, 37.385 = 1.005 + 1.38 + 5 + 30, from the series listed there",
+      "SPACEBLK, exhaustive search for the fewest gauge blocks of the inch set of 81: 1.7523 of four blocks (a thousandth of a millimetre here for its ten-thousandth)",
     figures: [
-      { figure: "sum", expected: 37.385, tolerance: 1e-9 },
+      { figure: "sum", expected: 17.523, tolerance: 1e-9 },
       { figure: "pieces", expected: 4, tolerance: 1e-12 },
-      { figure: "thinnest", expected: 1.005, tolerance: 1e-9 },
-      { figure: "thickest", expected: 30, tolerance: 1e-9 },
     ],
     compute: () => {
-      const made = blocksFor(37_385, 100_000);
-      return {
-        sum: sumOf(made),
-        pieces: made.length,
-        thinnest: Math.min(...made),
-        thickest: Math.max(...made),
-      };
-    },
-  },
-  {
-    id: "stock-gauge-blocks-inch",
-    area: "shim-move",
-    source:
-      "SPACEBLK, exhaustive search for the fewest gauge blocks of the set of 81, printed solutions of three and four blocks (thousandths of a unit here)",
-    figures: [
-      { figure: "sum12345", expected: 12.345, tolerance: 1e-9 },
-      { figure: "pieces12345", expected: 3, tolerance: 1e-12 },
-      { figure: "sum17523", expected: 17.523, tolerance: 1e-9 },
-      { figure: "pieces17523", expected: 4, tolerance: 1e-12 },
-    ],
-    compute: () => {
-      const [first, second] = [blocksFor(12_345, 40_000), blocksFor(17_523, 40_000)];
-      return {
-        sum12345: sumOf(first),
-        pieces12345: first.length,
-        sum17523: sumOf(second),
-        pieces17523: second.length,
-      };
+      const made = blocksFor(17_523);
+      return { sum: made.reduce((sum, mm) => sum + mm, 0), pieces: made.length };
     },
   },
 ];

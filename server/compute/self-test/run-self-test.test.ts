@@ -19,6 +19,19 @@ describe("runSelfTest", () => {
     }
   });
 
+  it("has cases of every part of the engine", () => {
+    const areas = new Set(selfCases.map(({ area }) => area));
+    expect([...areas].sort()).toEqual([
+      "axis-deviation",
+      "bore-fit",
+      "cold-target",
+      "confirmation",
+      "repeatability-study",
+      "shim-move",
+      "statistics",
+    ]);
+  });
+
   it("fails a figure that is off, one that is not finite and one that the engine refuses, and goes on", () => {
     const figures = [{ figure: "x", expected: 1, tolerance: 0.1 }];
     const one = (id: string, compute: () => Record<string, number>) =>

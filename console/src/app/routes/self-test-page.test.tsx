@@ -70,6 +70,26 @@ describe("the self-test's page", () => {
     expect(screen.getByText(/^Engine 1\.0\.0:/).textContent).toContain("2 passed, 0 failed");
   });
 
+  it("shows each part of the engine by itself", async () => {
+    const areas = [
+      ["bore-fit", "Bore fits"],
+      ["axis-deviation", "Axis and deviations"],
+      ["shim-move", "Shim moves"],
+      ["cold-target", "Cold targets"],
+      ["repeatability-study", "Repeatability"],
+      ["confirmation", "Confirmations"],
+      ["statistics", "Statistics"],
+    ] as const;
+    const figures = areas.map(([area], index) => figure({ area, id: `case-${index}` }));
+    serviceFor("viewer").on(route, answer(selfTestSchema, test(figures)));
+    renderConsole("/self-test");
+    for (const [index, [, name]] of areas.entries()) {
+      const table = await screen.findByRole("table", { name });
+      expect(within(table).getByText(`case-${index}`)).toBeTruthy();
+      expect(within(table).getAllByRole("row").length).toBe(2);
+    }
+  });
+
   it("puts what failed first and says what not to use", async () => {
     const off = figure({ figure: "centreH", got: 5, passed: false });
     const none = figure({ figure: "centreV", got: null, passed: false });
