@@ -258,7 +258,9 @@ export const shimMoveResult = z
           description:
             "alone: each component by itself, the stock is enough for all. enumeration, mixed_integer_program: all components together, for the stock they share. in_turn: each with what those before it leave.",
         }),
-        proved: z.boolean().meta({ description: "Whether no better choice exists." }),
+        proved: z.boolean().meta({
+          description: "Whether no better choice exists, in cost, pieces handled, total change and stock order.",
+        }),
         gap: z.number().nullable().meta({
           description:
             "How much better a choice could be at most, in what is made least; 0 where proved, null where not known.",

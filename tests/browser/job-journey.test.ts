@@ -28,7 +28,8 @@ describe("a job in the console", () => {
     await page.getByRole("table", { name: "Stations" }).waitFor();
 
     await page.getByRole("link", { name: "Start a job" }).click();
-    await page.getByLabel("Title").fill("Unit 2, major outage");
+    await page.getByRole("heading", { level: 1, name: "Start a job" }).waitFor();
+    await page.getByLabel("Title", { exact: true }).fill("Unit 2, major outage");
     await page.getByLabel("Id, instrument 1").fill("gauge-1");
     await page.getByLabel("Description, instrument 1").fill("Turned bore gauge");
     await page.getByLabel("u of a reading, instrument 1").fill("0,008");

@@ -33,29 +33,42 @@ export interface StockTask {
 interface Way {
   readonly changeMm: number;
   readonly handled: number;
-  /** Pieces taken of each item of the stock, less those given back. */
+  /** Pieces taken of each item of the stock, and those less the ones given back. */
+  readonly taken: readonly number[];
   readonly net: readonly number[];
 }
 
-interface WaySet {
+interface WaySet extends Pieces {
   readonly changesMm: readonly number[];
-  readonly handled: number;
-  readonly net: readonly number[];
 }
 
-interface Choice {
+interface Choice extends Pieces {
   readonly cost: number;
-  readonly handled: number;
   readonly totalMm: number;
-  readonly net: readonly number[];
 }
+
+type Pieces = Pick<Way, "handled" | "taken" | "net">;
 
 export interface StockBest {
   readonly cost: number;
   readonly fewestHandled: number;
   readonly leastTotalMm: number;
+  /** Pieces taken of each item by the first of the best in stock order: of the first item as many as can be, and so on. */
+  readonly firstTaken: readonly number[];
   readonly choices: number;
 }
+
+const plus = (a: readonly number[], b: readonly number[]) => a.map((value, k) => value + b[k]!);
+
+const together = (a: Pieces, b: Pieces): Pieces => ({
+  handled: a.handled + b.handled,
+  taken: plus(a.taken, b.taken),
+  net: plus(a.net, b.net),
+});
+
+/** Above 0 when `a` takes more of the first item in which they differ. */
+const order = (a: readonly number[], b: readonly number[]) =>
+  a.map((count, k) => count - b[k]!).find((more) => more !== 0) ?? 0;
 
 const same = (a: number, b: number) => Math.abs(a - b) < 1e-7;
 
@@ -104,6 +117,7 @@ export function everyStockWay(task: StockTask, stack: ShimStack): Way[] {
         ways.push({
           changeMm,
           handled: out.length + added,
+          taken: counts,
           net: counts.map((count, k) => count - given[k]!),
         });
       }
@@ -131,16 +145,22 @@ function waysOfGroup(task: StockTask, { stacks }: StockGroup): WaySet[] {
           )
           .map((other) => ({
             changesMm: [one.changeMm, other.changeMm],
-            handled: one.handled + other.handled,
-            net: one.net.map((count, k) => count + other.net[k]!),
+            ...together(one, other),
           })),
       );
   const fewest = new Map<string, WaySet>();
   for (const way of all) {
     const key = `${way.changesMm.map((mm) => Math.round(mm * 1e7)).join(" ")} ${way.net.join(" ")}`;
-    if (way.handled < (fewest.get(key)?.handled ?? Infinity)) fewest.set(key, way);
+    const known = fewest.get(key);
+    const less = known ? way.handled - known.handled || order(known.taken, way.taken) : -1;
+    if (less < 0) fewest.set(key, way);
   }
   return [...fewest.values()];
+}
+
+function nothingOf({ stock }: StockTask): Pieces {
+  const none = stock.map(() => 0);
+  return { handled: 0, taken: none, net: none };
 }
 
 function choicesOf(task: StockTask, part: StockPart): Choice[] {
@@ -175,11 +195,8 @@ function choicesOf(task: StockTask, part: StockPart): Choice[] {
     });
     found.push({
       cost: task.aim === "minimax" ? Math.max(...ratios) : ratios.reduce((sum, ratio) => sum + ratio ** 2, 0),
-      handled: chosen.slice(0, part.groups.length).reduce((sum, { handled }) => sum + handled, 0),
       totalMm: changes.reduce((sum, mm) => sum + Math.abs(mm), 0),
-      net: task.stock.map((_, k) =>
-        chosen.slice(0, part.groups.length).reduce((sum, { net }) => sum + net[k]!, 0),
-      ),
+      ...chosen.slice(0, part.groups.length).reduce<Pieces>(together, nothingOf(task)),
     });
   };
   choose(0);
@@ -196,22 +213,15 @@ function choicesOf(task: StockTask, part: StockPart): Choice[] {
 /** Every choice of every part together, the parts in the order in which they take from stock. */
 export function bruteForceStock(task: StockTask): StockBest | null {
   const ofPart = task.parts.map((part) => choicesOf(task, part));
-  let all: { costs: readonly number[]; handled: number; totalMm: number; net: readonly number[] }[] = [
-    { costs: [], handled: 0, totalMm: 0, net: task.stock.map(() => 0) },
+  let all: (Pieces & { costs: readonly number[]; totalMm: number })[] = [
+    { costs: [], totalMm: 0, ...nothingOf(task) },
   ];
   for (const choices of ofPart) {
     all = all.flatMap((before) =>
       choices.flatMap((one) => {
-        const net = before.net.map((count, k) => count + one.net[k]!);
-        if (net.some((count, k) => count > task.stock[k]!.quantity)) return [];
-        return [
-          {
-            costs: [...before.costs, one.cost],
-            handled: before.handled + one.handled,
-            totalMm: before.totalMm + one.totalMm,
-            net,
-          },
-        ];
+        const sum = together(before, one);
+        if (sum.net.some((count, k) => count > task.stock[k]!.quantity)) return [];
+        return [{ ...sum, costs: [...before.costs, one.cost], totalMm: before.totalMm + one.totalMm }];
       }),
     );
   }
@@ -227,10 +237,8 @@ export function bruteForceStock(task: StockTask): StockBest | null {
   left = left.filter(({ costs }) => equal(sumOf(costs), cost));
   const fewestHandled = Math.min(...left.map(({ handled }) => handled));
   left = left.filter(({ handled }) => handled === fewestHandled);
-  return {
-    cost,
-    fewestHandled,
-    leastTotalMm: Math.min(...left.map(({ totalMm }) => totalMm)),
-    choices: all.length,
-  };
+  const leastTotalMm = Math.min(...left.map(({ totalMm }) => totalMm));
+  left = left.filter(({ totalMm }) => same(totalMm, leastTotalMm));
+  const firstTaken = left.map(({ taken }) => taken).reduce((a, b) => (order(b, a) > 0 ? b : a));
+  return { cost, fewestHandled, leastTotalMm, firstTaken, choices: all.length };
 }

@@ -8,6 +8,8 @@ export interface JudgedPlan {
   readonly cost: number;
   readonly handled: number;
   readonly totalMm: number;
+  /** Pieces put in of each item of the stock, where none are cut. */
+  readonly taken: readonly number[];
   /** Thicknesses of which a component, in the order of the moves, takes more than there is. */
   readonly overdrawn: readonly number[];
 }
@@ -20,6 +22,9 @@ export function judgeStock(problem: MoveProblem, plan: MovePlan): JudgedPlan {
     cost: problem.components.reduce((sum, { stationIds }) => sum + costOf(problem, plan, stationIds), 0),
     handled: stacks.reduce((sum, { addMm, removeMm }) => sum + addMm.length + removeMm.length, 0),
     totalMm: stacks.reduce((sum, { changeMm }) => sum + Math.abs(changeMm), 0),
+    taken: (problem.stock ?? []).map(
+      ({ thicknessMm }) => stacks.flatMap(({ addMm }) => addMm).filter((mm) => same(mm, thicknessMm)).length,
+    ),
     overdrawn: overdrawn(problem, plan),
   };
 }

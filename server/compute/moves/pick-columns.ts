@@ -7,6 +7,7 @@ import {
   type BestPick,
 } from "./enumerate-columns.ts";
 import type { MoveAim } from "./move-problem.ts";
+import { sameThicknessMm } from "./shim-changes.ts";
 import { solveStockProgram, type Column, type Unit } from "./stock-program.ts";
 
 export interface Picked {
@@ -20,7 +21,7 @@ export interface Picked {
 
 /** Branches of the enumeration before the program is handed to the solver. */
 const branchesMost = 100_000;
-/** Time for the least cost, and for each of fewest pieces and least change among those that cost as little. */
+/** Time for the least cost, and for each rank of those that cost as little. */
 const costSeconds = 3;
 const tieSeconds = 1;
 
@@ -75,15 +76,47 @@ function byProgram(
   const keep = (picks: readonly number[] | undefined) => {
     if (picks && comparePicks(valueOfPicks(units, picks), valueOfPicks(units, best), aim) < 0) best = picks;
   };
-  const proved = first.optimal && reached.sum - bound <= 1e-6 * (1 + reached.sum);
-  const picked = () => ({ picks: best, method: "mixed_integer_program" as const, proved, bound });
-  if (ties === "left") return picked();
-  const fewest = solveStockProgram({ ...base, of: ({ handled }) => handled, within: [cheap] }, tieSeconds);
-  keep(fewest?.picks);
-  const handled = { of: (column: Column) => column.handled, most: valueOfPicks(units, best).handled };
-  const leastChange = { ...base, of: ({ totalMm }: Column) => totalMm, within: [cheap, handled] };
-  keep(solveStockProgram(leastChange, tieSeconds)?.picks);
-  return picked();
+  const cheapest = first.optimal && reached.sum - bound <= 1e-6 * (1 + reached.sum);
+  const picked = (proved: boolean) => ({
+    picks: best,
+    method: "mixed_integer_program" as const,
+    proved,
+    bound,
+  });
+  if (ties === "left") return picked(cheapest);
+  // Of those that cost as little, one rank after another: each holds what the ones before it reached.
+  const within: { of: (column: Column) => number; most: number }[] = [cheap];
+  let ranked = true;
+  for (const { of, slack } of ranksOf(units)) {
+    const solved = solveStockProgram({ ...base, of, within }, tieSeconds);
+    ranked &&= solved?.optimal === true;
+    keep(solved?.picks);
+    if (!ranked) break;
+    within.push({ of, most: sumOver(units, best, of) + slack });
+  }
+  return picked(cheapest && ranked);
+}
+
+/** What is made least of equal costs, in turn: pieces handled, total change, and of each line of the stock pieces left. */
+function ranksOf(
+  units: readonly Unit[],
+): { readonly of: (column: Column) => number; readonly slack: number }[] {
+  const columns = units.flatMap((unit) => unit.columns);
+  const lines = [...(columns[0]?.taken.keys() ?? [])].filter((line) =>
+    units.some((unit) => new Set(unit.columns.map(({ taken }) => taken[line])).size > 1),
+  );
+  return [
+    { of: ({ handled }) => handled, slack: 0 },
+    { of: ({ totalMm }) => totalMm, slack: sameThicknessMm },
+    ...lines.map((line) => ({ of: ({ taken }: Column) => 0 - (taken[line] ?? 0), slack: 0 })),
+  ];
+}
+
+function sumOver(units: readonly Unit[], picks: readonly number[], of: (column: Column) => number): number {
+  return units.reduce((sum, { columns }, u) => {
+    const column = columns[picks[u] ?? -1];
+    return column ? sum + of(column) : sum;
+  }, 0);
 }
 
 /** The least largest cost: the smallest of the columns' costs at which what is left still fits. */

@@ -47,6 +47,21 @@ describe("stock that components share", () => {
     }
   });
 
+  it("goes to the way that comes first in stock order, where two are equal in cost, pieces and change", () => {
+    const stock = [
+      { thicknessMm: 0.1, quantity: 1 },
+      { thicknessMm: 0.2, quantity: Infinity },
+      { thicknessMm: 0.15, quantity: Infinity },
+    ];
+    const plan = solveMoves(problemOf([pad("a", 0, -0.3), pad("b", 3000, -0.3)], { stock }));
+    const added = plan.components.map(({ stacks }) => [...stacks[0]!.addMm].sort());
+    expect(added.sort((a, b) => a[0]! - b[0]!)).toEqual([
+      [0.1, 0.2],
+      [0.15, 0.15],
+    ]);
+    expect(plan.search).toMatchObject({ proved: true, betterBy: 0 });
+  });
+
   it("names the stock where it is what keeps a station out", () => {
     const plan = solveMoves(problemOf([pad("a", 0, -0.1), pad("b", 3000, -0.12)], { stock: one }));
     const out = plan.components.filter(({ unreachable }) => unreachable !== null);

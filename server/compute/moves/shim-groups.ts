@@ -1,7 +1,7 @@
 import { along, dot, lengthOf } from "./least-squares-in-order.ts";
 import type { SearchBudget } from "./search-budget.ts";
 import type { SearchOption } from "./search-choices.ts";
-import { sameThicknessMm, type ShimChange } from "./shim-changes.ts";
+import { fewerThenStockOrder, sameThicknessMm, type ShimChange } from "./shim-changes.ts";
 import type { ChangeWays, ShimSupply } from "./shim-supply.ts";
 import type { ShimTask } from "./shim-task.ts";
 import type { Place } from "./support-places.ts";
@@ -91,7 +91,7 @@ export function groupOptions(
 /** Ways put together that take as long as one trial of the search. */
 const pairsPerTrial = 4;
 
-/** The ways to make the changes of a group: one for each, or of those that take other pieces of the counted lines, all. */
+/** The ways to make the changes of a group: one for each use of the counted lines, of fewest pieces, then first in stock order. */
 function everyWayOf(
   changes: readonly ChangeWays[],
   supply: ShimSupply,
@@ -109,8 +109,8 @@ function everyWayOf(
     for (const second of others) {
       const use = first.use.map((count, k) => count + (second.use[k] ?? 0)).join(" ");
       const known = fewest.get(use);
-      const handled = first.way.handled + second.way.handled;
-      if (!known || handled < known[0].handled + known[1].handled) fewest.set(use, [first.way, second.way]);
+      const pair = [first.way, second.way] as const;
+      if (!known || fewerThenStockOrder(pair, known) < 0) fewest.set(use, pair);
     }
   }
   return [...fewest.values()].map((pair) => [...pair]);

@@ -11,8 +11,8 @@ import { chooseAlone, chooseFromRest, overdrawnBy, type TasksOf } from "./take-f
 export type SolvePass = (shimsOf: (index: number) => ComponentShims | null) => SolvedComponent[];
 
 /** Sharing stock solves every component some tens of times. */
-const callsShared = 1.2;
-const shareShared = 0.25;
+const callsShared = 4;
+const shareShared = 0.5;
 /** What comes of taking in turn is only where sharing begins. */
 const shareInTurn = 0.1;
 

@@ -1,6 +1,6 @@
 import type { ShimStack } from "./move-problem.ts";
 import type { SearchBudget } from "./search-budget.ts";
-import { piecesOf, sameThicknessMm, type ShimChange } from "./shim-changes.ts";
+import { fewerThenStockOrder, piecesOf, sameThicknessMm, type ShimChange } from "./shim-changes.ts";
 import type { ChangeWays, ShimSupply } from "./shim-supply.ts";
 import { piecesOfEntry } from "./stock-sums.ts";
 
@@ -20,9 +20,10 @@ const trialsPerWay = 2;
 
 /**
  * The changes of one stack within `from` to `to`, thinnest first, with pieces from stock, and one cut to size if they are
- * cut: any of its own pieces may come out. For each change the way that handles fewest pieces, for every number of pieces
- * that it takes of the lines that are counted: ways that another is no worse than are left out. Of equally few pieces
- * those of earlier lines.
+ * cut: any of its own pieces may come out. For each change the way that handles fewest pieces, and of equally few the one
+ * first in stock order, for every number of pieces that it takes of the lines that are counted. A way is left out only
+ * where another takes no more of any counted line and handles fewer, or as many and stands no later in stock order:
+ * whatever the other stacks do, that other one does as well.
  * @throws ComputeError too_many_choices
  */
 export function stockChangesWithin(
@@ -52,13 +53,15 @@ export function stockChangesWithin(
         budget.spend(trialsPerWay);
         const ways = ensure(kept, Math.round((taken.mm + besideMm - sumMm) / sameThicknessMm));
         const handled = pieces.length + taken.lines.length + entry.pieces;
-        if ((ways.get(use)?.handled ?? Infinity) <= handled) continue;
+        const known = ways.get(use);
+        if (known && known.handled < handled) continue;
         const made = piecesOfEntry(entry);
         const stockLines = [...taken.lines, ...made.lines].sort((a, b) => a - b);
         const addMm = stockLines.map((line) => supply.lines[line]?.thicknessMm ?? 0);
         if (made.cutMm > 0) addMm.push(made.cutMm);
         const changeMm = addMm.reduce((sum, mm) => sum + mm, 0) - sumMm;
-        ways.set(use, { changeMm, addMm, removeMm: pieces, handled, stockLines });
+        const way = { changeMm, addMm, removeMm: pieces, handled, stockLines };
+        if (!known || fewerThenStockOrder([way], [known]) < 0) ways.set(use, way);
       }
     }
   }
@@ -74,12 +77,12 @@ function ensure(kept: Map<number, Map<string, ShimChange>>, key: number): Map<st
   return known;
 }
 
-/** Fewest pieces first; none that another makes with no more of any counted line. */
+/** Fewest pieces first, then in stock order; none that one before it makes with no more of any counted line. */
 function undominated(supply: ShimSupply, ways: readonly ShimChange[]): ShimChange[] {
   if (ways.length < 2) return [...ways];
   const inOrder = ways
     .map((way) => ({ way, use: supply.countedOf([way]) }))
-    .sort((a, b) => a.way.handled - b.way.handled);
+    .sort((a, b) => fewerThenStockOrder([a.way], [b.way]));
   const kept: typeof inOrder = [];
   for (const each of inOrder) {
     if (!kept.some(({ use }) => use.every((count, k) => count <= (each.use[k] ?? 0)))) kept.push(each);
