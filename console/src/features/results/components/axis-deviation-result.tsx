@@ -6,9 +6,11 @@ import {
 } from "../../../../../shared/figures/plan-elevation/plan-elevation-of.ts";
 import { tabulateAxis } from "../../../../../shared/figures/plan-elevation/tabulate-axis.ts";
 import { tabulatePlanElevation } from "../../../../../shared/figures/plan-elevation/tabulate-plan-elevation.ts";
+import { tabulateTrials } from "../../../../../shared/figures/trials/tabulate-trials.ts";
 import type { AxisDeviationResult as Result } from "../../../../../shared/schemas/axis-deviations.ts";
 import { FigureView } from "../../../components/ui/figure-view.tsx";
 import { NumberTable } from "../../../components/ui/number-table.tsx";
+import { Tables } from "./tables.tsx";
 import { VerdictSummary } from "./verdict-summary.tsx";
 import { Warnings, type PlacedWarning } from "./warnings.tsx";
 
@@ -28,7 +30,12 @@ export function AxisDeviationResult({ call, result, predicted }: AxisDeviationRe
       <FigureView number={2} draw={(width) => drawPlanElevation(model, width)} />
       <VerdictSummary summary={result.summary} />
       {found && <NumberTable table={found} />}
-      <NumberTable table={tabulateAxis(result.axis, call.units)} />
+      <Tables
+        tables={[
+          tabulateAxis(result.axis, call.units),
+          tabulateTrials(result.stations, call.units, "station"),
+        ]}
+      />
       <Warnings warnings={warningsOf(result)} />
     </div>
   );
@@ -38,7 +45,10 @@ function warningsOf(result: Result): PlacedWarning[] {
   return [
     ...result.axis.warnings.map((warning) => ({ where: "axis", ...warning })),
     ...result.stations.flatMap((station) =>
-      station.warnings.map((warning) => ({ where: station.id, ...warning })),
+      [...station.warnings, ...(station.monteCarlo?.warnings ?? [])].map((warning) => ({
+        where: station.id,
+        ...warning,
+      })),
     ),
   ];
 }

@@ -2,10 +2,12 @@ import { boreSectionOf } from "../../../../../shared/figures/bore-section/bore-s
 import { drawBoreSection } from "../../../../../shared/figures/bore-section/draw-bore-section.ts";
 import { tabulateBoreFits } from "../../../../../shared/figures/bore-section/tabulate-bore-fits.ts";
 import { tabulateBoreSection } from "../../../../../shared/figures/bore-section/tabulate-bore-section.ts";
+import { tabulateTrials } from "../../../../../shared/figures/trials/tabulate-trials.ts";
 import type { BoreFitRequest, BoreFitResult as Fit } from "../../../../../shared/schemas/bore-fits.ts";
 import { FigureView } from "../../../components/ui/figure-view.tsx";
 import { NumberTable } from "../../../components/ui/number-table.tsx";
 import { BoreChoice } from "./bore-choice.tsx";
+import { Tables } from "./tables.tsx";
 import { Warnings, type PlacedWarning } from "./warnings.tsx";
 
 interface BoreFitResultProps {
@@ -38,11 +40,13 @@ export function BoreFitResult({ request, fits, chosen, onChoose }: BoreFitResult
         </div>
       )}
       <NumberTable table={tabulateBoreFits(fits, request.units)} />
+      <Tables tables={[tabulateTrials(fits, request.units, "bore")]} />
       <Warnings warnings={fits.flatMap(warningsOf)} />
     </div>
   );
 }
 
 function warningsOf(fit: Fit): PlacedWarning[] {
-  return fit.warnings.map((warning) => ({ where: fit.id, ...warning }));
+  const ofTrials = fit.monteCarlo?.warnings ?? [];
+  return [...fit.warnings, ...ofTrials].map((warning) => ({ where: fit.id, ...warning }));
 }
