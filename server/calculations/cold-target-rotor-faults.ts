@@ -13,7 +13,7 @@ import type { Converter } from "../../shared/units.ts";
 import { extentOf, leastSupportGapMm } from "../compute/beam/cut-beam.ts";
 import { isSamePlace } from "../compute/targets/cold-target-input.ts";
 import { materials } from "../compute/targets/materials.ts";
-import { combinationInvalid, listOf, membersOf } from "./common-faults.ts";
+import { combinationInvalid, membersOf, soundOf } from "./common-faults.ts";
 
 /** What could be read of a rotor: null where a part failed its schema. */
 interface ReadableRotor {
@@ -84,16 +84,14 @@ export function outsideFault(z: number, at: Place, extent: Extent, axial: Conver
 
 function readable(rotor: unknown): ReadableRotor {
   const sent = membersOf(rotor);
-  const sound = <T>(schema: z.ZodType<T>, items: unknown): (T | null)[] =>
-    listOf(items).map((item) => schema.safeParse(item).data ?? null);
   return {
     z: rotorSchema.shape.z.safeParse(sent["z"]).success
       ? ((sent["z"] as number | null | undefined) ?? 0)
       : null,
-    sections: sound(sectionSchema, sent["sections"]),
-    masses: sound(rotorMassSchema, sent["masses"]),
-    supports: sound(rotorSupportSchema, sent["supports"]),
-    journals: sound(journalSchema, sent["journals"]),
+    sections: soundOf(sectionSchema, sent["sections"]),
+    masses: soundOf(rotorMassSchema, sent["masses"]),
+    supports: soundOf(rotorSupportSchema, sent["supports"]),
+    journals: soundOf(journalSchema, sent["journals"]),
     sent,
   };
 }

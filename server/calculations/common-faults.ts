@@ -1,3 +1,4 @@
+import type { z } from "zod";
 import type { Fault } from "../../shared/error-codes.ts";
 import { pointerOf } from "../../shared/pointer.ts";
 import { unitsSchema } from "../../shared/schemas/common.ts";
@@ -86,6 +87,11 @@ export function membersOf(value: unknown): Record<string, unknown> {
 
 export function listOf(value: unknown): readonly unknown[] {
   return Array.isArray(value) ? value : [];
+}
+
+/** What passes the schema of a list of a body that may be anything; null for each item that does not. */
+export function soundOf<T>(schema: z.ZodType<T>, items: unknown): (T | null)[] {
+  return listOf(items).map((item) => schema.safeParse(item).data ?? null);
 }
 
 /** The `id` of each item of a body that may be anything; null where there is none. */

@@ -1,4 +1,3 @@
-import type { z } from "zod";
 import type { Fault } from "../../shared/error-codes.ts";
 import {
   confirmationComponent,
@@ -10,7 +9,15 @@ import {
   type SurveyStationRequest,
 } from "../../shared/schemas/confirmations.ts";
 import { convertersFor, type Units } from "../../shared/units.ts";
-import { duplicates, idsOf, listOf, membersOf, unknownReference, statedUnitsOrAny } from "./common-faults.ts";
+import {
+  duplicates,
+  idsOf,
+  listOf,
+  membersOf,
+  soundOf,
+  statedUnitsOrAny,
+  unknownReference,
+} from "./common-faults.ts";
 import { componentPartFaults } from "./confirmation-component-faults.ts";
 import { logFaults, moveFaults, type Readable } from "./confirmation-move-faults.ts";
 import { referenceStationFaults } from "./confirmation-reference-faults.ts";
@@ -36,19 +43,17 @@ export function confirmationFaults(request: ConfirmationRequest): Fault[] {
 /** The faults of the domain in the sound parts of a body that failed its schema elsewhere. */
 export function confirmationFaultsBesideSchema(body: unknown): Fault[] {
   const sent = membersOf(body);
-  const sound = <T>(schema: z.ZodType<T>, items: readonly unknown[]): (T | null)[] =>
-    items.map((item) => schema.safeParse(item).data ?? null);
   const survey = (name: "before" | "after") => {
     const stations = listOf(membersOf(sent[name])["stations"]);
-    return { ids: idsOf(stations), stations: sound<SurveyStationRequest>(surveyStationSchema, stations) };
+    return { ids: idsOf(stations), stations: soundOf<SurveyStationRequest>(surveyStationSchema, stations) };
   };
   const units = statedUnitsOrAny(sent["units"]);
   return faultsOf(units, {
     before: survey("before"),
     after: survey("after"),
-    components: sound(confirmationComponent, listOf(sent["components"])),
-    moves: sound(plannedMoveSchema, listOf(sent["moves"])),
-    log: sound(logEntrySchema, listOf(sent["log"])),
+    components: soundOf(confirmationComponent, sent["components"]),
+    moves: soundOf(plannedMoveSchema, sent["moves"]),
+    log: soundOf(logEntrySchema, sent["log"]),
     reference: wholeCall.reference.safeParse(sent["reference"]).data ?? [],
     sameSetUp: wholeCall.sameSetUp.safeParse(sent["sameSetUp"]).data ?? null,
     axis: wholeCall.axis.safeParse(sent["axis"]).data,

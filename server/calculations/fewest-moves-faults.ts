@@ -1,4 +1,3 @@
-import type { z } from "zod";
 import type { Fault } from "../../shared/error-codes.ts";
 import { pointerOf } from "../../shared/pointer.ts";
 import {
@@ -17,6 +16,7 @@ import {
   listOf,
   membersOf,
   notAvailable,
+  soundOf,
   statedUnitsOrAny,
   unknownReference,
 } from "./common-faults.ts";
@@ -64,16 +64,14 @@ export function fewestMovesFaultsBesideSchema(body: unknown): Fault[] {
     reference: listOf(sent["reference"]),
     components: listOf(sent["components"]),
   };
-  const sound = <T>(schema: z.ZodType<T>, items: readonly unknown[]): (T | null)[] =>
-    items.map((item) => schema.safeParse(item).data ?? null);
   return faultsOf({
     units: statedUnitsOrAny(sent["units"]),
     stationIds: idsOf(lists.stations),
-    stations: sound(moveStationSchema, lists.stations),
+    stations: soundOf(moveStationSchema, lists.stations),
     referenceIds: idsOf(lists.reference),
-    references: sound(floatingReferenceSchema, lists.reference),
+    references: soundOf(floatingReferenceSchema, lists.reference),
     componentIds: idsOf(lists.components),
-    components: sound(costedComponentSchema, lists.components),
+    components: soundOf(costedComponentSchema, lists.components),
   });
 }
 

@@ -1,4 +1,3 @@
-import type { z } from "zod";
 import type { Fault } from "../../shared/error-codes.ts";
 import {
   poolingSchema,
@@ -12,7 +11,7 @@ import { toleranceSchema, unitsSchema } from "../../shared/schemas/common.ts";
 import { convertersFor } from "../../shared/units.ts";
 import { findToleranceFaults } from "../compute/conformity/find-tolerance-faults.ts";
 import { faultOf } from "./collect-faults.ts";
-import { combinationInvalid, listOf, membersOf } from "./common-faults.ts";
+import { combinationInvalid, membersOf, soundOf } from "./common-faults.ts";
 import { readTolerance } from "./read-tolerance.ts";
 
 type Reading = OneStationStudyRequest["readings"][number];
@@ -34,12 +33,10 @@ export function repeatabilityStudyFaultsBesideSchema(body: unknown): Fault[] {
   const sent = membersOf(body);
   const units = unitsSchema.safeParse(sent["units"]).data;
   const tolerance = toleranceSchema.safeParse(sent["tolerance"]).data;
-  const sound = <T>(schema: z.ZodType<T>, items: readonly unknown[]): (T | null)[] =>
-    items.map((item) => schema.safeParse(item).data ?? null);
-  const cells = sound(studyCell, listOf(sent["cells"]));
+  const cells = soundOf(studyCell, sent["cells"]);
   return [
     ...toleranceFaults({ ...(units ? { units } : {}), ...(tolerance ? { tolerance } : {}) }),
-    ...(sent["form"] === "one_station" ? timeFaults(sound(repeatReading, listOf(sent["readings"]))) : []),
+    ...(sent["form"] === "one_station" ? timeFaults(soundOf(repeatReading, sent["readings"])) : []),
     ...(sent["form"] === "crossed"
       ? [...cellFaults(cells), ...poolingFaults(poolingSchema.safeParse(sent["pooling"]).data)]
       : []),

@@ -1,4 +1,3 @@
-import type { z } from "zod";
 import type { Fault } from "../../shared/error-codes.ts";
 import { componentSchema, type ComponentRequest } from "../../shared/schemas/move-components.ts";
 import {
@@ -19,8 +18,9 @@ import {
   listOf,
   membersOf,
   notPositive,
-  unknownReference,
+  soundOf,
   statedUnitsOrAny,
+  unknownReference,
 } from "./common-faults.ts";
 import { componentFaults, stationsSharedFaults } from "./component-faults.ts";
 import { carrierFaults, couplingFaults } from "./linkage-faults.ts";
@@ -65,16 +65,14 @@ export function shimMoveFaultsBesideSchema(body: unknown): Fault[] {
     components: listOf(sent["components"]),
     indicators: listOf(sent["indicators"]),
   };
-  const sound = <T>(schema: z.ZodType<T>, items: readonly unknown[]): (T | null)[] =>
-    items.map((item) => schema.safeParse(item).data ?? null);
   return faultsOf({
     units: statedUnitsOrAny(sent["units"]),
     stationIds: idsOf(lists.stations),
-    stations: sound(moveStationSchema, lists.stations),
+    stations: soundOf(moveStationSchema, lists.stations),
     componentIds: idsOf(lists.components),
-    components: sound(componentSchema, lists.components),
+    components: soundOf(componentSchema, lists.components),
     indicatorIds: idsOf(lists.indicators),
-    indicators: sound(indicatorSchema, lists.indicators),
+    indicators: soundOf(indicatorSchema, lists.indicators),
     reference: wholeCall.reference.safeParse(sent["reference"]).data ?? [],
     call: {
       couplings: wholeCall.couplings.safeParse(sent["couplings"]).data,

@@ -7,7 +7,8 @@ import {
   textColumn,
   type FigureTable,
 } from "../figure-table.ts";
-import { decimalsAcross, decimalsAlong, decimalsFor } from "../write-number.ts";
+import { tabulateFoundAndPredicted } from "../move-sheet/tabulate-predicted.ts";
+import { decimalsAcross, decimalsFor } from "../write-number.ts";
 
 /** Which parts move, and how far at every support; what each costs. */
 export function tabulateChoice(
@@ -82,40 +83,16 @@ export function tabulateFloat(
 /** Every station as found, from the axis as surveyed, and after the moves, from the new one. */
 export function tabulateFewestPredicted(
   { units, stations }: FewestMovesRequest,
-  result: FewestMovesResult,
+  { infeasible, axis, predicted }: FewestMovesResult,
 ): FigureTable {
-  const decimals = decimalsFor(
-    [...stations, ...result.predicted].flatMap(({ deviation }) => [deviation.h, deviation.v]),
-    decimalsAcross(units.offset),
-  );
-  const predicted = new Map(result.predicted.map((station) => [station.id, station]));
-  const float = new Set(result.axis.float.map(({ id }) => id));
-  return {
-    caption: result.infeasible
+  return tabulateFoundAndPredicted({
+    caption: infeasible
       ? "Deviations as found"
       : "Deviations as found, and after the moves from the new axis",
-    columns: [
-      textColumn("station"),
-      textColumn(result.infeasible ? "as found" : "predicted"),
-      numberColumn("z", units.axial),
-      numberColumn("found h", units.offset),
-      numberColumn("found v", units.offset),
-      numberColumn("left h", units.offset),
-      numberColumn("left v", units.offset),
-      numberColumn("radial", units.offset),
-    ],
-    rows: stations.map(({ id, z, deviation: { h, v } }) => {
-      const left = predicted.get(id);
-      return [
-        textCell(float.has(id) ? `${id} (ref.)` : id),
-        left?.verdict ? { kind: "verdict", verdict: left.verdict } : textCell("not judged"),
-        numberCell(z, decimalsAlong(units.axial)),
-        signedCell(h, decimals),
-        signedCell(v, decimals),
-        signedCell(left?.deviation.h, decimals),
-        signedCell(left?.deviation.v, decimals),
-        numberCell(left?.deviation.radial, decimals),
-      ];
-    }),
-  };
+    judged: infeasible ? "as found" : "predicted",
+    units,
+    stations,
+    references: new Set(axis.float.map(({ id }) => id)),
+    predicted,
+  });
 }

@@ -1,4 +1,5 @@
-import type { ShimMoveResult } from "../../schemas/shim-moves.ts";
+import type { MoveStationRequest, ShimMoveResult } from "../../schemas/shim-moves.ts";
+import type { Units } from "../../units.ts";
 import type { MoveCall } from "../plan-elevation/plan-elevation-of-moves.ts";
 import {
   numberCell,
@@ -10,20 +11,41 @@ import {
 } from "../figure-table.ts";
 import { decimalsAcross, decimalsAlong, decimalsFor } from "../write-number.ts";
 
+interface FoundAndPredicted {
+  readonly caption: string;
+  /** Heading of the verdicts. */
+  readonly judged: string;
+  readonly units: Units;
+  readonly stations: readonly Pick<MoveStationRequest, "id" | "z" | "deviation">[];
+  readonly references: ReadonlySet<string>;
+  readonly predicted: readonly Pick<ShimMoveResult["predicted"][number], "id" | "deviation" | "verdict">[];
+}
+
 /** Every station before and after: as found, and as the shims chosen are predicted to leave it. */
 export function tabulatePredicted(call: MoveCall, result: ShimMoveResult): FigureTable {
-  const { units, stations } = call;
-  const references = new Set(call.reference ?? []);
+  return tabulateFoundAndPredicted({
+    caption: "Deviations as found, and as left by prediction",
+    judged: "predicted",
+    units: call.units,
+    stations: call.stations,
+    references: new Set(call.reference ?? []),
+    predicted: result.predicted,
+  });
+}
+
+/** One row a station in the order sent: where it was found, where it is predicted to be, and the verdict on that. */
+export function tabulateFoundAndPredicted(told: FoundAndPredicted): FigureTable {
+  const { caption, judged, units, stations, references } = told;
   const decimals = decimalsFor(
-    [...stations, ...result.predicted].flatMap(({ deviation }) => [deviation.h, deviation.v]),
+    [...stations, ...told.predicted].flatMap(({ deviation }) => [deviation.h, deviation.v]),
     decimalsAcross(units.offset),
   );
-  const predicted = new Map(result.predicted.map((station) => [station.id, station]));
+  const predicted = new Map(told.predicted.map((station) => [station.id, station]));
   return {
-    caption: "Deviations as found, and as left by prediction",
+    caption,
     columns: [
       textColumn("station"),
-      textColumn("predicted"),
+      textColumn(judged),
       numberColumn("z", units.axial),
       numberColumn("found h", units.offset),
       numberColumn("found v", units.offset),

@@ -3,6 +3,7 @@ import { ButtonLink } from "../../components/ui/button.tsx";
 import { Empty } from "../../components/ui/empty.tsx";
 import { FilterBar } from "../../components/ui/filter-bar.tsx";
 import { ListStates } from "../../components/ui/list-states.tsx";
+import { NothingFits } from "../../components/ui/nothing-fits.tsx";
 import { PageHeading } from "../../components/ui/page-heading.tsx";
 import { SelectField } from "../../components/ui/select-field.tsx";
 import { TextField } from "../../components/ui/text-field.tsx";
@@ -60,14 +61,7 @@ export function MachinesPage() {
 
 function NothingFound({ search, mayWrite }: { search: URLSearchParams; mayWrite: boolean }) {
   if (search.size > 0) {
-    return (
-      <Empty title="No machine fits these filters">
-        Widen them, or clear them to see all in use.
-        <p className="mt-4">
-          <ButtonLink to={paths.machines}>Clear filters</ButtonLink>
-        </p>
-      </Empty>
-    );
+    return <NothingFits what="machine" path={paths.machines} shows="all in use" />;
   }
   return (
     <Empty title="No machines yet">

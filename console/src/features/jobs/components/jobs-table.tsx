@@ -1,8 +1,8 @@
 import { Link } from "react-router-dom";
 import type { JobSummary } from "../../../../../shared/schemas/jobs.ts";
-import { CopyButton } from "../../../components/ui/copy-button.tsx";
 import { DataTable, type DataColumn } from "../../../components/ui/data-table.tsx";
 import { Instant } from "../../../components/ui/instant.tsx";
+import { NamedId } from "../../../components/ui/named-id.tsx";
 import { paths } from "../../../config/paths.ts";
 import { JobState } from "./job-state.tsx";
 
@@ -14,17 +14,7 @@ const columns: DataColumn<JobSummary>[] = [
   {
     heading: "job",
     lead: true,
-    cell: ({ id, title }) => (
-      <>
-        <Link to={paths.job(id)} className="link font-semibold break-words">
-          {title}
-        </Link>
-        <span className="flex items-center gap-2 text-xs text-muted">
-          <span className="break-all">{id}</span>
-          <CopyButton text={id} what={`id ${id}`} />
-        </span>
-      </>
-    ),
+    cell: ({ id, title }) => <NamedId name={title} id={id} path={paths.job(id)} />,
   },
   {
     heading: "machine",

@@ -1,12 +1,15 @@
-import { useState, type SubmitEvent } from "react";
+import { useState } from "react";
 import { scopesOfRole } from "../../../../../shared/access.ts";
 import { limits } from "../../../../../shared/limits.ts";
 import { createKeyRequest, type CreatedKey } from "../../../../../shared/schemas/keys.ts";
 import { Button } from "../../../components/ui/button.tsx";
+import { ChoiceList } from "../../../components/ui/choice-list.tsx";
 import { Failure } from "../../../components/ui/failure.tsx";
 import { Field } from "../../../components/ui/field.tsx";
-import { checkForm, faultsOfProblem, textOf, type FieldFaults } from "../../../lib/read-form.ts";
+import { TextField } from "../../../components/ui/text-field.tsx";
+import { textOf, type FieldFaults } from "../../../lib/read-form.ts";
 import type { Member } from "../../../lib/session-store.ts";
+import { useOrderForm } from "../../../lib/use-order-form.ts";
 import { useCreateKey } from "../api/create-key.ts";
 import { expiryChoices, expiryDefault, expiryOf } from "./expiry.ts";
 import { scopeWords } from "./scope-words.ts";
@@ -18,68 +21,40 @@ interface IssueKeyFormProps {
 }
 
 export function IssueKeyForm({ role, onIssued, onCancel }: IssueKeyFormProps) {
-  const [faults, setFaults] = useState<FieldFaults>({});
   // The moment of opening, so that pressing the button twice sends one and the same order.
   const [opened] = useState(() => new Date());
   const create = useCreateKey();
-  const submit = (event: SubmitEvent<HTMLFormElement>): void => {
-    event.preventDefault();
-    if (create.isPending) return;
-    const data = new FormData(event.currentTarget);
-    const checked = checkForm(createKeyRequest, {
+  const { faults, submit } = useOrderForm({
+    schema: createKeyRequest,
+    read: (data) => ({
       name: textOf(data, "name"),
       scopes: data.getAll("scopes"),
       expiresAt: expiryOf(textOf(data, "expires"), opened),
-    });
-    setFaults(wordsFor(checked.faults ?? {}));
-    if (checked.values === null) return;
-    create.mutate(checked.values, {
-      onSuccess: onIssued,
-      onError: (error) => setFaults(faultsOfProblem(error)),
-    });
-  };
+    }),
+    wordsFor,
+    create,
+    onMade: onIssued,
+  });
   return (
     <form onSubmit={submit} noValidate className="grid gap-5">
-      <Field label="Name" hint="What the key is for, as “outage planning, unit 2”." error={faults["name"]}>
-        {(attributes) => (
-          <input
-            {...attributes}
-            name="name"
-            className="control"
-            maxLength={limits.nameLength}
-            autoComplete="off"
-            autoFocus
-          />
-        )}
-      </Field>
-      <fieldset aria-describedby={faults["scopes"] ? "scopes-error" : undefined}>
-        <legend className="field-name mb-1">What it may do</legend>
-        <div className="border border-hair">
-          {scopesOfRole(role).map((scope) => (
-            <label
-              key={scope}
-              className="flex cursor-pointer items-baseline gap-3 border-b border-hair px-3 py-1.5 last:border-b-0 hover:bg-well"
-            >
-              <input
-                type="checkbox"
-                name="scopes"
-                value={scope}
-                defaultChecked={scope.startsWith("calculations:")}
-                className="accent-ink"
-              />
-              <span className="min-w-0">
-                {scopeWords[scope]}
-                <span className="block text-xs text-muted">{scope}</span>
-              </span>
-            </label>
-          ))}
-        </div>
-        {faults["scopes"] !== undefined && (
-          <p id="scopes-error" className="mt-1 text-xs text-signal">
-            {faults["scopes"]}
-          </p>
-        )}
-      </fieldset>
+      <TextField
+        label="Name"
+        hint="What the key is for, as “outage planning, unit 2”."
+        error={faults["name"]}
+        name="name"
+        maxLength={limits.nameLength}
+        autoFocus
+      />
+      <ChoiceList
+        legend="What it may do"
+        name="scopes"
+        choices={scopesOfRole(role).map((scope) => ({
+          value: scope,
+          words: scopeWords[scope],
+          chosen: scope.startsWith("calculations:"),
+        }))}
+        error={faults["scopes"]}
+      />
       <Field label="Expires after" error={faults["expiresAt"]}>
         {(attributes) => (
           <select {...attributes} name="expires" defaultValue={expiryDefault} className="control">

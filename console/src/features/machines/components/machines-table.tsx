@@ -1,8 +1,8 @@
 import { Link } from "react-router-dom";
 import type { MachineSummary } from "../../../../../shared/schemas/machines.ts";
-import { CopyButton } from "../../../components/ui/copy-button.tsx";
 import { DataTable, type DataColumn } from "../../../components/ui/data-table.tsx";
 import { Instant } from "../../../components/ui/instant.tsx";
+import { NamedId } from "../../../components/ui/named-id.tsx";
 import { paths } from "../../../config/paths.ts";
 import { ArchiveMachine } from "./archive-machine.tsx";
 
@@ -26,17 +26,7 @@ const columns: DataColumn<MachineSummary>[] = [
   {
     heading: "machine",
     lead: true,
-    cell: ({ id, name }) => (
-      <>
-        <Link to={paths.machine(id)} className="link font-semibold break-words">
-          {name}
-        </Link>
-        <span className="flex items-center gap-2 text-xs text-muted">
-          <span className="break-all">{id}</span>
-          <CopyButton text={id} what={`id ${id}`} />
-        </span>
-      </>
-    ),
+    cell: ({ id, name }) => <NamedId name={name} id={id} path={paths.machine(id)} />,
   },
   { heading: "plant tag", cell: ({ plantTag }) => plantTag ?? <span className="text-muted">–</span> },
   { heading: "revision", align: "end", cell: ({ revision }) => revision },

@@ -1,4 +1,3 @@
-import { useState, type SubmitEvent } from "react";
 import { limits } from "../../../../../shared/limits.ts";
 import {
   createWebhookRequest,
@@ -6,9 +5,11 @@ import {
   type WebhookWithSecret,
 } from "../../../../../shared/schemas/webhooks.ts";
 import { Button } from "../../../components/ui/button.tsx";
+import { ChoiceList } from "../../../components/ui/choice-list.tsx";
 import { Failure } from "../../../components/ui/failure.tsx";
-import { Field } from "../../../components/ui/field.tsx";
-import { checkForm, faultsOfProblem, textOf, type FieldFaults } from "../../../lib/read-form.ts";
+import { TextField } from "../../../components/ui/text-field.tsx";
+import { textOf, type FieldFaults } from "../../../lib/read-form.ts";
+import { useOrderForm } from "../../../lib/use-order-form.ts";
 import { useCreateWebhook } from "../api/change-webhooks.ts";
 import { eventWords } from "./event-words.ts";
 
@@ -18,73 +19,43 @@ interface AddWebhookFormProps {
 }
 
 export function AddWebhookForm({ onAdded, onCancel }: AddWebhookFormProps) {
-  const [faults, setFaults] = useState<FieldFaults>({});
   const create = useCreateWebhook();
-  const submit = (event: SubmitEvent<HTMLFormElement>): void => {
-    event.preventDefault();
-    if (create.isPending) return;
-    const data = new FormData(event.currentTarget);
-    const checked = checkForm(createWebhookRequest, {
+  const { faults, submit } = useOrderForm({
+    schema: createWebhookRequest,
+    read: (data) => ({
       name: textOf(data, "name"),
       url: textOf(data, "url"),
       events: data.getAll("events"),
-    });
-    setFaults(wordsFor(checked.faults ?? {}));
-    if (checked.values === null) return;
-    create.mutate(checked.values, {
-      onSuccess: onAdded,
-      onError: (error) => setFaults(faultsOfProblem(error)),
-    });
-  };
+    }),
+    wordsFor,
+    create,
+    onMade: onAdded,
+  });
   return (
     <form onSubmit={submit} noValidate className="grid gap-5">
-      <Field label="Name" hint="What listens there, as “outage planner”." error={faults["name"]}>
-        {(attributes) => (
-          <input
-            {...attributes}
-            name="name"
-            className="control"
-            maxLength={limits.nameLength}
-            autoComplete="off"
-            autoFocus
-          />
-        )}
-      </Field>
-      <Field label="Address" hint="https, reachable over the public network." error={faults["url"]}>
-        {(attributes) => (
-          <input
-            {...attributes}
-            name="url"
-            type="url"
-            className="control"
-            maxLength={limits.webhookUrlLength}
-            autoComplete="off"
-            spellCheck={false}
-          />
-        )}
-      </Field>
-      <fieldset aria-describedby={faults["events"] ? "events-error" : undefined}>
-        <legend className="field-name mb-1">What it is told</legend>
-        <div className="border border-hair">
-          {webhookEvents.map((event) => (
-            <label
-              key={event}
-              className="flex cursor-pointer items-baseline gap-3 border-b border-hair px-3 py-1.5 last:border-b-0 hover:bg-well"
-            >
-              <input type="checkbox" name="events" value={event} className="accent-ink" />
-              <span className="min-w-0">
-                {eventWords[event]}
-                <span className="block text-xs text-muted">{event}</span>
-              </span>
-            </label>
-          ))}
-        </div>
-        {faults["events"] !== undefined && (
-          <p id="events-error" className="mt-1 text-xs text-signal">
-            {faults["events"]}
-          </p>
-        )}
-      </fieldset>
+      <TextField
+        label="Name"
+        hint="What listens there, as “outage planner”."
+        error={faults["name"]}
+        name="name"
+        maxLength={limits.nameLength}
+        autoFocus
+      />
+      <TextField
+        label="Address"
+        hint="https, reachable over the public network."
+        error={faults["url"]}
+        name="url"
+        type="url"
+        maxLength={limits.webhookUrlLength}
+        spellCheck={false}
+      />
+      <ChoiceList
+        legend="What it is told"
+        name="events"
+        choices={webhookEvents.map((event) => ({ value: event, words: eventWords[event] }))}
+        error={faults["events"]}
+      />
       {create.isError && <Failure error={create.error} what="The webhook was not added." />}
       <div className="flex flex-wrap justify-end gap-2">
         <Button onClick={onCancel}>Cancel</Button>

@@ -1,6 +1,6 @@
-import { useState } from "react";
 import { useNavigate } from "react-router-dom";
 import type { Delivery, Webhook } from "../../../../../shared/schemas/webhooks.ts";
+import { AskFirst } from "../../../components/ui/ask-first.tsx";
 import { Button } from "../../../components/ui/button.tsx";
 import { Dialog } from "../../../components/ui/dialog.tsx";
 import { Failure } from "../../../components/ui/failure.tsx";
@@ -45,77 +45,43 @@ function testWords({ attempts }: Delivery): string {
 }
 
 function ReplaceSecret({ webhook }: { webhook: Webhook }) {
-  const [asking, setAsking] = useState(false);
   const replace = useReplaceSecret(webhook.id);
-  const close = (): void => {
-    setAsking(false);
-    replace.reset();
-  };
+  if (replace.isSuccess) {
+    return (
+      <Dialog title="Secret replaced">
+        <ShownSecret name={webhook.name} secret={replace.data.secret} onDone={replace.reset} />
+      </Dialog>
+    );
+  }
   return (
-    <>
-      <Button onClick={() => setAsking(true)}>Replace secret</Button>
-      {asking && !replace.isSuccess && (
-        <Dialog title="Replace the signing secret?" onDismiss={close}>
-          <p>Messages carry both signatures for {overlapHours} hours, then the new one alone.</p>
-          {replace.isError && (
-            <div className="mt-4">
-              <Failure error={replace.error} what="The secret is as it was." />
-            </div>
-          )}
-          <div className="mt-5 flex flex-wrap justify-end gap-2">
-            <Button onClick={close} autoFocus>
-              Keep secret
-            </Button>
-            <Button look="main" busy={replace.isPending} onClick={() => replace.mutate(overlapHours)}>
-              Replace secret
-            </Button>
-          </div>
-        </Dialog>
-      )}
-      {asking && replace.isSuccess && (
-        <Dialog title="Secret replaced">
-          <ShownSecret name={webhook.name} secret={replace.data.secret} onDone={close} />
-        </Dialog>
-      )}
-    </>
+    <AskFirst
+      action="Replace secret"
+      keep="Keep secret"
+      look="main"
+      title="Replace the signing secret?"
+      change={replace}
+      failed="The secret is as it was."
+      onConfirm={() => replace.mutate(overlapHours)}
+    >
+      <p>Messages carry both signatures for {overlapHours} hours, then the new one alone.</p>
+    </AskFirst>
   );
 }
 
 function RemoveWebhook({ webhook }: { webhook: Webhook }) {
-  const [asking, setAsking] = useState(false);
   const remove = useRemoveWebhook();
   const navigate = useNavigate();
-  const close = (): void => {
-    setAsking(false);
-    remove.reset();
-  };
   return (
-    <>
-      <Button look="grave" onClick={() => setAsking(true)}>
-        Remove webhook
-      </Button>
-      {asking && (
-        <Dialog title={`Remove webhook “${webhook.name}”?`} onDismiss={close}>
-          <p>It hears nothing from this moment on, and its log goes with it. This cannot be undone.</p>
-          {remove.isError && (
-            <div className="mt-4">
-              <Failure error={remove.error} what="The webhook is not removed." />
-            </div>
-          )}
-          <div className="mt-5 flex flex-wrap justify-end gap-2">
-            <Button onClick={close} autoFocus>
-              Keep webhook
-            </Button>
-            <Button
-              look="grave"
-              busy={remove.isPending}
-              onClick={() => remove.mutate(webhook.id, { onSuccess: () => void navigate(paths.webhooks) })}
-            >
-              Remove webhook
-            </Button>
-          </div>
-        </Dialog>
-      )}
-    </>
+    <AskFirst
+      action="Remove webhook"
+      keep="Keep webhook"
+      look="grave"
+      title={`Remove webhook “${webhook.name}”?`}
+      change={remove}
+      failed="The webhook is not removed."
+      onConfirm={() => remove.mutate(webhook.id, { onSuccess: () => void navigate(paths.webhooks) })}
+    >
+      <p>It hears nothing from this moment on, and its log goes with it. This cannot be undone.</p>
+    </AskFirst>
   );
 }
