@@ -8,7 +8,7 @@ import { convertersFor, type Converter, type Dimension, type Units } from "../..
 import type { PlaneVector } from "../compute/plane.ts";
 import type { ComponentMove, MovePlan, StackChange, Step, SupportMove } from "../compute/moves/move-plan.ts";
 import type { Tilt } from "../compute/moves/tilt.ts";
-import type { ChoiceSearch } from "../compute/moves/share-stock.ts";
+import type { ChoiceSearch } from "../compute/moves/shared-choice.ts";
 import { solveMoves } from "../compute/moves/solve-moves.ts";
 import { CalculationRefusal, type CalculationKind } from "./calculation-kind.ts";
 import { attempt } from "./collect-faults.ts";

@@ -1,7 +1,7 @@
 import type { Advice, StackChange } from "./move-plan.ts";
 import { planes, type MoveProblem, type MoveStation, type Plane } from "./move-problem.ts";
 import { modesOf } from "./rigid-freedom.ts";
-import type { ChoiceSearch } from "./share-stock.ts";
+import type { ChoiceSearch } from "./shared-choice.ts";
 import { piecesOf } from "./shim-changes.ts";
 import type { SolvedComponent } from "./solve-component.ts";
 import { solvingOrder } from "./solving-order.ts";

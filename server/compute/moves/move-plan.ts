@@ -2,7 +2,7 @@ import type { Verdict } from "../conformity/tolerance.ts";
 import type { PlaneVector } from "../plane.ts";
 import type { Plane } from "./move-problem.ts";
 import type { RollAnswer } from "./roll.ts";
-import type { ChoiceSearch } from "./share-stock.ts";
+import type { ChoiceSearch } from "./shared-choice.ts";
 import type { Tilt } from "./tilt.ts";
 
 /** How far the bore moves at one support. */

@@ -1,5 +1,6 @@
 import { chooseShims } from "./choose-shims.ts";
 import { pickColumns, type Picked } from "./pick-columns.ts";
+import type { MoveAim } from "./move-problem.ts";
 import type { SearchBudget } from "./search-budget.ts";
 import type { ShimChoice, ShimTask } from "./shim-task.ts";
 import { componentsOf, pricesOf, type StockProgram } from "./stock-program.ts";
@@ -54,6 +55,7 @@ export function shareByPrices(
   budget: SearchBudget,
   floor: number,
   keepsRest: (chosen: readonly ShimChoice[]) => boolean,
+  aim: MoveAim = "least_squares",
 ): PricedPick | null {
   const pool = units.map(({ known }) => [...known]);
   const programOf = (choices: readonly (readonly ShimChoice[])[]): StockProgram => ({
@@ -108,7 +110,7 @@ export function shareByPrices(
   const least = Math.max(floor, bound ? boundValue(bound) : floor);
   const gap = Math.max(0, cost - least) + roundingRoom * (1 + cost);
   const asFound = (): PricedPick => {
-    const ties = pickColumns(programOf(pool).units, quantities, "least_squares") ?? first;
+    const ties = pickColumns(programOf(pool).units, quantities, aim) ?? first;
     return {
       chosen: chosenOf(pool, ties),
       method: ties.method,
@@ -119,7 +121,7 @@ export function shareByPrices(
     };
   };
   // What overdraws other lines is not the answer: those are counted next.
-  if (!bound || !keepsRest(chosenOf(pool, first))) return asFound();
+  if (!bound || aim !== "least_squares" || !keepsRest(chosenOf(pool, first))) return asFound();
   const listed: ShimChoice[][] = [];
   let complete = true;
   const list = () => {

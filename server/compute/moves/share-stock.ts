@@ -4,29 +4,11 @@ import type { ShimOffer } from "./choose-shims.ts";
 import type { MoveProblem } from "./move-problem.ts";
 import { pickColumns } from "./pick-columns.ts";
 import type { SearchBudget } from "./search-budget.ts";
-import { shareByPrices, type PricedUnit } from "./share-by-prices.ts";
+import { sharePriced } from "./share-priced.ts";
+import type { SharedChoice } from "./shared-choice.ts";
 import type { ShimSupply } from "./shim-supply.ts";
 import type { ShimChoice, ShimTask } from "./shim-task.ts";
 import { couldHave, overdrawnBy, type TasksOf } from "./take-from-stock.ts";
-
-/** How the shims of a call were chosen, and how sure it is that no better choice was passed over. */
-export interface ChoiceSearch {
-  /**
-   * `alone`: each component by itself, and the stock is enough for all. `enumeration`, `mixed_integer_program`: all
-   * components together, for the stock that they share. `in_turn`: each with what those before leave.
-   */
-  readonly method: "alone" | "enumeration" | "mixed_integer_program" | "in_turn";
-  readonly proved: boolean;
-  /** How far the cost may lie above the least at most; null when that is not known. */
-  readonly betterBy: number | null;
-}
-
-type Choices = ReadonlyMap<number, readonly ShimChoice[] | null>;
-
-export interface SharedChoice {
-  readonly byComponent: Choices;
-  readonly search: ChoiceSearch;
-}
 
 const roundsMost = 30;
 
@@ -45,6 +27,7 @@ export function shareStock(
   alone: readonly (TasksChoice | null)[],
   inTurn: readonly (readonly ShimChoice[] | null)[],
   budget: SearchBudget,
+  pricedBudget: SearchBudget,
 ): SharedChoice {
   const serving = components.filter((_, k) => alone[k]);
   const units = serving.flatMap((each) => each.tasks.map((task) => ({ of: each, task })));
@@ -57,8 +40,19 @@ export function shareStock(
     search: { method: "in_turn", proved: false, betterBy: null },
   };
   if (aim === "least_squares" && inTurn.every((choices, k) => choices !== null || alone[k] === null)) {
-    return priced(supply, components, alone, inTurn, budget);
+    return sharePriced(aim, supply, components, alone, inTurn, pricedBudget);
   }
+  // What is not proved the best: in turn, or what prices lead to where that is better.
+  const bestKnown = (least: readonly number[]): SharedChoice => {
+    const other = withGap(
+      sharePriced(aim, supply, components, alone, inTurn, pricedBudget),
+      units,
+      least,
+      aim,
+    );
+    const first = withGap(turn, units, least, aim);
+    return (other.search.betterBy ?? Infinity) < (first.search.betterBy ?? Infinity) ? other : first;
+  };
   const least = units.map(() => 0);
   let dearer = 0;
   for (let round = 0; round < roundsMost; round++) {
@@ -78,7 +72,7 @@ export function shareStock(
       },
       () => true,
     );
-    if (!done || offers.some(({ proved }) => !proved)) return withGap(turn, units, least, aim);
+    if (!done || offers.some(({ proved }) => !proved)) return bestKnown(least);
     for (const [u, { choices }] of offers.entries()) least[u] = Math.min(...choices.map(({ cost }) => cost));
     const picked = pickColumns(
       units.map(({ of }, u) => ({
@@ -93,7 +87,7 @@ export function shareStock(
     );
     const chosen = picked && units.map((_, u) => offers[u]?.choices[picked.picks[u] ?? -1]);
     if (!picked || !chosen) {
-      const known = turnExcess(turn, units, least, aim) + firstWidening;
+      const known = excessKnown(turn, units, least, aim) + firstWidening;
       const wider = Math.max(firstWidening, 8 * dearer);
       dearer = dearer < known ? Math.min(wider, known) : wider;
       continue;
@@ -124,52 +118,7 @@ export function shareStock(
     const sum = costs.reduce((total, cost) => total + cost, 0);
     return { byComponent, search: { method, proved, betterBy: proved ? 0 : Math.max(0, sum - bound) } };
   }
-  return withGap(turn, units, least, aim);
-}
-
-/** For sums of costs (share-by-prices.ts): as many lines counted as it takes for the choice to keep them all. */
-function priced(
-  supply: ShimSupply,
-  components: readonly TasksOf[],
-  alone: readonly (TasksChoice | null)[],
-  inTurn: readonly (readonly ShimChoice[] | null)[],
-  budget: SearchBudget,
-): SharedChoice {
-  let short = overdrawnBy(
-    supply,
-    alone.map((each) => each?.choices ?? null),
-  );
-  // Fewer lines counted leave more open: what was met then is known, and no choice costs less than was proved then.
-  let met: readonly (readonly ShimChoice[])[] | null = null;
-  let floor = alone.reduce((sum, each) => sum + (each?.floor ?? 0), 0);
-  for (;;) {
-    const counted = components.flatMap((own, k) =>
-      (alone[k] ? own.tasks : []).map((task, t): PricedUnit => {
-        const could = couldHave(supply, components.slice(0, k), own, task).with({ counted: short });
-        const known = [alone[k]?.choices[t], inTurn[k]?.[t]].filter((choice) => choice !== undefined);
-        return { component: own.index, task: { ...task, supply: could }, known };
-      }),
-    );
-    const units = counted.map((unit, u) => ({ ...unit, known: met?.[u] ?? unit.known }));
-    const quantities = short.map((line) => supply.available[line] ?? 0);
-    const byComponentOf = (chosen: readonly ShimChoice[] | null) =>
-      components.map(({ index }, k) =>
-        chosen && alone[k] ? chosen.filter((_, u) => units[u]?.component === index) : (inTurn[k] ?? null),
-      );
-    const keepsRest = (chosen: readonly ShimChoice[]) =>
-      overdrawnBy(supply, byComponentOf(chosen)).length === 0;
-    const best = shareByPrices(units, short, quantities, budget, floor, keepsRest);
-    const choices = byComponentOf(best?.chosen ?? null);
-    const byComponent = new Map(components.map(({ index }, k) => [index, choices[k] ?? null]));
-    const over = overdrawnBy(supply, choices);
-    if (over.length === 0) {
-      const { method, proved, betterBy } = best ?? { method: "in_turn", proved: false, betterBy: null };
-      return { byComponent, search: { method, proved, betterBy } };
-    }
-    short = [...new Set([...short, ...over])].sort((a, b) => a - b);
-    met = best?.pool ?? null;
-    floor = best?.floor ?? floor;
-  }
+  return bestKnown(least);
 }
 
 /** How much of a least cost the first offers lie above it. */
@@ -182,8 +131,8 @@ function excessOf(costs: readonly number[], least: readonly number[], aim: MoveP
   return costs.reduce((sum, cost, u) => sum + cost - (least[u] ?? 0), 0);
 }
 
-/** What choosing in turn costs above the least of each unit. */
-function turnExcess(
+/** What a choice costs above the least of each unit. */
+function excessKnown(
   { byComponent }: SharedChoice,
   units: readonly UnitTask[],
   least: readonly number[],
@@ -197,14 +146,12 @@ function turnExcess(
 }
 
 function withGap(
-  turn: SharedChoice,
+  choice: SharedChoice,
   units: readonly UnitTask[],
   least: readonly number[],
   aim: MoveProblem["aim"],
 ): SharedChoice {
-  const gap = turnExcess(turn, units, least, aim);
-  return {
-    ...turn,
-    search: { method: "in_turn", proved: false, betterBy: Number.isFinite(gap) ? gap : null },
-  };
+  const gap = excessKnown(choice, units, least, aim);
+  const { method } = choice.search;
+  return { ...choice, search: { method, proved: false, betterBy: Number.isFinite(gap) ? gap : null } };
 }

@@ -1,6 +1,7 @@
-import type { MoveProblem } from "./move-problem.ts";
+import type { MoveAim, MoveProblem } from "./move-problem.ts";
 import { SearchBudget } from "./search-budget.ts";
-import { shareStock, type ChoiceSearch } from "./share-stock.ts";
+import { shareStock } from "./share-stock.ts";
+import type { ChoiceSearch } from "./shared-choice.ts";
 import type { TasksChoice } from "./choose-for-tasks.ts";
 import { supplyOf, type ShimSupply } from "./shim-supply.ts";
 import type { ShimChoice, ShimTask } from "./shim-task.ts";
@@ -10,9 +11,11 @@ import { chooseAlone, chooseFromRest, overdrawnBy, type TasksOf } from "./take-f
 /** Solves all components in order, each with the shims told for it. */
 export type SolvePass = (shimsOf: (index: number) => ComponentShims | null) => SolvedComponent[];
 
-/** Sharing stock solves every component some tens of times. */
-const callsShared = 4;
-const shareShared = 0.5;
+/** Sharing stock by prices solves every component some tens of times; for the largest deviation a trial takes longer. */
+const sharedByPrices: Record<MoveAim, { readonly calls: number; readonly share: number }> = {
+  least_squares: { calls: 4, share: 0.5 },
+  minimax: { calls: 2.2, share: 0.3 },
+};
 /** What comes of taking in turn is only where sharing begins. */
 const shareInTurn = 0.1;
 
@@ -59,13 +62,15 @@ export function solveWithShims(problem: MoveProblem, pass: SolvePass): Solved {
     turnBudget.startComponent();
     turn.push(chooseFromRest(supply, turn, each, turnBudget));
   }
+  const priced = sharedByPrices[problem.aim];
   const shared = shareStock(
     problem,
     supply,
     components,
     alone,
     turn,
-    problem.aim === "minimax" ? new SearchBudget() : new SearchBudget(callsShared, shareShared),
+    new SearchBudget(),
+    new SearchBudget(priced.calls, priced.share),
   );
   const inOrder = pass((index) => ({ supply, choose: () => shared.byComponent.get(index) ?? null }));
   return { inOrder, search: shared.search };
