@@ -50,6 +50,9 @@ export const limits = {
   instrumentsPerJob: 50,
   readingsPerPost: 200,
   entriesPerJob: 20_000,
+  /** Of JSON in all entries of a job's log. */
+  charactersPerJob: 64 * 1024 * 1024,
+  readingFilesPerJob: 500,
   jobsPerHistory: 20,
   /** Streams that one credential may have open in one process. */
   watchersPerCredential: 8,

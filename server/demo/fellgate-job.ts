@@ -1,5 +1,11 @@
 import type { AxisDeviationResult } from "../../shared/schemas/axis-deviations.ts";
-import type { CheckRequest, JobDetails, LoggedMove, Reading } from "../../shared/schemas/job-entries.ts";
+import type {
+  CheckRequest,
+  JobDetails,
+  LoggedMove,
+  Reading,
+  SurveyRequest,
+} from "../../shared/schemas/job-entries.ts";
 import type { ShimMoveResult } from "../../shared/schemas/shim-moves.ts";
 import { setUpCheckIds } from "../../shared/set-up-checks.ts";
 import { fellgateStations, referenceStations } from "./fellgate-machine.ts";
@@ -41,6 +47,36 @@ export const fellgateChecks: readonly CheckRequest[] = setUpCheckIds.map((check)
   by: ENGINEER,
   at: "2026-11-04T06:30:00Z",
 }));
+
+/** The survey when the outage began, under what conditions and with what. */
+export const asFoundSurvey: SurveyRequest = {
+  stage: "as_found",
+  sameSetUp: false,
+  instrument: "gauge-1",
+  conditions: {
+    temperatureUnit: "C",
+    ambient: 19.5,
+    metal: [
+      { place: "casing, turbine end", value: 21.2 },
+      { place: "bearing 1 pedestal", value: 20.8 },
+    ],
+  },
+};
+
+/** The survey after the moves, the line of sight untouched. */
+export const asLeftSurvey: SurveyRequest = {
+  stage: "as_left",
+  sameSetUp: true,
+  instrument: "gauge-1",
+  conditions: {
+    temperatureUnit: "C",
+    ambient: 18.9,
+    metal: [
+      { place: "casing, turbine end", value: 20.4 },
+      { place: "bearing 1 pedestal", value: 20.1 },
+    ],
+  },
+};
 
 /** Every bore as it lay when the outage began, and the first once more at the end. */
 export function asFoundReadings(): Reading[] {

@@ -9,7 +9,10 @@ import { shimMoveKind } from "../calculations/shim-move.ts";
 import type { Deps } from "../deps.ts";
 import { HttpProblem } from "../http/http-problem.ts";
 import type { Caller } from "../services/caller.ts";
-import { storeCalculation } from "../services/store-calculation.ts";
+import { computeAs } from "../services/compute-part.ts";
+import { inTransaction } from "../services/in-transaction.ts";
+import type { ComputedRecord } from "../services/run-calculation.ts";
+import { writeRecords } from "../services/write-records.ts";
 import {
   cutShortRequest,
   deviationRequest,
@@ -21,12 +24,14 @@ import {
 
 /**
  * Stores the records of one invented outage, each call made from the answers before it, as a crew would: a survey cut
- * short and refused, as found, deviations, moves, as left. Does nothing where anything was computed before.
+ * short and refused, as found, deviations, moves, as left. All of them or none: a start that is cut short is completed by
+ * the next. Does nothing where anything was computed before.
  */
 export async function recordOutage(deps: Deps, caller: Caller): Promise<void> {
   const organisationId = caller.organisation.id;
   if (await deps.database.models.calculations.findOne({ where: { organisationId } })) return;
-  const run = runnerOf(deps, caller);
+  const records: ComputedRecord[] = [];
+  const run = runnerOf(deps, caller, records);
   const boreFits = { kind: boreFitKind, response: boreFitResponse, path: "/v1/bore-fits" };
   const axisDeviations = {
     kind: axisDeviationKind,
@@ -46,6 +51,8 @@ export async function recordOutage(deps: Deps, caller: Caller): Promise<void> {
   const asLeft = { centres: leftCentres(before.result, moves.result), seed: 4, withSlips: false };
   const left = await run(boreFits, surveyRequest("Unit 2, as left", asLeft));
   await run(axisDeviations, deviationRequest("Unit 2, as left", left.result.bores));
+  const { database } = deps;
+  await inTransaction(database.sequelize, (transaction) => writeRecords(database, records, transaction));
 }
 
 interface Target<Request, Response> {
@@ -54,12 +61,17 @@ interface Target<Request, Response> {
   readonly path: string;
 }
 
-function runnerOf(deps: Deps, caller: Caller) {
+/** Computes, and keeps the record for later: of an answer as of a refusal. */
+function runnerOf(deps: Deps, caller: Caller, records: ComputedRecord[]) {
   return async <Request extends { readonly note?: string | null | undefined }, Response>(
     { kind, response, path }: Target<Request, Response>,
     body: Request,
-  ): Promise<Response> =>
-    response.parse(await storeCalculation({ deps, caller, requestId: "demo" }, { kind, path }, body));
+  ): Promise<Response> => {
+    const record = await computeAs({ deps, caller, requestId: "demo" }, { kind, path }, body);
+    records.push(record);
+    if ("refusal" in record.told) throw record.told.refusal;
+    return response.parse(record.told.answer);
+  };
 }
 
 /** The demo shows a failed record too; one that did not fail would be a fault of ours. */

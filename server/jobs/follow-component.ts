@@ -67,6 +67,9 @@ export function followComponent(basis: FollowBasis, indication: IndicationReques
     plan: indication.plan,
     component: indication.component,
     at: indication.at,
+    person: indication.person ?? null,
+    indicators: indication.indicators ?? [],
+    sights: indication.sights ?? [],
     units: { offset: machine.units.offset },
     neighbours,
   };

@@ -1,6 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { entry, details, survey, reading, result } from "../../tests/support/job-entries.ts";
-import { readJobLog } from "./job-log.ts";
+import { readJobLog, standingOf } from "./job-log.ts";
 
 describe("readJobLog", () => {
   it("counts of each station the latest reading taken, whatever the order of entry", () => {
@@ -15,6 +15,15 @@ describe("readJobLog", () => {
     const closing = reading("found", "brg-1", "2026-11-04T10:00:00Z", { closing: true }, "closing");
     const [state] = readJobLog([details, survey("found", "as_found"), opening, closing]).surveys;
     expect([...(state?.counting ?? [])].sort()).toEqual(["closing", "opening"]);
+  });
+
+  it("tells a reading that was taken back from one that was read again", () => {
+    const at = (time: string, id: string) => reading("found", "cas-1", `2026-11-04T${time}:00Z`, {}, id);
+    const taken = [at("08:00", "first"), at("09:00", "second"), at("10:00", "third")];
+    const back = entry("withdrawal", { entry: "third", reason: "Wrong bore." });
+    const [state] = readJobLog([details, survey("found", "as_found"), ...taken, back]).surveys;
+    const standings = taken.map(({ id }) => state && standingOf(state, id));
+    expect(standings).toEqual(["superseded", "in_use", "withdrawn"]);
   });
 
   it("falls back to the reading before when the latest is withdrawn, and calls the result outdated", () => {

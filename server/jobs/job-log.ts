@@ -1,5 +1,3 @@
-import type { z } from "zod";
-import type { offsetPair } from "../../shared/schemas/common.ts";
 import type {
   AxisAcceptanceRequest,
   CheckRequest,
@@ -9,6 +7,7 @@ import type {
   Reading,
   SurveyRequest,
 } from "../../shared/schemas/job-entries.ts";
+import type { StoredReading, SurveyDrift } from "../../shared/schemas/job-surveys.ts";
 
 /** The file that a reading was taken from. */
 export interface SourceFile {
@@ -35,13 +34,28 @@ export interface EntryDocuments {
     readonly engineVersion: string;
     /** Ids of the readings it was computed from. */
     readonly readings: readonly string[];
-    readonly drift: ({ readonly station: string } & z.infer<typeof offsetPair>) | null;
+    readonly drift: SurveyDrift | null;
   };
-  readonly plan: { readonly survey: string; readonly calculation: string };
+  readonly plan: {
+    readonly survey: string;
+    /** Id of the entry with the survey's result that it was made from. */
+    readonly surveyResult: string;
+    readonly calculation: string;
+  };
   readonly move: LoggedMove;
-  readonly confirmation: { readonly before: string; readonly after: string; readonly calculation: string };
+  readonly confirmation: {
+    readonly before: string;
+    readonly after: string;
+    /** Ids of the entries with the surveys' results that were compared. */
+    readonly beforeResult: string;
+    readonly afterResult: string;
+    readonly calculation: string;
+  };
   readonly concession: ConcessionRequest;
-  readonly axis_acceptance: AxisAcceptanceRequest;
+  readonly axis_acceptance: AxisAcceptanceRequest & {
+    /** Id of the entry with the survey's result whose axis was accepted. */
+    readonly surveyResult: string;
+  };
   readonly comment: { readonly text: string };
   readonly attachment: {
     /** Id of the stored file. */
@@ -83,7 +97,12 @@ export interface SurveyState {
   readonly readings: readonly JobEntry<"reading">[];
   /** Ids of the readings that count: of each station the latest taken, and the closing one. */
   readonly counting: ReadonlySet<string>;
+  /** Ids of the readings that were taken back. */
+  readonly withdrawn: ReadonlySet<string>;
+  /** The newest of `results`. */
   readonly result: JobEntry<"survey_result"> | null;
+  /** In the order in which they were computed. */
+  readonly results: readonly JobEntry<"survey_result">[];
   /** Whether the result was computed from the readings that count now. */
   readonly isCurrent: boolean;
 }
@@ -123,7 +142,7 @@ export function readJobLog(entries: readonly JobEntry[]): JobState {
         entry,
         readings.filter(({ document }) => document.survey === entry.id),
         withdrawn,
-        results.filter(({ document }) => document.survey === entry.id).at(-1) ?? null,
+        results.filter(({ document }) => document.survey === entry.id),
       ),
     ),
     plans: standing("plan"),
@@ -145,7 +164,7 @@ function surveyState(
   entry: JobEntry<"survey">,
   readings: readonly JobEntry<"reading">[],
   withdrawn: ReadonlySet<string>,
-  result: JobEntry<"survey_result"> | null,
+  results: readonly JobEntry<"survey_result">[],
 ): SurveyState {
   const latest = new Map<string, JobEntry<"reading">>();
   for (const reading of readings) {
@@ -157,10 +176,47 @@ function surveyState(
       latest.set(place, reading);
   }
   const counting = new Set([...latest.values()].map(({ id }) => id));
+  const result = results.at(-1) ?? null;
   const computed = result?.document.readings ?? [];
   const isCurrent =
     result !== null && computed.length === counting.size && computed.every((id) => counting.has(id));
-  return { entry, readings, counting, result, isCurrent };
+  const own = new Set(readings.filter(({ id }) => withdrawn.has(id)).map(({ id }) => id));
+  return { entry, readings, counting, withdrawn: own, result, results, isCurrent };
+}
+
+/** Why a reading counts or does not. */
+export function standingOf(
+  { counting, withdrawn }: Pick<SurveyState, "counting" | "withdrawn">,
+  reading: string,
+): StoredReading["standing"] {
+  if (counting.has(reading)) return "in_use";
+  return withdrawn.has(reading) ? "withdrawn" : "superseded";
+}
+
+/** A result of any survey, the newest or an earlier one, by the id of its entry. */
+export function resultOf(
+  { surveys }: Pick<JobState, "surveys">,
+  id: string,
+): JobEntry<"survey_result"> | null {
+  return surveys.flatMap(({ results }) => results).find((entry) => entry.id === id) ?? null;
+}
+
+/** Whether a survey's newest result is this one, of the readings that count now. */
+export function isNewestResult(
+  { surveys }: Pick<JobState, "surveys">,
+  survey: string,
+  result: string,
+): boolean {
+  const state = surveys.find(({ entry }) => entry.id === survey);
+  return state?.result?.id === result && state.isCurrent;
+}
+
+/** Whether a confirmation compared what its surveys say now. */
+export function isOfNewestResults(
+  state: Pick<JobState, "surveys">,
+  { document: { before, beforeResult, after, afterResult } }: JobEntry<"confirmation">,
+): boolean {
+  return isNewestResult(state, before, beforeResult) && isNewestResult(state, after, afterResult);
 }
 
 /** The readings that count, opening ones first, each in the order in which they were taken. */

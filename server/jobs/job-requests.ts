@@ -19,8 +19,20 @@ export function axisStations({ machine, details }: JobBasis): readonly string[] 
   return axisOf({ machine, details }).through ?? [];
 }
 
-/** The id under which a closing reading is fitted, beside the opening one of the same station. */
-export const closingId = (station: string): string => `closing ${station}`.slice(0, limits.idLength);
+/**
+ * The id under which a closing reading is fitted, beside the opening one of the same station: no station's own, and no
+ * longer than an id may be.
+ */
+export function closingId({ stations }: Pick<MachineDocument, "stations">, station: string): string {
+  const taken = new Set(stations.flatMap(({ id }) => [id, `closing ${id}`]));
+  const plain = `closing ${station}`;
+  if (plain.length <= limits.idLength && !stations.some(({ id }) => id === plain)) return plain;
+  const place = stations.findIndex(({ id }) => id === station);
+  for (let mark = "#"; ; mark += "#") {
+    const id = `closing ${mark}${place}`;
+    if (!taken.has(id)) return id;
+  }
+}
 
 /** One reading as a bore of POST /v1/bore-fits. */
 export function boreOf({ machine }: JobBasis, reading: Reading): BoreRequest {
@@ -33,7 +45,7 @@ export function boreOf({ machine }: JobBasis, reading: Reading): BoreRequest {
     closing,
     ...read
   } = reading;
-  const id = closing ? closingId(station) : station;
+  const id = closing ? closingId(machine, station) : station;
   if (read.form !== "turned_gauge") return { ...read, id };
   const drawn = machine.stations.find((one) => one.id === station)?.nominalDiameter;
   // 0 is no diameter: the engine's own schema refuses it and says what is missing.

@@ -1,7 +1,8 @@
 import { isDeepStrictEqual } from "node:util";
 import type { ConfirmationRequest } from "../../shared/schemas/confirmations.ts";
 import type { ConfirmationResult } from "../../shared/schemas/confirmation-answers.ts";
-import type { JobRecord, JobSurvey } from "../../shared/schemas/jobs.ts";
+import type { JobRecord } from "../../shared/schemas/jobs.ts";
+import type { JobSurvey } from "../../shared/schemas/job-surveys.ts";
 import type { MachineHistory } from "../../shared/schemas/machine-history.ts";
 import type { MachineDocument } from "../../shared/schemas/machines.ts";
 import { convertLength } from "../../shared/figures/write-number.ts";

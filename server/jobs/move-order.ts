@@ -1,4 +1,4 @@
-import type { JobFlag } from "../../shared/schemas/jobs.ts";
+import type { JobFlag } from "../../shared/schemas/job-surveys.ts";
 import type { LoggedMove } from "../../shared/schemas/job-entries.ts";
 import type { MachineDocument } from "../../shared/schemas/machines.ts";
 import type { ShimMoveResult } from "../../shared/schemas/shim-moves.ts";

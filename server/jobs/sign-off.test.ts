@@ -2,6 +2,7 @@ import { describe, expect, it } from "vitest";
 import {
   machine,
   entry,
+  result,
   details,
   reading,
   move,
@@ -34,6 +35,9 @@ const obstacles = (entries: JobEntry[], of = results()) =>
     code,
     station,
   ]);
+
+const accepted = (survey: string, surveyResult = `result-${survey}`) =>
+  entry("axis_acceptance", { survey, surveyResult, name: "Ines Alder", reason: "Moved on purpose." });
 
 describe("signOffObstacles", () => {
   it("lets a machine that was found conforming be signed without a move", () => {
@@ -93,25 +97,33 @@ describe("signOffObstacles", () => {
     const done = [...found(), move("casing", "2026-11-06T08:00:00Z"), ...left(), confirmed()];
     expect(obstacles(done, results({}, false))).toEqual([["reference_does_not_repeat", null]]);
     expect(obstacles(done, results({}, null))).toEqual([["reference_repeat_unknown", null]]);
-    const accepted = entry("axis_acceptance", { survey: "left", name: "Ines Alder", reason: "New set-up." });
-    expect(obstacles([...done, accepted], results({}, false))).toEqual([]);
+    expect(obstacles([...done, accepted("left")], results({}, false))).toEqual([]);
+  });
+
+  it("takes no confirmation of a survey that was computed again since", () => {
+    const done = [...found(), move("casing", "2026-11-06T08:00:00Z"), ...left(), confirmed()];
+    expect(obstacles(done)).toEqual([]);
+    for (const survey of ["found", "left"]) {
+      const readings = stations.map((station) => `${survey}-${station}`);
+      const again = { ...result(survey, readings), id: `again-${survey}` };
+      expect(obstacles([...done, again])).toEqual([["not_confirmed", null]]);
+    }
   });
 
   it("asks for the new axis by name where a reference station itself was moved, repeating or not", () => {
     const done = [...found(), move("bearing-1", "2026-11-06T08:00:00Z"), ...left(), confirmed()];
     expect(obstacles(done)).toEqual([["axis_not_accepted", null]]);
-    const wrong = entry("axis_acceptance", {
-      survey: "found",
-      name: "Ines Alder",
-      reason: "Moved on purpose.",
-    });
-    expect(obstacles([...done, wrong])).toEqual([["axis_not_accepted", null]]);
-    const right = entry("axis_acceptance", {
-      survey: "left",
-      name: "Ines Alder",
-      reason: "Moved on purpose.",
-    });
-    expect(obstacles([...done, right])).toEqual([]);
+    expect(obstacles([...done, accepted("found")])).toEqual([["axis_not_accepted", null]]);
+    expect(obstacles([...done, accepted("left")])).toEqual([]);
+    const again = {
+      ...result(
+        "left",
+        stations.map((station) => `left-${station}`),
+      ),
+      id: "again",
+    };
+    expect(obstacles([...done, accepted("left"), again])).toEqual([["axis_not_accepted", null]]);
+    expect(obstacles([...done, accepted("left"), again, accepted("left", "again")])).toEqual([]);
   });
 
   it("asks for a part that was begun to be finished", () => {

@@ -1,9 +1,16 @@
 import type { AxisDeviationResult } from "../../shared/schemas/axis-deviations.ts";
 import type { ConfirmationResult } from "../../shared/schemas/confirmation-answers.ts";
-import type { JobFlag } from "../../shared/schemas/jobs.ts";
+import type { JobFlag } from "../../shared/schemas/job-surveys.ts";
 import type { MachineDocument } from "../../shared/schemas/machines.ts";
 import { axisStations } from "./job-requests.ts";
-import { countingReadings, takenMs, type JobState, type SurveyState } from "./job-log.ts";
+import {
+  countingReadings,
+  isNewestResult,
+  isOfNewestResults,
+  takenMs,
+  type JobState,
+  type SurveyState,
+} from "./job-log.ts";
 import { stationsMovedBy } from "./move-order.ts";
 import { flag } from "./survey-flags.ts";
 
@@ -83,19 +90,24 @@ function referenceObstacles(
         ],
   );
   if (reference.length === 0) return obstacles;
-  if (axisAcceptances.some(({ document }) => document.survey === last.entry.id)) return obstacles;
+  const accepted = axisAcceptances.filter(({ document }) => document.survey === last.entry.id);
+  if (accepted.some(({ document }) => isNewestResult(state, document.survey, document.surveyResult)))
+    return obstacles;
   const moved = new Set(moves.flatMap(({ document }) => stationsMovedBy(machine, document.component)));
   const movedReference = reference.filter((station) => moved.has(station));
   if (movedReference.length > 0) {
-    const detail = `${movedReference.join(", ")} set the axis and was moved: the new axis is to be accepted by name.`;
+    const again = accepted.length > 0 ? ", again since the survey was computed again" : "";
+    const detail = `${movedReference.join(", ")} set the axis and was moved: the new axis is to be accepted by name${again}.`;
     return [...obstacles, flag("axis_not_accepted", detail)];
   }
-  const confirmation = confirmations.filter(({ document }) => document.after === last.entry.id).at(-1);
+  const ofLast = confirmations.filter(({ document }) => document.after === last.entry.id);
+  const confirmation = ofLast.filter((entry) => isOfNewestResults(state, entry)).at(-1);
   if (!confirmation) {
-    return [
-      ...obstacles,
-      flag("not_confirmed", "The last survey has not been confirmed against an earlier one."),
-    ];
+    const detail =
+      ofLast.length > 0
+        ? "The last survey, or the one before, was computed again since they were compared: confirm again."
+        : "The last survey has not been confirmed against an earlier one.";
+    return [...obstacles, flag("not_confirmed", detail)];
   }
   const repeats = confirmationOf(confirmation.document.calculation)?.reference.repeats ?? null;
   if (repeats === true) return obstacles;

@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { entry, details, survey, reading } from "../../tests/support/job-entries.ts";
+import { entry, details, survey, reading, result } from "../../tests/support/job-entries.ts";
 import { setUpCheckIds } from "../../shared/set-up-checks.ts";
 import { readJobLog, type JobEntry } from "./job-log.ts";
 import { surveyFlags } from "./survey-flags.ts";
@@ -41,6 +41,21 @@ describe("surveyFlags", () => {
     expect(flagsOf(all)).toEqual(["closing_reading_missing"]);
     const other = reading("found", "cas-1", "2026-11-04T10:00:00Z", { closing: true });
     expect(flagsOf([...all, other])).toEqual(["closing_reading_missing"]);
+  });
+
+  it("marks a survey that drifted farther than both readings explain, and says at which level", () => {
+    const judged = (exceeds: boolean | null) => {
+      const computed = result("found", []);
+      const drift = { station: "brg-1", h: 0.05, v: 0, uncertainty: 0.03, level: 0.95, exceeds };
+      const drifted = { ...computed, document: { ...computed.document, drift, readings: counting } };
+      const entries = [...checks("yes", "2026-11-04T07:00:00Z"), ...two, closing, drifted];
+      const state = readJobLog([details, ...entries]);
+      return state.surveys.flatMap((one) => surveyFlags(state, one));
+    };
+    const counting = [...two.slice(1), closing].map(({ id }) => id);
+    expect(judged(true).map(({ code, station }) => [code, station])).toEqual([["survey_drifted", "brg-1"]]);
+    expect(judged(true)[0]?.detail).toContain("(95 %)");
+    expect([judged(false), judged(null)]).toEqual([[], []]);
   });
 
   it("marks readings with the upper half off and an instrument past its calibration", () => {

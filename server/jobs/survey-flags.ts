@@ -1,4 +1,4 @@
-import type { JobFlag } from "../../shared/schemas/jobs.ts";
+import type { JobFlag } from "../../shared/schemas/job-surveys.ts";
 import { setUpChecks } from "../../shared/set-up-checks.ts";
 import { countingReadings, takenMs, type JobEntry, type JobState, type SurveyState } from "./job-log.ts";
 
@@ -15,6 +15,7 @@ export function surveyFlags(state: JobState, survey: SurveyState): JobFlag[] {
   return [
     ...checkFlags(state, Math.min(...opening.map(takenMs))),
     ...closingFlags(opening, closing),
+    ...driftFlags(survey),
     ...opening.flatMap(readingFlags),
     ...instrumentFlags(state, survey, opening),
     ...(survey.result && !survey.isCurrent
@@ -60,6 +61,14 @@ function closingFlags(
       station,
     ),
   ];
+}
+
+function driftFlags({ result }: SurveyState): JobFlag[] {
+  const drift = result?.document.drift;
+  if (!drift?.exceeds) return [];
+  const percent = Number((100 * drift.level).toPrecision(6));
+  const detail = `${drift.station} was read elsewhere at the end than at the beginning, farther than both readings' uncertainty (${percent} %) explains: find the cause and repeat the survey.`;
+  return [flag("survey_drifted", detail, drift.station)];
 }
 
 function readingFlags({ document: { reading } }: JobEntry<"reading">): JobFlag[] {

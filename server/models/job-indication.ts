@@ -7,7 +7,7 @@ import {
 } from "sequelize";
 import { columns } from "./columns.ts";
 
-/** What was read at one moment of a move, and what was answered. Ids are UUIDv7: they stand in the order of arrival. */
+/** What was read at one moment of a move, and what was answered. */
 export class JobIndication extends Model<
   InferAttributes<JobIndication>,
   InferCreationAttributes<JobIndication>
@@ -20,6 +20,8 @@ export class JobIndication extends Model<
   declare createdAt: Date;
   declare memberId: string | null;
   declare keyId: string | null;
+  /** Its number among the job's events. */
+  declare event: number;
 }
 
 export function defineJobIndication(sequelize: Sequelize): typeof JobIndication {
@@ -33,6 +35,7 @@ export function defineJobIndication(sequelize: Sequelize): typeof JobIndication 
       createdAt: columns.time(),
       memberId: columns.optionalReference(),
       keyId: columns.optionalReference(),
+      event: { type: DataTypes.INTEGER, allowNull: false },
     },
     { sequelize, tableName: "job_indications", modelName: "jobIndication" },
   );

@@ -20,6 +20,8 @@ export class Job extends Model<InferAttributes<Job>, InferCreationAttributes<Job
   declare signedAt: CreationOptional<Date | null>;
   declare createdAt: Date;
   declare version: CreationOptional<number>;
+  /** How many events it has had: entries and indications, numbered from 1. */
+  declare events: CreationOptional<number>;
 }
 
 export function defineJob(sequelize: Sequelize): typeof Job {
@@ -35,6 +37,7 @@ export function defineJob(sequelize: Sequelize): typeof Job {
       signedAt: columns.optionalTime(),
       createdAt: columns.time(),
       version: columns.version(),
+      events: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
     },
     { sequelize, tableName: "jobs", modelName: "job" },
   );

@@ -1,7 +1,8 @@
 import type { JobLog } from "../../shared/schemas/job-log.ts";
 import { presentAuthor } from "../services/author.ts";
 import type { CallerNames } from "../services/caller-names.ts";
-import type { LoadedJob, StoredResults } from "../services/job-store.ts";
+import type { StoredResults } from "../services/job-results.ts";
+import type { LoadedJob } from "../services/job-store.ts";
 import { hashedRecord, hashOf } from "../services/sign-job.ts";
 import { isoTime } from "./time.ts";
 

@@ -1,15 +1,26 @@
 import { cautions } from "../../shared/cautions.ts";
-import type { JobRecord, JobSummary, JobSurvey, SurveyResult } from "../../shared/schemas/jobs.ts";
+import type { JobRecord, JobSummary } from "../../shared/schemas/jobs.ts";
+import type { JobSurvey, SurveyResult } from "../../shared/schemas/job-surveys.ts";
 import { setUpChecks } from "../../shared/set-up-checks.ts";
 import { axisStations } from "../jobs/job-requests.ts";
-import type { JobEntry, JobEntryKind, JobState, SurveyState } from "../jobs/job-log.ts";
+import {
+  isNewestResult,
+  isOfNewestResults,
+  resultOf,
+  standingOf,
+  type JobEntry,
+  type JobEntryKind,
+  type JobState,
+  type SurveyState,
+} from "../jobs/job-log.ts";
 import { moveEffectFlags, moveOrderFlags } from "../jobs/move-order.ts";
 import { signOffObstacles } from "../jobs/sign-off.ts";
 import { surveyFlags } from "../jobs/survey-flags.ts";
 import type { Job } from "../models/job.ts";
 import { presentAuthor } from "../services/author.ts";
 import type { CallerNames } from "../services/caller-names.ts";
-import type { LoadedJob, StoredResults } from "../services/job-store.ts";
+import type { StoredResults } from "../services/job-results.ts";
+import type { LoadedJob } from "../services/job-store.ts";
 import { isoTime, isoTimeOrNull } from "./time.ts";
 
 export function presentJobSummary(row: Job & { machine?: { name: string } }): JobSummary {
@@ -60,17 +71,19 @@ export function presentJob({ loaded, results, names, revisions }: JobParts): Job
     details: state.details,
     checks: setUpChecks.map(({ id, text }) => presentCheck(id, text, state, names)),
     surveys,
-    plans: state.plans.flatMap((entry) => {
-      const result = results.moves(entry.document.calculation);
-      return result ? [{ ...head(entry), ...entry.document, result }] : [];
-    }),
+    plans: presentPlans(state, results, head),
     moves,
     confirmations: state.confirmations.flatMap((entry) => {
       const result = results.confirmation(entry.document.calculation);
-      return result ? [{ ...head(entry), ...entry.document, result }] : [];
+      const current = isOfNewestResults(state, entry);
+      return result ? [{ ...head(entry), ...entry.document, current, result }] : [];
     }),
     concessions: state.concessions.map((entry) => ({ ...head(entry), ...entry.document })),
-    axisAcceptances: state.axisAcceptances.map((entry) => ({ ...head(entry), ...entry.document })),
+    axisAcceptances: state.axisAcceptances.map((entry) => ({
+      ...head(entry),
+      ...entry.document,
+      current: isNewestResult(state, entry.document.survey, entry.document.surveyResult),
+    })),
     comments: state.comments.map((entry) => ({ ...head(entry), ...entry.document })),
     attachments: state.attachments.map((entry) => ({ ...head(entry), ...entry.document })),
     flags: [...surveys.flatMap(({ flags }) => flags), ...moves.flatMap(({ flags }) => flags)],
@@ -122,6 +135,7 @@ function presentSurvey(state: JobState, survey: SurveyState, results: StoredResu
       ...head(entry),
       reading: entry.document.reading,
       counts: survey.counting.has(entry.id),
+      standing: standingOf(survey, entry.id),
       sourceFile: entry.document.sourceFile,
     })),
     result: presentResult(survey, results, head),
@@ -145,6 +159,29 @@ function presentResult(survey: SurveyState, results: StoredResults, head: Head):
     summary: deviations.summary,
     drift,
   };
+}
+
+/** Each beside the survey result that it was made from, whatever that survey's newest one says. */
+function presentPlans(state: JobState, results: StoredResults, head: Head): JobRecord["plans"] {
+  return state.plans.flatMap((entry) => {
+    const { survey, surveyResult, calculation } = entry.document;
+    const basis = resultOf(state, surveyResult);
+    const deviations = basis && results.deviations(basis.document.axisDeviation);
+    const result = results.moves(calculation);
+    if (!deviations || !result) return [];
+    return [
+      {
+        ...head(entry),
+        ...entry.document,
+        current: isNewestResult(state, survey, surveyResult),
+        from: {
+          reference: deviations.axis.through,
+          stations: deviations.stations.map(({ id, z, deviation }) => ({ id, z, deviation })),
+        },
+        result,
+      },
+    ];
+  });
 }
 
 function presentMoves({ machine, state }: LoadedJob, results: StoredResults, head: Head): JobRecord["moves"] {

@@ -3,9 +3,10 @@ import { addedEntries } from "../../shared/schemas/jobs.ts";
 import { byOf } from "../http/call-parts.ts";
 import { versionTag } from "../http/entity-tag.ts";
 import { problemOfFaults } from "../http/http-problem.ts";
-import type { Call, Reply } from "../http/operation.ts";
+import { callerOf, type Call, type Reply } from "../http/operation.ts";
 import { changeOnce } from "../services/change-once.ts";
-import type { Added, LoadedJob, NewEntry } from "../services/job-store.ts";
+import { addComputed, type ComputedEntry } from "../services/job-computations.ts";
+import { loadJob, type Added, type LoadedJob, type NewEntry } from "../services/job-store.ts";
 import { addToJob } from "../services/jobs.ts";
 
 /** What every operation that adds to a job's log answers. */
@@ -21,6 +22,16 @@ export function addOne(
   return change(call, (transaction) =>
     addToJob(call.deps, transaction, call.params.id ?? "", byOf(call), entriesOf),
   );
+}
+
+/** Computes from the job as it stands, then stores the calculations and the entry that names them in one transaction. */
+export async function addComputedEntry(
+  call: ChangeCall,
+  compute: (loaded: LoadedJob) => Promise<ComputedEntry>,
+): Promise<Reply> {
+  const id = call.params.id ?? "";
+  const computed = await compute(await loadJob(call.deps, callerOf(call).organisation.id, id));
+  return change(call, (transaction) => addComputed(call.deps, transaction, id, byOf(call), computed));
 }
 
 export function change(call: ChangeCall, work: (transaction: Transaction) => Promise<Added>): Promise<Reply> {

@@ -4,7 +4,7 @@ import { byOf } from "../http/call-parts.ts";
 import { HttpProblem, problemOfFaults } from "../http/http-problem.ts";
 import { callerOf, defineOperation, reply } from "../http/operation.ts";
 import { attachmentTypeOf, attachmentTypes } from "../jobs/attachment-kind.ts";
-import { appendEntries, loadJob } from "../services/job-store.ts";
+import { appendEntries, loadJob, refuseSigned } from "../services/job-store.ts";
 import { readStoredFile, storeFile } from "../services/stored-files.ts";
 import { added, change } from "./add-to-job.ts";
 
@@ -42,12 +42,15 @@ const addAttachment = defineOperation({
     }
     return change(call, async (transaction) => {
       const loaded = await loadJob(deps, organisationId, call.params.id ?? "", { transaction });
-      if (loaded.state.attachments.length >= limits.attachmentsPerJob) {
-        const detail = `A job takes ${limits.attachmentsPerJob} attachments.`;
+      refuseSigned(loaded.row);
+      // Those taken back count: their files are kept.
+      const sent = loaded.entries.filter(({ kind }) => kind === "attachment");
+      if (sent.length >= limits.attachmentsPerJob) {
+        const detail = `A job takes ${limits.attachmentsPerJob} attachments, those taken back included.`;
         throw problemOfFaults([{ pointer: "", code: "too_many_items", detail }]);
       }
-      const sent = { name: query.name, mediaType, content: bytes };
-      const file = await storeFile(deps, transaction, organisationId, sent);
+      const content = { name: query.name, mediaType, content: bytes };
+      const file = await storeFile(deps, transaction, organisationId, content);
       const document = {
         file: file.id,
         name: query.name,

@@ -8,7 +8,7 @@ import {
 import { unknownReference } from "../calculations/common-faults.ts";
 import { byOf } from "../http/call-parts.ts";
 import { defineOperation } from "../http/operation.ts";
-import { surveyOf } from "../services/job-computations.ts";
+import { computedSurvey } from "../services/find-survey.ts";
 import { withdrawEntry } from "../services/jobs.ts";
 import { added, addOne, change, refuse } from "./add-to-job.ts";
 
@@ -50,7 +50,8 @@ const acceptAxis = defineOperation({
   path: "/v1/jobs/{id}/axis-acceptances",
   tag,
   summary: "Accept a new axis by name",
-  description: "Where a reference station was itself moved, or could not be shown to have stayed.",
+  description:
+    "Where a reference station was itself moved, or could not be shown to have stayed. It holds for the axis as the survey's newest result has it: a survey computed again is accepted again.",
   body: axisAcceptanceRequest,
   requestExamples: () => ({
     accept: {
@@ -66,8 +67,8 @@ const acceptAxis = defineOperation({
   errors: ["job_signed", "survey_not_computed"],
   handle: (call) =>
     addOne(call, ({ state }) => {
-      surveyOf(state.surveys, call.body.survey);
-      return [{ kind: "axis_acceptance", document: call.body }];
+      const { result } = computedSurvey(state.surveys, call.body.survey);
+      return [{ kind: "axis_acceptance", document: { ...call.body, surveyResult: result.id } }];
     }),
 });
 

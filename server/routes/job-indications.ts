@@ -1,15 +1,17 @@
 import { once } from "node:events";
 import { finished } from "node:stream/promises";
-import type { Response } from "express";
+import type { Request, Response } from "express";
 import { z } from "zod";
 import { indicationAnswer, indicationRequest } from "../../shared/schemas/indications.ts";
 import { byOf } from "../http/call-parts.ts";
 import { HttpProblem, problemBody } from "../http/http-problem.ts";
-import { callerOf, defineOperation, reply } from "../http/operation.ts";
+import { callerOf, defineOperation, type Call } from "../http/operation.ts";
 import { readLines } from "../http/read-lines.ts";
 import { checkText } from "../middleware/validate.ts";
 import { credentialOf } from "../services/caller.ts";
+import { changeOnce } from "../services/change-once.ts";
 import { JobFollower } from "../services/follow-job.ts";
+import { inTransaction } from "../services/in-transaction.ts";
 import { loadJob, refuseSigned } from "../services/job-store.ts";
 import { takeWatcherPlace, watchJob } from "../services/watch-job.ts";
 
@@ -41,7 +43,10 @@ const addIndication = defineOperation({
   errors: ["job_signed", "unknown_reference", "too_few_items"],
   handle: async (call) => {
     const follower = new JobFollower(call.deps, call.params.id ?? "", byOf(call));
-    return reply(201, await follower.follow(call.body));
+    const judged = await follower.judge(call.body);
+    return changeOnce(call.deps, call, 201, async (transaction) => ({
+      body: await follower.keep(transaction, judged),
+    }));
   },
 });
 
@@ -74,9 +79,11 @@ const streamIndications = defineOperation({
         const { write, isOpen } = sinkOf(response);
         response.flushHeaders();
         let lines = 0;
+        const stillAllowed = credentialCheck(call);
         try {
           for await (const line of readLines(call.request)) {
             lines += 1;
+            await stillAllowed();
             await write(`${JSON.stringify(await answerLine(follower, line, call))}\n`);
             if (!isOpen()) return;
           }
@@ -97,17 +104,16 @@ const watchJobOperation = defineOperation({
   tag,
   summary: "Watch a job",
   description:
-    "Server-sent events: `indication` with what was answered to it, `entry` for what was added to the log, `end` with its reason before the service ends the stream. Ids rise; Last-Event-ID goes on where a stream was cut, without it the stream begins now.",
+    "Server-sent events: `indication` with what was answered to it, `entry` for what was added to the log, `end` with its reason before the service ends the stream. Ids are the numbers of the job's events, from 1 and without a gap, in the order in which they were kept; Last-Event-ID goes on where a stream was cut (0: from the first), without it the stream begins now.",
   response: { status: 200, description: "The events.", mediaType: "text/event-stream", schema: z.string() },
   errors: ["rate_limited"],
   handle: async (call) => {
     const { deps, request } = call;
     const caller = callerOf(call);
     const { row } = await loadJob(deps, caller.organisation.id, call.params.id ?? "");
-    const last = z.uuid().safeParse(request.get("Last-Event-ID")).data ?? deps.newId();
-    const bearer = (request.get("Authorization") ?? "").replace(/^Bearer +/i, "");
+    const last = Math.min(lastEventOf(request) ?? row.events, row.events);
     const stillAllowed = () =>
-      deps.credentials.callerOf(bearer).then(
+      deps.credentials.callerOf(bearerOf(request)).then(
         () => true,
         () => false,
       );
@@ -129,6 +135,27 @@ const watchJobOperation = defineOperation({
   },
 });
 
+const bearerOf = (request: Request): string => (request.get("Authorization") ?? "").replace(/^Bearer +/i, "");
+
+/** The number that a reader has got to; null where it names none. */
+function lastEventOf(request: Request): number | null {
+  const sent = request.get("Last-Event-ID") ?? "";
+  return /^\d{1,10}$/.test(sent) ? Number(sent) : null;
+}
+
+/** How long a stream of indications may go on between two looks at its credential. */
+const CREDENTIAL_CHECK_MS = 3_000;
+
+/** @throws HttpProblem as an operation would for a credential that is no longer good, a few seconds after it ended */
+function credentialCheck({ deps, request }: Pick<Call, "deps" | "request">): () => Promise<void> {
+  let checkedAt = performance.now();
+  return async () => {
+    if (performance.now() - checkedAt < CREDENTIAL_CHECK_MS) return;
+    await deps.credentials.callerOf(bearerOf(request));
+    checkedAt = performance.now();
+  };
+}
+
 /** A response as a place to write to, that holds the writer back while the reader is slow. */
 function sinkOf(response: Response) {
   const isOpen = () => !response.destroyed && !response.writableEnded;
@@ -149,10 +176,11 @@ function sinkOf(response: Response) {
 async function answerLine(
   follower: JobFollower,
   line: string,
-  { requestId, path }: { readonly requestId: string; readonly path: string },
+  { deps, requestId, path }: Pick<Call, "deps" | "requestId" | "path">,
 ): Promise<object> {
   try {
-    return await follower.follow(checkText({ body: indicationRequest }, line).body);
+    const judged = await follower.judge(checkText({ body: indicationRequest }, line).body);
+    return await inTransaction(deps.database.sequelize, (transaction) => follower.keep(transaction, judged));
   } catch (error) {
     if (error instanceof HttpProblem && error.status < 500) return problemBody(error, requestId, path);
     throw error;

@@ -3,7 +3,7 @@ import { byOf } from "../http/call-parts.ts";
 import { defineOperation } from "../http/operation.ts";
 import { confirmSurveys, planMoves } from "../services/job-computations.ts";
 import { logMove } from "../services/jobs.ts";
-import { added, addOne, change } from "./add-to-job.ts";
+import { addComputedEntry, added, change } from "./add-to-job.ts";
 
 const tag = "Jobs";
 const EXAMPLE_SURVEY = "0193a5e0-7c00-7000-8000-000000000003";
@@ -21,10 +21,7 @@ const planJobMoves = defineOperation({
   }),
   response: added("The plan, in the log; GET /v1/jobs/{id} shows it."),
   errors: ["job_signed", "survey_not_computed", "too_few_items", "too_many_choices"],
-  handle: async (call) => {
-    const entry = await planMoves(call.deps, call.params.id ?? "", call.body, byOf(call));
-    return addOne(call, () => [entry]);
-  },
+  handle: (call) => addComputedEntry(call, (loaded) => planMoves(call.deps, loaded, call.body, byOf(call))),
 });
 
 const logMoveOperation = defineOperation({
@@ -73,10 +70,8 @@ const confirmJob = defineOperation({
   }),
   response: added("The confirmation, in the log; GET /v1/jobs/{id} shows it."),
   errors: ["job_signed", "survey_not_computed", "combination_invalid"],
-  handle: async (call) => {
-    const entry = await confirmSurveys(call.deps, call.params.id ?? "", call.body, byOf(call));
-    return addOne(call, () => [entry]);
-  },
+  handle: (call) =>
+    addComputedEntry(call, (loaded) => confirmSurveys(call.deps, loaded, call.body, byOf(call))),
 });
 
 export const jobMoveOperations = [planJobMoves, logMoveOperation, confirmJob];

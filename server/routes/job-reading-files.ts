@@ -5,10 +5,12 @@ import { byOf } from "../http/call-parts.ts";
 import { versionTag } from "../http/entity-tag.ts";
 import { problemOfFaults } from "../http/http-problem.ts";
 import { callerOf, defineOperation, reply } from "../http/operation.ts";
+import type { EntryDocuments } from "../jobs/job-log.ts";
+import { readingMediaTypes, type ReadingMediaType } from "../jobs/reading-files/read-file.ts";
 import { changeOnce } from "../services/change-once.ts";
-import { surveyOf } from "../services/job-computations.ts";
-import { appendEntries, loadJob, refuseSigned } from "../services/job-store.ts";
-import { previewReadings, readingMediaTypes, type ReadingMediaType } from "../services/read-reading-file.ts";
+import { surveyOf } from "../services/find-survey.ts";
+import { appendEntries, loadJob, refuseSigned, type LoadedJob } from "../services/job-store.ts";
+import { previewReadings } from "../services/read-reading-file.ts";
 import { storeFile } from "../services/stored-files.ts";
 
 const tag = "Jobs";
@@ -54,6 +56,7 @@ const addReadingFile = defineOperation({
   response: { status: 201, description: "The readings, in the log.", schema: addedReadingFile },
   errors: [
     "job_signed",
+    "too_many_items",
     "several_faults",
     "units_missing",
     "unknown_field",
@@ -84,6 +87,8 @@ const addReadingFile = defineOperation({
     }
     return changeOnce(deps, call, 201, async (transaction) => {
       const locked = await loadJob(deps, organisationId, call.params.id ?? "", { transaction });
+      refuseSigned(locked.row);
+      refuseMoreFiles(locked);
       const sent = { name: query.name, mediaType, content: bytes };
       const { id, name, sha256 } = await storeFile(deps, transaction, organisationId, sent);
       const entries = readings.map((reading) => ({
@@ -98,6 +103,19 @@ const addReadingFile = defineOperation({
     });
   },
 });
+
+/** @throws HttpProblem too_many_items: files are kept whole, those of withdrawn readings too */
+function refuseMoreFiles({ entries }: LoadedJob): void {
+  const files = new Set(
+    entries.flatMap(({ kind, document }) => {
+      const source = kind === "reading" ? (document as EntryDocuments["reading"]).sourceFile : null;
+      return source ? [source.id] : [];
+    }),
+  );
+  if (files.size < limits.readingFilesPerJob) return;
+  const detail = `A job takes ${limits.readingFilesPerJob} files of readings.`;
+  throw problemOfFaults([{ pointer: "", code: "too_many_items", detail }]);
+}
 
 /** Nothing else is let through to here. */
 function sentAs(request: Request): ReadingMediaType {

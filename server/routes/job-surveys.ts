@@ -2,9 +2,10 @@ import { addReadingsRequest, checkRequest, surveyRequest } from "../../shared/sc
 import { byOf } from "../http/call-parts.ts";
 import { callerOf, defineOperation } from "../http/operation.ts";
 import { surveyFaults } from "../jobs/job-faults.ts";
-import { checkedReadings, computeSurvey } from "../services/job-computations.ts";
+import { checkedReadings } from "../services/check-readings.ts";
+import { computeSurvey } from "../services/job-computations.ts";
 import { loadJob } from "../services/job-store.ts";
-import { added, addOne, refuse } from "./add-to-job.ts";
+import { addComputedEntry, added, addOne, refuse } from "./add-to-job.ts";
 
 const tag = "Jobs";
 
@@ -110,13 +111,13 @@ const computeSurveyOperation = defineOperation({
   tag,
   summary: "Compute a survey",
   description:
-    "Fits the readings that count and takes the deviations from the job's axis, each kept as a calculation of the job. Again after further readings.",
+    "Fits the readings that count and takes the deviations from the job's axis, each kept as a calculation of the job, in one transaction with the entry that names them. Again after further readings. The first station's closing less its opening reading is judged against the uncertainty of both (`drift`) and flagged, never shared out over the readings by time: common practice is to find the cause and to read again.",
   response: added("The result, in the log; GET /v1/jobs/{id} shows it."),
   errors: ["job_signed", "too_few_items", "unknown_reference", "reference_count", "stations_coincident"],
-  handle: async (call) => {
-    const entry = await computeSurvey(call.deps, call.params.id ?? "", call.params.survey ?? "", byOf(call));
-    return addOne(call, () => [entry]);
-  },
+  handle: (call) =>
+    addComputedEntry(call, (loaded) =>
+      computeSurvey(call.deps, loaded, call.params.survey ?? "", byOf(call)),
+    ),
 });
 
 export const jobSurveyOperations = [answerCheck, addSurvey, addReadings, computeSurveyOperation];

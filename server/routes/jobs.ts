@@ -17,7 +17,8 @@ import { presentJobSummary } from "../presenters/present-job.ts";
 import { presentJobLog } from "../presenters/present-job-log.ts";
 import { readCallerNames } from "../services/caller-names.ts";
 import { changeOnce } from "../services/change-once.ts";
-import { loadJob, loadResults } from "../services/job-store.ts";
+import { loadResults } from "../services/job-results.ts";
+import { loadJob } from "../services/job-store.ts";
 import { createJob, readJobRecord, recordOf, updateJob } from "../services/jobs.ts";
 import { checkSigner, reviseJob, signJob } from "../services/sign-job.ts";
 import { readPage } from "../services/read-page.ts";
@@ -187,7 +188,7 @@ const signJobOperation = defineOperation({
   tag,
   summary: "Sign a job",
   description:
-    "A member signs with the password again. Refused while anything stands in the way (`obstacles`); afterwards the revision changes no more.",
+    "A member signs with the password again; a wrong one is kept in the audit as job.signature_refused. Refused while anything stands in the way (`obstacles`); afterwards the revision changes no more.",
   body: signatureRequest,
   requestExamples: () => ({
     sign: {
@@ -199,8 +200,8 @@ const signJobOperation = defineOperation({
   errors: ["member_required", "password_wrong", "sign_off_blocked", "job_signed"],
   limit: "sign-in",
   handle: async (call) => {
-    await loadJob(call.deps, callerOf(call).organisation.id, call.params.id ?? "");
-    await checkSigner(call.deps, byOf(call), call.body.password);
+    const { row } = await loadJob(call.deps, callerOf(call).organisation.id, call.params.id ?? "");
+    await checkSigner(call.deps, row, byOf(call), call.body.password);
     return changeOnce(call.deps, call, 201, async (transaction) => {
       await signJob(call.deps, transaction, call.params.id ?? "", call.body, byOf(call));
       return changed(call, transaction);

@@ -6,16 +6,16 @@ import {
   machineImportQuery,
   machineTemplateQuery,
 } from "../../shared/schemas/machine-workbooks.ts";
+import type { Deps } from "../deps.ts";
 import { byOf } from "../http/call-parts.ts";
 import { HttpProblem, problemOfFaults } from "../http/http-problem.ts";
 import { callerOf, defineOperation, reply, type Reply } from "../http/operation.ts";
-import { readMachineWorkbook, type ReadMachine } from "../machines/workbook/read-machine-workbook.ts";
+import type { ReadMachine } from "../machines/workbook/read-machine-workbook.ts";
 import { writeMachineTemplate, writeMachineWorkbook } from "../machines/workbook/write-machine-workbook.ts";
 import { presentMachine } from "../presenters/present-machine.ts";
 import { changeOnce } from "../services/change-once.ts";
 import { createMachine, documentOf, findMachine, findRevision } from "../services/machines.ts";
 import { sha256 } from "../services/run-calculation.ts";
-import { UnreadableWorkbook } from "../spreadsheets/unpack.ts";
 
 const tag = "Machines";
 const mediaType = "application/vnd.openxmlformats-officedocument.spreadsheetml.sheet";
@@ -84,7 +84,7 @@ const importMachine = defineOperation({
     "tolerance_invalid",
   ],
   handle: async (call): Promise<Reply> => {
-    const read = await readSent(call.bytes);
+    const read = await readSent(call.deps, call.bytes);
     const preview = {
       document: read.document,
       documentHash: read.document && sha256(canonicalize(read.document) ?? ""),
@@ -102,14 +102,11 @@ const importMachine = defineOperation({
   },
 });
 
-/** @throws HttpProblem for a file that cannot be opened */
-async function readSent(bytes: Buffer): Promise<ReadMachine> {
-  try {
-    return await readMachineWorkbook(bytes);
-  } catch (error) {
-    if (error instanceof UnreadableWorkbook) throw new HttpProblem(error.code, error.detail);
-    throw error;
-  }
+/** @throws HttpProblem for a file that cannot be opened, or takes too long */
+async function readSent({ compute }: Deps, bytes: Buffer): Promise<ReadMachine> {
+  const read = await compute.machine(bytes);
+  if ("unreadable" in read) throw new HttpProblem(read.unreadable.code, read.unreadable.detail);
+  return read;
 }
 
 /** Every fault as one problem, its cell as the pointer: /sheets/Stations/C5. */

@@ -1,11 +1,7 @@
-import { Op, type Transaction } from "sequelize";
-import type { AxisDeviationResult } from "../../shared/schemas/axis-deviations.ts";
-import type { BoreFitResult } from "../../shared/schemas/bore-fits.ts";
-import type { ConfirmationResult } from "../../shared/schemas/confirmation-answers.ts";
+import type { Transaction } from "sequelize";
 import { limits } from "../../shared/limits.ts";
-import type { JobFlag } from "../../shared/schemas/jobs.ts";
+import type { JobFlag } from "../../shared/schemas/job-surveys.ts";
 import type { MachineDocument } from "../../shared/schemas/machines.ts";
-import type { ShimMoveResult } from "../../shared/schemas/shim-moves.ts";
 import type { Deps } from "../deps.ts";
 import { HttpProblem } from "../http/http-problem.ts";
 import {
@@ -20,7 +16,6 @@ import type { JobEntryRow } from "../models/job-entry.ts";
 import { authorColumns, type By } from "./author.ts";
 import { eventOfEntry } from "../webhooks/event-of-entry.ts";
 import { tell } from "../webhooks/events.ts";
-import { timeOfId } from "./ids.ts";
 import { documentOf, findRevision } from "./machines.ts";
 
 /** A job as its log tells it, on the revision of the machine that it started with. */
@@ -33,16 +28,6 @@ export interface LoadedJob {
   readonly rows: readonly JobEntryRow[];
   readonly entries: readonly JobEntry[];
   readonly state: JobState;
-}
-
-/** What the calculations of a job answered, by record id. */
-export interface StoredResults {
-  readonly fits: (id: string) => readonly BoreFitResult[];
-  readonly deviations: (id: string) => AxisDeviationResult | null;
-  readonly moves: (id: string) => ShimMoveResult | null;
-  readonly confirmation: (id: string) => ConfirmationResult | null;
-  /** resultHash of each, in the order asked for. */
-  readonly hashes: readonly { readonly id: string; readonly resultHash: string | null }[];
 }
 
 export interface NewEntry<Kind extends JobEntryKind = JobEntryKind> {
@@ -62,11 +47,10 @@ export async function loadJob(
 ): Promise<LoadedJob> {
   const { models } = deps.database;
   const within = transaction ? { transaction } : {};
-  const row = await models.jobs.findOne({
-    where: { id, organisationId },
-    ...(transaction ? { transaction, lock: transaction.LOCK.UPDATE } : {}),
-  });
-  if (!row) throw new HttpProblem("not_found", "There is no job with this id.");
+  const row = transaction
+    ? await lockJob(deps, transaction, organisationId, id)
+    : await models.jobs.findOne({ where: { id, organisationId } });
+  if (!row) throw noSuchJob();
   const wanted = revision ?? row.revision;
   const rows = await models.jobEntries.findAll({
     where: { jobId: id, organisationId, revision: wanted },
@@ -92,48 +76,23 @@ export async function loadJob(
   };
 }
 
-/** Reads every calculation that a job's state refers to, in one query. */
-export async function loadResults(
-  deps: Deps,
-  { row, state }: Pick<LoadedJob, "row" | "state">,
-  transaction?: Transaction,
-): Promise<StoredResults> {
-  const ids = calculationIds(state);
-  const places = ids.flatMap((id) => {
-    const createdAt = timeOfId(id);
-    return createdAt ? [{ createdAt, id }] : [];
-  });
-  const found =
-    places.length === 0
-      ? []
-      : await deps.database.models.calculations.findAll({
-          where: { organisationId: row.organisationId, [Op.or]: places },
-          attributes: ["createdAt", "id", "answerText", "resultHash"],
-          ...(transaction ? { transaction } : {}),
-        });
-  const resultOf = new Map(
-    found.map(({ id, answerText }) => [id, (JSON.parse(answerText) as { result: unknown }).result]),
-  );
-  const hashOf = new Map(found.map(({ id, resultHash }) => [id, resultHash]));
-  const read = <Result>(id: string) => (resultOf.get(id) ?? null) as Result | null;
-  return {
-    fits: (id) => read<{ bores: BoreFitResult[] }>(id)?.bores ?? [],
-    deviations: (id) => read<AxisDeviationResult>(id),
-    moves: (id) => read<ShimMoveResult>(id),
-    confirmation: (id) => read<ConfirmationResult>(id),
-    hashes: ids.map((id) => ({ id, resultHash: hashOf.get(id) ?? null })),
-  };
+/**
+ * Takes a job's row for this transaction alone: events are numbered, and a signature is set, while it is held.
+ * @throws HttpProblem not_found
+ */
+export async function lockJob(
+  { database }: Pick<Deps, "database">,
+  transaction: Transaction,
+  organisationId: string,
+  id: string,
+): Promise<Job> {
+  const lock = transaction.LOCK.UPDATE;
+  const row = await database.models.jobs.findOne({ where: { id, organisationId }, transaction, lock });
+  if (!row) throw noSuchJob();
+  return row;
 }
 
-function calculationIds(state: JobState): string[] {
-  return [
-    ...state.surveys.flatMap(({ result }) =>
-      result ? [result.document.boreFit, result.document.axisDeviation] : [],
-    ),
-    ...state.plans.map(({ document }) => document.calculation),
-    ...state.confirmations.map(({ document }) => document.calculation),
-  ];
-}
+const noSuchJob = () => new HttpProblem("not_found", "There is no job with this id.");
 
 /** What adding to a log came to. */
 export interface Added {
@@ -154,31 +113,49 @@ export async function appendEntries(
   by: Pick<By, "caller">,
 ): Promise<Added> {
   refuseSigned(row);
+  const texts = added.map(({ document }) => JSON.stringify(document));
+  refuseTooMuch(rows, texts);
   const last = rows.at(-1)?.sequence ?? 0;
-  if (last + added.length > limits.entriesPerJob) {
-    throw new HttpProblem("call_too_large", `A job's log holds ${limits.entriesPerJob} entries.`, {
-      limit: limits.entriesPerJob,
-    });
-  }
   const createdAt = deps.now();
-  const made = added.map(({ kind, document }, index) => ({
+  const firstEvent = row.events + 1;
+  const made = added.map(({ kind }, index) => ({
     jobId: row.id,
     revision: row.revision,
     sequence: last + 1 + index,
     id: deps.newId(),
     organisationId: row.organisationId,
     kind,
-    documentText: JSON.stringify(document),
+    documentText: texts[index] ?? "",
     createdAt,
+    event: firstEvent + index,
     ...authorColumns(by.caller),
   }));
   await deps.database.models.jobEntries.bulkCreate(made, { transaction });
-  await row.update({ version: row.version + 1 }, { transaction });
+  await row.update({ version: row.version + 1, events: row.events + made.length }, { transaction });
   for (const [index, entry] of added.entries()) {
     const event = eventOfEntry(row, made[index]?.id ?? "", entry);
     if (event) await tell(deps, transaction, event);
   }
   return { ids: made.map(({ id }) => id), version: row.version, flags: [] };
+}
+
+/** @throws HttpProblem call_too_large where a log grows past all use: each page of a job reads all of it */
+export function refuseTooMuch(
+  rows: readonly Pick<JobEntryRow, "documentText">[],
+  added: readonly string[],
+): void {
+  const { entriesPerJob, charactersPerJob } = limits;
+  if (rows.length + added.length > entriesPerJob) {
+    throw new HttpProblem("call_too_large", `A job's log holds ${entriesPerJob} entries.`, {
+      limit: entriesPerJob,
+    });
+  }
+  const texts = [...rows.map(({ documentText }) => documentText), ...added];
+  if (texts.reduce((sum, { length }) => sum + length, 0) > charactersPerJob) {
+    throw new HttpProblem("call_too_large", `A job's log holds ${charactersPerJob} characters.`, {
+      limit: charactersPerJob,
+    });
+  }
 }
 
 /** @throws HttpProblem job_signed */

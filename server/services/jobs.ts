@@ -13,16 +13,10 @@ import { presentJob } from "../presenters/present-job.ts";
 import { isoTime } from "../presenters/time.ts";
 import type { By } from "./author.ts";
 import { readCallerNames } from "./caller-names.ts";
-import {
-  appendEntries,
-  loadJob,
-  loadResults,
-  type Added,
-  type LoadedJob,
-  type NewEntry,
-} from "./job-store.ts";
+import { loadResults } from "./job-results.ts";
+import { appendEntries, loadJob, type Added, type LoadedJob, type NewEntry } from "./job-store.ts";
 import { documentOf, findMachine, findRevision, refuseStale } from "./machines.ts";
-import { recordAudit } from "./record-audit.ts";
+import { recordAudit, type AuditAction } from "./record-audit.ts";
 
 /**
  * Starts a job on a machine; it keeps the revision that it starts with.
@@ -232,7 +226,7 @@ function refuseDetails(details: JobDetails, machine: LoadedJob["machine"]): void
 export async function audit(
   deps: Deps,
   transaction: Transaction,
-  action: "job.created" | "job.changed" | "job.signed" | "job.revised" | "job.entry_withdrawn",
+  action: Extract<AuditAction, `job.${string}`>,
   { id, organisationId }: Pick<Job, "id" | "organisationId">,
   by: By,
   details: Record<string, unknown>,

@@ -35,6 +35,11 @@ export async function mailReport(
   const state = record.signature ? "signed" : "draft, not signed";
   const subject = `${oneLine(record.machineName)}: ${oneLine(record.title)}, revision ${record.revision} (${state})`;
   const sender = by.caller.by === "member" ? by.caller.member.name : by.caller.key.name;
+  const files = reports.map(({ fileName, bytes }) => ({
+    name: fileName,
+    bytes: bytes.length,
+    sha256: createHash("sha256").update(bytes).digest("hex"),
+  }));
   const { notTaken } = await sendMail(deps, {
     organisationId,
     to: [...order.to],
@@ -44,6 +49,8 @@ export async function mailReport(
       `Sent by ${oneLine(sender)}, ${oneLine(by.caller.organisation.name)}.`,
       `Job ${record.id}, revision ${record.revision}, ${state}.`,
       "",
+      ...files.map(({ name, sha256 }) => `${name}, sha256 ${sha256}`),
+      "",
       ...cautions.map(({ text }) => text),
     ].join("\n"),
     attachments: reports.map(({ format, fileName, bytes }) => ({
@@ -52,11 +59,6 @@ export async function mailReport(
       content: bytes,
     })),
   });
-  const files = reports.map(({ fileName, bytes }) => ({
-    name: fileName,
-    bytes: bytes.length,
-    sha256: createHash("sha256").update(bytes).digest("hex"),
-  }));
   await inTransaction(deps.database.sequelize, (transaction) =>
     recordAudit(deps, transaction, {
       action: "job.report_mailed",

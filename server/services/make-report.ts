@@ -3,7 +3,8 @@ import type { JobRecord } from "../../shared/schemas/jobs.ts";
 import { engineVersion } from "../compute/version.ts";
 import type { Deps } from "../deps.ts";
 import type { ReportContext, ReportFormat } from "../reports/report-format.ts";
-import { loadJob, loadResults } from "./job-store.ts";
+import { loadResults } from "./job-results.ts";
+import { loadJob } from "./job-store.ts";
 import { recordOf } from "./jobs.ts";
 import { hashOf } from "./sign-job.ts";
 

@@ -3,20 +3,11 @@ import { limits } from "../../shared/limits.ts";
 import type { ReadingPreview } from "../../shared/schemas/reading-files.ts";
 import type { Deps } from "../deps.ts";
 import { HttpProblem } from "../http/http-problem.ts";
-import { parseCsv } from "../jobs/reading-files/parse-csv.ts";
-import { parseWorkbook } from "../jobs/reading-files/parse-workbook.ts";
-import { mapColumns, readingColumns, type ReadingColumn } from "../jobs/reading-files/reading-columns.ts";
-import { readingsOfTable } from "../jobs/reading-files/readings-of-table.ts";
-import { UnreadableFile, type Table, type TableFault } from "../jobs/reading-files/table.ts";
-import { checkedReadings } from "./job-computations.ts";
+import type { ReadFile, ReadingMediaType } from "../jobs/reading-files/read-file.ts";
+import { readingColumns, type ReadingColumn } from "../jobs/reading-files/reading-columns.ts";
+import type { TableFault } from "../jobs/reading-files/table.ts";
+import { checkedReadings } from "./check-readings.ts";
 import type { LoadedJob } from "./job-store.ts";
-
-/** What a file of readings may be sent as. */
-export const readingMediaTypes = [
-  "text/csv",
-  "application/vnd.openxmlformats-officedocument.spreadsheetml.sheet",
-] as const;
-export type ReadingMediaType = (typeof readingMediaTypes)[number];
 
 interface Sent {
   readonly name: string;
@@ -37,34 +28,20 @@ export async function previewReadings(
   { name, mediaType, columns = "", ignore = "", content }: Sent,
 ): Promise<ReadingPreview> {
   const sha256 = createHash("sha256").update(content).digest("hex");
-  const file = { name, bytes: content.length, sha256 };
-  const nothing = { file, delimiter: null, decimal: null, columns: [], readings: [] };
-  const table = await tryTable(content, mediaType);
-  if (table instanceof UnreadableFile) return { ...nothing, faults: [table.fault] };
-
-  const mapped = mapColumns(table.head, { names: namesOf(columns), ignored: listOf(ignore) });
-  const read =
-    mapped.faults.length > 0
-      ? { readings: [], lines: [], decimal: null, faults: [] }
-      : readingsOfTable(table, mapped.columns, loaded.machine.units);
-  const faults = [...mapped.faults, ...read.faults];
+  const read = await deps.compute.readings({
+    mediaType,
+    content,
+    names: namesOf(columns),
+    ignored: listOf(ignore),
+    units: loaded.machine.units,
+  });
+  const { lines: _lines, readings, faults, ...rest } = read;
   return {
-    file,
-    delimiter: table.delimiter,
-    decimal: read.decimal,
-    columns: [...mapped.columns],
-    readings: [...read.readings],
+    file: { name, bytes: content.length, sha256 },
+    ...rest,
+    readings: [...readings],
     faults: faults.length > 0 ? faults : await engineFaults(deps, loaded, surveyId, read),
   };
-}
-
-async function tryTable(content: Buffer, mediaType: ReadingMediaType): Promise<Table | UnreadableFile> {
-  try {
-    return mediaType === "text/csv" ? parseCsv(content) : await parseWorkbook(content);
-  } catch (error) {
-    if (error instanceof UnreadableFile) return error;
-    throw error;
-  }
 }
 
 /** What the engine says of readings that can be read, at the line on which each begins. */
@@ -72,7 +49,7 @@ async function engineFaults(
   deps: Deps,
   loaded: LoadedJob,
   surveyId: string,
-  { readings, lines }: Pick<ReturnType<typeof readingsOfTable>, "readings" | "lines">,
+  { readings, lines }: Pick<ReadFile, "readings" | "lines">,
 ): Promise<TableFault[]> {
   if (readings.length > limits.readingsPerPost) {
     const detail = `A file holds at most ${limits.readingsPerPost} readings.`;

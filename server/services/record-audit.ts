@@ -26,6 +26,7 @@ export type AuditAction =
   | "job.created"
   | "job.changed"
   | "job.signed"
+  | "job.signature_refused"
   | "job.revised"
   | "job.entry_withdrawn"
   | "job.report_mailed";

@@ -6,7 +6,8 @@ import { problemBody, problemOfFaults, type HttpProblem } from "../http/http-pro
 import { callerOf, reply, type Call, type Reply } from "../http/operation.ts";
 import type { ComputeOutcome } from "./compute-outcome.ts";
 import { timeOfId } from "./ids.ts";
-import { deliveriesOf } from "../webhooks/events.ts";
+import { inTransaction } from "./in-transaction.ts";
+import { deliveriesOf, type NewDelivery } from "../webhooks/events.ts";
 import { writeRecords, type RecordEntry } from "./write-records.ts";
 
 /** What every computing request may carry beside what it computes from. */
@@ -21,6 +22,14 @@ export type CalculationCall<Body> = Pick<
   "deps" | "caller" | "body" | "text" | "canonicalText" | "claim" | "requestId" | "path"
 >;
 
+/** A calculation that was computed and is not stored yet. */
+export interface ComputedRecord {
+  readonly entry: RecordEntry;
+  readonly deliveries: readonly NewDelivery[];
+  /** What the caller is told: the answer with its envelope, or the refusal. */
+  readonly told: { readonly answer: Readonly<Record<string, unknown>> } | { readonly refusal: HttpProblem };
+}
+
 /**
  * The only way to compute for a caller: compute, then keep request, answer or refusal, usage and idempotency claim in
  * one transaction, then answer. A refusal of the engine is kept like a result and thrown afterwards.
@@ -29,6 +38,21 @@ export async function runCalculation<Request extends Noted>(
   kind: CalculationKind<Request, object>,
   call: CalculationCall<Request>,
 ): Promise<Reply> {
+  const { deps, claim } = call;
+  const record = await computeRecord(kind, call);
+  await inTransaction(deps.database.sequelize, (transaction) =>
+    writeRecords(deps.database, [record], transaction),
+  );
+  claim?.markSettled();
+  if ("refusal" in record.told) throw record.told.refusal;
+  return reply(201, record.told.answer, { Location: `/v1/calculations/${record.entry.id}` });
+}
+
+/** Computes, and makes the record to be kept, with what is to be told of it. Stores nothing. */
+export async function computeRecord<Request extends Noted>(
+  kind: CalculationKind<Request, object>,
+  call: CalculationCall<Request>,
+): Promise<ComputedRecord> {
   const { deps, claim, requestId } = call;
   const caller = callerOf(call);
   const started = performance.now();
@@ -39,43 +63,40 @@ export async function runCalculation<Request extends Noted>(
   const createdAt = timeOfId(id) ?? deps.now();
   const inputHash = sha256(call.canonicalText);
   const envelope = { id, kind: kind.kind, engineVersion, inputHash, createdAt: createdAt.toISOString() };
-  const refusal = outcome.status === "failed" ? problemOfFaults(outcome.faults, { id }) : null;
-  const answer = outcome.status === "succeeded" ? { ...envelope, ...outcome.answer } : null;
-  const body = answer ?? problemBody(refusal as HttpProblem, requestId, call.path);
+  const told: ComputedRecord["told"] =
+    outcome.status === "failed"
+      ? { refusal: problemOfFaults(outcome.faults, { id }) }
+      : { answer: { ...envelope, ...outcome.answer } };
+  const body = "refusal" in told ? problemBody(told.refusal, requestId, call.path) : told.answer;
 
   const deliveries = await deliveriesOf(deps, {
     organisationId: caller.organisation.id,
     type: "calculation.stored",
     data: { id, kind: kind.kind, status: outcome.status, jobId: call.body.jobId ?? null },
   });
-  const entries: RecordEntry[] = [
-    {
-      createdAt,
-      id,
-      organisationId: caller.organisation.id,
-      kind: kind.kind,
-      status: outcome.status,
-      engineVersion,
-      durationMs,
-      requestText: call.text,
-      requestCanonical: call.canonicalText,
-      inputHash,
-      answerText: JSON.stringify(body),
-      resultHash: resultHashOf(outcome),
-      memberId: caller.by === "member" ? caller.member.id : null,
-      keyId: caller.by === "key" ? caller.key.id : null,
-      requestId,
-      note: call.body.note ?? null,
-      jobId: call.body.jobId ?? null,
-      endpoint: call.path,
-      httpStatus: refusal?.status ?? 201,
-      claim: claim?.row ?? null,
-    },
-  ];
-  await writeRecords(deps.database, entries, deliveries);
-  claim?.markSettled();
-  if (refusal) throw refusal;
-  return reply(201, answer, { Location: `/v1/calculations/${id}` });
+  const entry: RecordEntry = {
+    createdAt,
+    id,
+    organisationId: caller.organisation.id,
+    kind: kind.kind,
+    status: outcome.status,
+    engineVersion,
+    durationMs,
+    requestText: call.text,
+    requestCanonical: call.canonicalText,
+    inputHash,
+    answerText: JSON.stringify(body),
+    resultHash: resultHashOf(outcome),
+    memberId: caller.by === "member" ? caller.member.id : null,
+    keyId: caller.by === "key" ? caller.key.id : null,
+    requestId,
+    note: call.body.note ?? null,
+    jobId: call.body.jobId ?? null,
+    endpoint: call.path,
+    httpStatus: "refusal" in told ? told.refusal.status : 201,
+    claim: claim?.row ?? null,
+  };
+  return { entry, deliveries, told };
 }
 
 /** Hash of what the engine answered, without what varies from call to call: two equal answers have one hash. */

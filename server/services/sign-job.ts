@@ -6,28 +6,33 @@ import type { Deps } from "../deps.ts";
 import { HttpProblem, problemOfFaults } from "../http/http-problem.ts";
 import type { Job } from "../models/job.ts";
 import type { By } from "./author.ts";
-import {
-  appendEntries,
-  loadJob,
-  loadResults,
-  refuseSigned,
-  type LoadedJob,
-  type StoredResults,
-} from "./job-store.ts";
+import { loadResults, type StoredResults } from "./job-results.ts";
+import { appendEntries, loadJob, refuseSigned, type LoadedJob } from "./job-store.ts";
+import { inTransaction } from "./in-transaction.ts";
 import { audit, recordOf } from "./jobs.ts";
 import { verifyPassword } from "./passwords.ts";
 import { sha256 } from "./run-calculation.ts";
 
 /**
- * Checks the signing member's password anew. Done before the job is locked, since it takes its time by design.
+ * Checks the signing member's password anew, and keeps in the audit that a wrong one was sent, never which. Done before
+ * the job is locked, since it takes its time by design.
  * @throws HttpProblem member_required for a key, password_wrong
  */
-export async function checkSigner(deps: Deps, { caller }: By, password: string): Promise<void> {
+export async function checkSigner(
+  deps: Deps,
+  job: Pick<Job, "id" | "organisationId" | "revision">,
+  by: By,
+  password: string,
+): Promise<void> {
+  const { caller } = by;
   if (caller.by !== "member") throw new HttpProblem("member_required", "A key cannot sign.");
   const member = await deps.database.models.members.findOne({
     where: { id: caller.member.id, organisationId: caller.organisation.id },
   });
   if (await verifyPassword(member?.passwordHash ?? null, password)) return;
+  await inTransaction(deps.database.sequelize, (transaction) =>
+    audit(deps, transaction, "job.signature_refused", job, by, { revision: job.revision }),
+  );
   throw problemOfFaults([
     { pointer: "/password", code: "password_wrong", detail: "This is not the password you sign in with." },
   ]);
@@ -84,7 +89,7 @@ export async function reviseJob(
   if (row.state !== "signed") throw new HttpProblem("job_not_signed", "The job is open as it stands.");
   const copied = rows
     .filter(({ kind }) => kind !== "signature")
-    .map((entry) => ({ ...entry.get(), revision: row.revision + 1 }));
+    .map((entry) => ({ ...entry.get(), revision: row.revision + 1, event: null }));
   await deps.database.models.jobEntries.bulkCreate(copied, { transaction });
   await row.update({ revision: row.revision + 1, state: "open", signedAt: null }, { transaction });
   await appendEntries(deps, transaction, { row, rows }, [{ kind: "revision", document: { reason } }], by);

@@ -11,8 +11,8 @@ const CREDENTIAL_CHECK_MS = 3_000;
 const EVENTS_AT_ONCE = 500;
 
 export interface JobEvent {
-  /** UUIDv7: events stand in the order in which they were made. */
-  readonly id: string;
+  /** Its number among the events of its job, from 1: given while the job's row is locked, so that it rises as they commit. */
+  readonly number: number;
   readonly type: "indication" | "entry";
   readonly data: string;
 }
@@ -21,25 +21,37 @@ export interface JobEvent {
 export async function eventsAfter(
   { database }: Pick<Deps, "database">,
   job: { readonly id: string; readonly organisationId: string },
-  last: string,
+  last: number,
 ): Promise<JobEvent[]> {
   const { jobIndications, jobEntries } = database.models;
-  const where = { jobId: job.id, organisationId: job.organisationId, id: { [Op.gt]: last } };
-  const options = { where, order: [["id", "ASC"]] as [string, string][], limit: EVENTS_AT_ONCE };
+  const where = { jobId: job.id, organisationId: job.organisationId, event: { [Op.gt]: last } };
+  const options = { where, order: [["event", "ASC"]] as [string, string][], limit: EVENTS_AT_ONCE };
   const [indications, entries] = await Promise.all([
-    jobIndications.findAll({ ...options, attributes: ["id", "answerText"] }),
-    jobEntries.findAll({ ...options, attributes: ["jobId", "id", "kind", "revision", "sequence"] }),
+    jobIndications.findAll({ ...options, attributes: ["event", "answerText"] }),
+    jobEntries.findAll({ ...options, attributes: ["event", "id", "kind", "revision", "sequence"] }),
   ]);
-  return [
-    ...indications.map(({ id, answerText }) => ({ id, type: "indication" as const, data: answerText })),
-    ...entries.map(({ id, kind, revision, sequence }) => ({
-      id,
+  return withoutGap(last, [
+    ...indications.map(({ event, answerText }) => ({
+      number: event,
+      type: "indication" as const,
+      data: answerText,
+    })),
+    ...entries.map(({ event, id, kind, revision, sequence }) => ({
+      number: event ?? 0,
       type: "entry" as const,
       data: JSON.stringify({ id, kind, revision, sequence }),
     })),
-  ]
-    .sort((one, other) => (one.id < other.id ? -1 : 1))
-    .slice(0, EVENTS_AT_ONCE);
+  ]);
+}
+
+/**
+ * Events in order, as far as none is missing. The two tables are read at two moments, in a cluster even from two
+ * machines: where a later event was seen and an earlier one not yet, the later one waits.
+ */
+export function withoutGap(last: number, events: readonly JobEvent[]): JobEvent[] {
+  const inOrder = events.toSorted((one, other) => one.number - other.number).slice(0, EVENTS_AT_ONCE);
+  const gap = inOrder.findIndex(({ number }, index) => number !== last + 1 + index);
+  return gap < 0 ? inOrder : inOrder.slice(0, gap);
 }
 
 /** What a watcher writes to: gone as soon as nobody reads it. */
@@ -61,7 +73,8 @@ export async function watchJob(
     last,
     stillAllowed,
   }: {
-    readonly last: string;
+    /** Number of the last event that the reader has. */
+    readonly last: number;
     readonly stillAllowed: () => Promise<boolean>;
   },
   sink: EventSink,
@@ -72,7 +85,8 @@ export async function watchJob(
     await sink.write(text);
     spokeAt = performance.now();
   };
-  await say(": watching\n\n");
+  // An id without an event: a reader that is cut off before the first one knows where to go on.
+  await say(`: watching\nid: ${sent}\n\n`);
   while (sink.isOpen()) {
     if (deps.shutdown.begun) return await say('event: end\ndata: {"reason":"service_stopping"}\n\n');
     if (performance.now() - checkedAt > CREDENTIAL_CHECK_MS) {
@@ -80,9 +94,9 @@ export async function watchJob(
       checkedAt = performance.now();
     }
     const events = await eventsAfter(deps, job, sent);
-    for (const { id, type, data } of events) {
-      await say(`id: ${id}\nevent: ${type}\ndata: ${data}\n\n`);
-      sent = id;
+    for (const { number, type, data } of events) {
+      await say(`id: ${number}\nevent: ${type}\ndata: ${data}\n\n`);
+      sent = number;
     }
     if (performance.now() - spokeAt > HEARTBEAT_MS) await say(": alive\n\n");
     if (events.length < EVENTS_AT_ONCE) await sleep(EVERY_MS);

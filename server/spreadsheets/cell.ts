@@ -51,18 +51,24 @@ export function formulaCell(
 }
 
 export const titleCell = (value: string): SheetCell => textCell(value, { fontWeight: "bold", fontSize: 14 });
-export const headingCell = (value: string): SheetCell =>
-  textCell(value, {
-    fontWeight: "bold",
-    wrap: true,
-    align: "left",
-    alignVertical: "top",
-    backgroundColor: "#E7ECEF",
-    borderStyle: "thin",
-  });
+const heading: CellLook = {
+  fontWeight: "bold",
+  wrap: true,
+  alignVertical: "top",
+  backgroundColor: "#E7ECEF",
+  borderStyle: "thin",
+};
+export const headingCell = (value: string): SheetCell => textCell(value, heading);
+/** Of a column of numbers. */
+export const numberHeadingCell = (value: string): SheetCell =>
+  textCell(value, { ...heading, align: "right" });
 
-/** A number format with this many decimals. */
-export const fixed = (decimals: number): string => (decimals > 0 ? `0.${"0".repeat(decimals)}` : "0");
+/** A number format with this many decimals; what rounds to nothing is shown without a sign. */
+export function fixed(decimals: number): string {
+  const digits = decimals > 0 ? `0.${"0".repeat(decimals)}` : "0";
+  const least = `0.${"0".repeat(decimals)}5`;
+  return `[>=${least}]${digits};[<=-${least}]-${digits};"${digits}"`;
+}
 
 const emptyCell = (look: CellLook): SheetCell =>
   look.borderStyle === undefined && look.backgroundColor === undefined

@@ -34,20 +34,31 @@ function withHeight(cells: Cell[], lines: number): Cell[] {
   );
 }
 
+/** A word longer than a line begins on one of its own. */
+function linesFor(line: string, room: number): number {
+  const isBroken = line.includes(" ") && line.split(" ").some((word) => word.length > room);
+  return Math.max(1, Math.ceil(line.length / room) + (isBroken ? 1 : 0));
+}
+
 /** Lines that the fullest cell of a row takes; words do not fill a line to its end. */
 function linesOf(row: readonly SheetCell[], widths: readonly number[]): number {
   const lines = row.map((cell, column) => {
     if (cell?.kind !== "text" || !cell.look.wrap) return 1;
-    const width = widths[column] ?? 10;
+    const span = cell.look.columnSpan ?? 1;
+    const width = sum(widths.slice(column, column + span)) || 10;
     const room = width < 15 ? width * 0.7 : width < 40 ? width * 0.85 : width;
-    return cell.value.split("\n").reduce((sum, line) => sum + Math.max(1, Math.ceil(line.length / room)), 0);
+    return sum(cell.value.split("\n").map((line) => linesFor(line, room)));
   });
   return Math.min(30, Math.max(1, ...lines));
 }
 
+const sum = (values: readonly number[]): number => values.reduce((total, value) => total + value, 0);
+
 function writeCell(cell: SheetCell): Cell {
   if (cell === null) return null;
-  const { look } = cell;
+  // What stands in a row with a text of several lines begins beside its first.
+  const look: CellLook =
+    cell.look.fontSize === undefined ? { alignVertical: "top", ...cell.look } : cell.look;
   switch (cell.kind) {
     // The text format keeps a text what it is when somebody edits the cell.
     case "text":

@@ -3,32 +3,33 @@ import { limits } from "../limits.ts";
 import { offsetPair } from "./common.ts";
 import { callerId, quantity } from "./quantity.ts";
 
+const indicatorReadings = z
+  .array(
+    z.strictObject({
+      id: callerId.meta({ description: "Of the machine's indicators, on this component." }),
+      reading: quantity("offset", "offset", "Since the component began to move."),
+    }),
+  )
+  .max(limits.indicatorsPerCall);
+const sightReadings = z
+  .array(
+    z.strictObject({
+      station: callerId.meta({ description: "Of this component, or a neighbour." }),
+      centre: offsetPair.meta({
+        description: "Off the line of sight as it stood in the plan's survey, downstream view.",
+      }),
+    }),
+  )
+  .max(limits.stationsPerMachine);
+
 export const indicationRequest = z
   .strictObject({
     plan: z.uuid().meta({ description: "Id of the plan that is being carried out." }),
     component: callerId.meta({ description: "The one that moves." }),
     at: z.iso.datetime({ offset: true }),
     person: z.string().trim().min(1).max(limits.nameLength).nullish(),
-    indicators: z
-      .array(
-        z.strictObject({
-          id: callerId.meta({ description: "Of the machine's indicators, on this component." }),
-          reading: quantity("offset", "offset", "Since the component began to move."),
-        }),
-      )
-      .max(limits.indicatorsPerCall)
-      .optional(),
-    sights: z
-      .array(
-        z.strictObject({
-          station: callerId.meta({ description: "Of this component, or a neighbour." }),
-          centre: offsetPair.meta({
-            description: "Off the line of sight as it stood in the plan's survey, downstream view.",
-          }),
-        }),
-      )
-      .max(limits.stationsPerMachine)
-      .optional(),
+    indicators: indicatorReadings.optional(),
+    sights: sightReadings.optional(),
   })
   .meta({
     id: "IndicationRequest",
@@ -55,6 +56,9 @@ export const indicationAnswer = z
     component: z.string(),
     at: z.iso.datetime({ offset: true }),
     createdAt: z.iso.datetime(),
+    person: z.string().nullable(),
+    indicators: indicatorReadings.meta({ description: "As sent." }),
+    sights: sightReadings.meta({ description: "As sent." }),
     units: z.object({ offset: z.string() }),
     supports: z.array(z.object({ support: z.string(), moved: partlyKnown, left: partlyKnown })),
     done: z.boolean().nullable().meta({ description: "Null while the readings do not tell." }),

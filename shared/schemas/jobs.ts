@@ -1,22 +1,17 @@
 import { z } from "zod";
 import { limits } from "../limits.ts";
 import { setUpCheckIds } from "../set-up-checks.ts";
-import { axisDeviationResult } from "./axis-deviations.ts";
-import { boreFitResult } from "./bore-fits.ts";
-import { cautionSchema, offsetPair } from "./common.ts";
-import { confirmationResult } from "./confirmation-answers.ts";
+import { cautionSchema } from "./common.ts";
 import {
   axisAcceptanceRequest,
   checkRequest,
   concessionRequest,
   jobDetails,
   loggedMoveRequest,
-  readingSchema,
-  surveyRequest,
 } from "./job-entries.ts";
-import { authorSchema, machineDocument, revisionParam } from "./machines.ts";
+import { machineDocument, revisionParam } from "./machines.ts";
+import { entry, jobConfirmationSchema, jobFlag, jobPlanSchema, jobSurveySchema } from "./job-surveys.ts";
 import { pageOf, pageQuery } from "./paging.ts";
-import { shimMoveResult } from "./shim-moves.ts";
 
 export const createJobRequest = z
   .strictObject({
@@ -46,13 +41,6 @@ export const reviseJobRequest = z
   .strictObject({ reason: z.string().trim().min(1).max(limits.noteLength) })
   .meta({ id: "ReviseJobRequest" });
 
-/** What every entry of a job's log says of itself. */
-const entry = { id: z.uuid(), createdAt: z.iso.datetime(), author: authorSchema };
-
-export const jobFlag = z
-  .object({ code: z.string(), detail: z.string(), station: z.string().nullable() })
-  .meta({ id: "JobFlag", description: "What a reader must know: stands on every figure and report." });
-
 const checkAnswer = z
   .object({
     check: z.enum(setUpCheckIds),
@@ -64,57 +52,18 @@ const checkAnswer = z
   })
   .meta({ id: "CheckAnswer" });
 
-const storedReading = z
-  .object({
-    ...entry,
-    reading: readingSchema,
-    counts: z.boolean().meta({ description: "false: withdrawn, or a later one of the station counts." }),
-    sourceFile: z
-      .object({ id: z.uuid(), name: z.string(), sha256: z.string() })
-      .nullable()
-      .meta({ description: "The file it came from, where it came from one." }),
-  })
-  .meta({ id: "StoredReading" });
-
-const surveyResult = z
-  .object({
-    ...entry,
-    boreFit: z.uuid().meta({ description: "Id of the stored calculation." }),
-    axisDeviation: z.uuid().meta({ description: "Id of the stored calculation." }),
-    engineVersion: z.string(),
-    current: z.boolean().meta({ description: "false: readings have changed since; compute again." }),
-    fits: z.array(boreFitResult),
-    axis: axisDeviationResult.shape.axis,
-    stations: axisDeviationResult.shape.stations,
-    summary: axisDeviationResult.shape.summary,
-    drift: z
-      .object({ station: z.string(), ...offsetPair.shape })
-      .nullable()
-      .meta({ description: "Closing centre less opening centre; null without a closing reading." }),
-  })
-  .meta({ id: "SurveyResult" });
-
-export const jobSurveySchema = z
-  .object({
-    ...entry,
-    survey: surveyRequest,
-    flags: z.array(jobFlag),
-    readings: z.array(storedReading),
-    result: surveyResult.nullable().meta({ description: "Null until computed." }),
-  })
-  .meta({ id: "JobSurvey" });
-
-const planSchema = z
-  .object({ ...entry, survey: z.uuid(), calculation: z.uuid(), result: shimMoveResult })
-  .meta({ id: "JobPlan" });
 const loggedMove = z
   .object({ ...entry, ...loggedMoveRequest.shape, flags: z.array(jobFlag) })
   .meta({ id: "LoggedMove" });
-const jobConfirmation = z
-  .object({ ...entry, before: z.uuid(), after: z.uuid(), calculation: z.uuid(), result: confirmationResult })
-  .meta({ id: "JobConfirmation" });
 const concession = z.object({ ...entry, ...concessionRequest.shape }).meta({ id: "Concession" });
-const axisAcceptance = z.object({ ...entry, ...axisAcceptanceRequest.shape }).meta({ id: "AxisAcceptance" });
+const axisAcceptance = z
+  .object({
+    ...entry,
+    ...axisAcceptanceRequest.shape,
+    surveyResult: z.uuid().meta({ description: "The survey's result whose axis was accepted." }),
+    current: z.boolean().meta({ description: "False: the survey was computed again since, or is to be." }),
+  })
+  .meta({ id: "AxisAcceptance" });
 const comment = z.object({ ...entry, text: z.string() }).meta({ id: "JobComment" });
 export const attachmentSchema = z
   .object({
@@ -153,9 +102,9 @@ export const jobRecord = jobSummary
     details: jobDetails,
     checks: z.array(checkAnswer),
     surveys: z.array(jobSurveySchema),
-    plans: z.array(planSchema),
+    plans: z.array(jobPlanSchema),
     moves: z.array(loggedMove),
-    confirmations: z.array(jobConfirmation),
+    confirmations: z.array(jobConfirmationSchema),
     concessions: z.array(concession),
     axisAcceptances: z.array(axisAcceptance),
     comments: z.array(comment),
@@ -204,7 +153,3 @@ export const addedEntries = z
 
 export type JobSummary = z.infer<typeof jobSummary>;
 export type JobRecord = z.infer<typeof jobRecord>;
-export type JobSurvey = z.infer<typeof jobSurveySchema>;
-export type JobFlag = z.infer<typeof jobFlag>;
-export type SurveyResult = z.infer<typeof surveyResult>;
-export type StoredReading = z.infer<typeof storedReading>;

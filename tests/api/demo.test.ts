@@ -3,7 +3,9 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import type { z } from "zod";
+import type { CalculationKind } from "../../server/calculations/calculation-kind.ts";
 import { seedDemo } from "../../server/demo/seed-demo.ts";
+import { ComputePool } from "../../server/services/compute-pool.ts";
 import { axisDeviationRequest, axisDeviationResponse } from "../../shared/schemas/axis-deviations.ts";
 import { boreFitResponse } from "../../shared/schemas/bore-fits.ts";
 import type { calculationPage, calculationRecord } from "../../shared/schemas/calculations.ts";
@@ -167,6 +169,33 @@ describe("the demo", () => {
 });
 
 describe("a first start with the demo that is cut short", () => {
+  it.each([
+    ["in the outage", 4, { calculations: 0, machines: 0 }],
+    ["in the job's plan", 12, { calculations: 6, machines: 0 }],
+    ["in the job's last survey", 14, { calculations: 6, machines: 0 }],
+  ])("%s leaves nothing of that part, and the next makes it whole", async (_where, calls, left) => {
+    const folder = mkdtempSync(join(tmpdir(), "borewright-demo-"));
+    const app = await openListeningApp({ DATA_DIR: folder });
+    const { compute, database } = app.deps;
+    const { calculations, machines, jobs } = database.models;
+    let ran = 0;
+    class Cutting extends ComputePool {
+      override run<Request>(kind: CalculationKind<Request, object>, request: Request) {
+        ran += 1;
+        return ran === calls ? Promise.reject(new Error("cut short")) : compute.run(kind, request);
+      }
+    }
+    const cutting = new Cutting();
+    const broken = { ...app.deps, compute: cutting };
+    await expect(seedDemo(broken, app.url, () => undefined)).rejects.toThrow("cut short");
+    expect({ calculations: await calculations.count(), machines: await machines.count() }).toEqual(left);
+    await seedDemo(app.deps, app.url, () => undefined);
+    expect(await calculations.count()).toBe(12);
+    expect((await jobs.findAll()).map(({ state }) => state)).toEqual(["signed"]);
+    await app.close();
+    rmSync(folder, { recursive: true });
+  });
+
   it("is completed by the next: its sign-ins still work, key and records are there", async () => {
     const folder = mkdtempSync(join(tmpdir(), "borewright-demo-"));
     const app = await openListeningApp({ DATA_DIR: folder });

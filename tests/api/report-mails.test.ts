@@ -40,6 +40,20 @@ describe("POST /v1/jobs/{id}/report-mails", () => {
     const [kept] = await outbox();
     expect(kept?.to).toEqual(["owner@fellgate.example"]);
     expect(kept?.subject).toBe("Fellgate Unit 2: Unit 2, major outage, revision 1 (draft, not signed)");
+    const message = await app
+      .call()
+      .get(`/v1/outbox/${kept?.id}`)
+      .set("Authorization", `Bearer ${job.works.tokens.admin}`)
+      .buffer(true)
+      .parse((response, done) => {
+        let text = "";
+        response.on("data", (part: Buffer) => (text += String(part)));
+        response.on("end", () => done(null, text));
+      });
+    const [file] = (body as { files: { name: string; sha256: string }[] }).files;
+    // RFC 2045, 6.7: an equals sign at the end of a line joins it to the next.
+    const words = String(message.body).replaceAll(/=\r?\n/g, "");
+    expect(words).toContain(`${file?.name}, sha256 ${file?.sha256}`);
   });
 
   it("refuses recipients and forms that are none, and sends nothing", async () => {

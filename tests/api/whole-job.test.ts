@@ -1,6 +1,7 @@
 import canonicalize from "canonicalize";
 import { createHash } from "node:crypto";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { eventsAfter } from "../../server/services/watch-job.ts";
 import type { JobRecord } from "../../shared/schemas/jobs.ts";
 import { openTestApp, type TestApp } from "../support/app.ts";
 import { makeOrganisation } from "../support/factories.ts";
@@ -51,6 +52,14 @@ describe("a whole job", () => {
       code: "password_wrong",
       errors: [{ pointer: "/password" }],
     });
+    const refused = await app.deps.database.models.auditEvents.findAll({
+      where: { subject: job.id, action: "job.signature_refused" },
+    });
+    expect(refused.map(({ memberId, organisationId }) => [memberId, organisationId])).toEqual([
+      [job.works.members.engineer.id, job.works.id],
+    ]);
+    expect(Math.abs((refused[0]?.createdAt.getTime() ?? 0) - Date.now())).toBeLessThan(60_000); // ms
+    expect(JSON.parse(refused[0]?.details ?? "")).toEqual({ revision: 1 });
     const signed = await job.sign();
     expect(signed.status).toBe(201);
     const record = signed.body as unknown as JobRecord;
@@ -94,6 +103,14 @@ describe("a whole job", () => {
     expect(first.surveys).toEqual(before.surveys);
     expect(first.state).toBe("signed");
     await job.add("/comments", { text: "Corrected." });
+    // What a revision copies is told to nobody a second time.
+    const row = await app.deps.database.models.jobs.findOne({ where: { id: job.id }, rejectOnEmpty: true });
+    const events = await eventsAfter(app.deps, row, 0);
+    const told = events.map(({ data }) => (JSON.parse(data) as { id: string }).id);
+    expect(new Set(told).size).toBe(told.length);
+    expect(events.map(({ number }) => number)).toEqual(
+      Array.from({ length: row.events }, (_, index) => index + 1),
+    );
     expect((await job.sign()).status).toBe(201);
   });
 });

@@ -17,6 +17,15 @@ describe("the tables", () => {
   const select = <Row extends object>(sql: string) =>
     app.deps.database.sequelize.query<Row>(sql, { type: QueryTypes.SELECT });
 
+  const store = (...entries: RecordEntry[]) =>
+    inTransaction(app.deps.database.sequelize, (transaction) =>
+      writeRecords(
+        app.deps.database,
+        entries.map((entry) => ({ entry, deliveries: [] })),
+        transaction,
+      ),
+    );
+
   it("are InnoDB and have a primary key, each of them", async () => {
     const tables = await select<{ name: string; engine: string; keys: string }>(
       `SELECT t.TABLE_NAME AS name, t.ENGINE AS engine, (SELECT COUNT(*) FROM information_schema.TABLE_CONSTRAINTS c
@@ -90,7 +99,7 @@ describe("the tables", () => {
       httpStatus: 201,
       claim: null,
     };
-    await writeRecords(app.deps.database, [entry, { ...entry, id: app.deps.newId(), note: null }]);
+    await store(entry, { ...entry, id: app.deps.newId(), note: null });
     const row = await app.deps.database.models.calculations.findOne({ where: { id, organisationId } });
     expect(JSON.parse(row?.answerText ?? "")).toEqual(answer);
     expect(row?.durationMs).toBe(0.1 + 0.2);
@@ -124,7 +133,7 @@ describe("the tables", () => {
       httpStatus: 201,
       claim: null,
     } satisfies RecordEntry;
-    await expect(writeRecords(app.deps.database, [entry, entry])).rejects.toThrow();
+    await expect(store(entry, entry)).rejects.toThrow();
     const left = await select<{ rows: string }>(
       `SELECT (SELECT COUNT(*) FROM calculations WHERE organisationId = '${organisationId}') + (SELECT COUNT(*) FROM usage_events WHERE organisationId = '${organisationId}') AS \`rows\``,
     );

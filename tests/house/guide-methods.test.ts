@@ -13,6 +13,8 @@ import { sightMethods } from "../../console/src/features/guide/content/sight-met
 import { shimChoice } from "../../console/src/features/guide/content/shim-choice.ts";
 import { targetMethods } from "../../console/src/features/guide/content/target-methods.ts";
 import { verdictRules } from "../../console/src/features/guide/content/verdict-rules.ts";
+import { obstacleMeanings, signatureRefusals } from "../../console/src/features/guide/content/sign-off.ts";
+import { nextSteps } from "../../console/src/features/jobs/components/next-steps.ts";
 import { jobSteps } from "../../console/src/features/guide/content/job-steps.ts";
 import { guidePages } from "../../console/src/features/guide/guide-pages.ts";
 import { commonPractice, ownRule, type Method } from "../../console/src/features/guide/method.ts";
@@ -119,5 +121,22 @@ describe("the guide", () => {
     expect(unitUses.map(({ dimension }) => dimension)).toEqual(
       Object.keys({ ...unitChoices, ...furtherUnitChoices }),
     );
+  });
+
+  it("says of every obstacle to a signature what it means and what to do, and of nothing else", () => {
+    const raised = [...readFile("server/jobs/sign-off.ts").matchAll(/flag\(\s*"(\w+)"/g)].map(
+      ([, code]) => code,
+    );
+    const codes = [...new Set(raised)].sort();
+    expect(codes.length).toBeGreaterThan(10);
+    expect(Object.keys(obstacleMeanings).sort()).toEqual(codes);
+    expect(Object.keys(nextSteps).sort()).toEqual(codes);
+  });
+
+  it("names what the call that signs refuses, as the service documents it", () => {
+    const [, , errors = ""] =
+      /operationId: "signJob"([\s\S]*?)errors: \[(.*?)\]/.exec(readFile("server/routes/jobs.ts")) ?? [];
+    const documented = [...errors.matchAll(/"(\w+)"/g)].map(([, code]) => code);
+    expect([...signatureRefusals].sort()).toEqual(documented.sort());
   });
 });

@@ -47,6 +47,27 @@ describe("kill -9 in the middle of a job", () => {
     expect((await job.read()).attachments).toHaveLength(1);
   }, 60_000);
 
+  it("leaves no calculation of a survey whose entry was cut, and computes it once when asked again", async () => {
+    const { calculations } = app.deps.database.models;
+    const count = () => calculations.count({ where: { jobId: job.id } });
+    const before = await job.read();
+    const calculated = await count();
+    const path = `/surveys/${before.surveys[1]?.id}/results`;
+    const server = await startServerProcess(app.deps.config.databaseUrl);
+    const compute = send(path, "application/json", "");
+    expect(await killAtWrite(app, server, nextEntryOf(job.id), compute)).toBe("cut");
+    expect(await count()).toBe(calculated);
+    expect(await job.read()).toEqual(before);
+
+    const { status, body } = await job.post(`/v1/jobs/${job.id}${path}`);
+    expect([status, (body["ids"] as string[]).length]).toEqual([201, 1]);
+    expect(await count()).toBe(calculated + 2);
+    // The survey was computed again: what was compared with its earlier result is to be compared anew.
+    expect((await job.read()).signOff.obstacles.map(({ code }) => code)).toEqual(["not_confirmed"]);
+    const [found, left] = before.surveys;
+    await job.add("/confirmations", { before: found?.id, after: left?.id });
+  }, 60_000);
+
   it("leaves a job open where the signature was cut, with no trace of it, and signs it when asked again", async () => {
     const before = await job.read();
     const server = await startServerProcess(app.deps.config.databaseUrl);

@@ -91,10 +91,27 @@ export async function openPage(
 
 export const noMisdeeds: Misdeeds = { elsewhere: [], violations: [], errors: [] };
 
-export async function signIn(page: Page, { service, admin }: ConsoleInBrowser): Promise<void> {
+/** Who signs in: the administrator of the console, or another of its members. */
+export async function signIn(
+  page: Page,
+  { service, admin }: ConsoleInBrowser,
+  email = admin.member.email,
+): Promise<void> {
   await page.goto(`${service.url}/`);
-  await page.getByLabel("E-mail").fill(admin.member.email);
-  await page.getByLabel("Password").fill(password);
-  await page.getByRole("button", { name: "Sign in" }).click();
-  await page.getByRole("heading", { level: 1, name: "Calculations" }).waitFor();
+  await page.getByLabel("E-mail", { exact: true }).fill(email);
+  await page.getByLabel("Password", { exact: true }).fill(password);
+  await page.getByRole("button", { name: "Sign in", exact: true }).click();
+  await headingOf(page, "Calculations");
+}
+
+/** Waits for a page's own heading: until it is there, what is found may still stand on the page before. */
+export async function headingOf(page: Page, name: string): Promise<void> {
+  await page.getByRole("heading", { level: 1, name, exact: true }).waitFor();
+}
+
+/** Goes to a page by the navigation that stands on each. */
+export async function goTo(page: Page, name: string): Promise<void> {
+  const main = page.getByRole("navigation", { name: "Main", exact: true });
+  await main.getByRole("link", { name, exact: true }).click();
+  await headingOf(page, name);
 }

@@ -55,14 +55,18 @@ export const reading = (surveyId: string, station: string, takenAt: string, more
     id,
   );
 export const result = (surveyId: string, readings: string[]) =>
-  entry("survey_result", {
-    survey: surveyId,
-    boreFit: `fit-${surveyId}`,
-    axisDeviation: `axis-${surveyId}`,
-    engineVersion: "1.0.0",
-    readings,
-    drift: null,
-  });
+  entry(
+    "survey_result",
+    {
+      survey: surveyId,
+      boreFit: `fit-${surveyId}`,
+      axisDeviation: `axis-${surveyId}`,
+      engineVersion: "1.0.0",
+      readings,
+      drift: null,
+    },
+    `result-${surveyId}`,
+  );
 export const move = (component: string, at: string, more: Partial<LoggedMove> = {}) =>
   entry("move", { component, at, finished: true, ...more });
 export const stations = ["brg-1", "cas-1", "brg-2", "shr-1"];
@@ -82,4 +86,11 @@ export const surveyed = (id: string, stage: "as_found" | "as_left", day: string)
 
 export const found = () => surveyed("found", "as_found", "2026-11-04");
 export const left = () => surveyed("left", "as_left", "2026-11-10");
-export const confirmed = () => entry("confirmation", { before: "found", after: "left", calculation: "c" });
+export const confirmed = () =>
+  entry("confirmation", {
+    before: "found",
+    beforeResult: "result-found",
+    after: "left",
+    afterResult: "result-left",
+    calculation: "c",
+  });

@@ -1,6 +1,8 @@
 import {
   asFoundReadings,
+  asFoundSurvey,
   asLeftReadings,
+  asLeftSurvey,
   fellgateChecks,
   fellgateJobDetails,
   movesAsPlanned,
@@ -16,8 +18,10 @@ export function jobExampleFiles(): Record<string, unknown> {
   return {
     "details.json": fellgateJobDetails,
     "checks.json": fellgateChecks,
+    "as-found-survey.json": asFoundSurvey,
     "as-found-readings.json": asFoundReadings(),
     "moves.json": movesAsPlanned(plan.result),
+    "as-left-survey.json": asLeftSurvey,
     "as-left-readings.json": asLeftReadings(survey.result, plan.result),
   };
 }

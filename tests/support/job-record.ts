@@ -1,7 +1,9 @@
 import { fellgateDocument } from "../../server/demo/fellgate-document.ts";
 import {
   asFoundReadings,
+  asFoundSurvey,
   asLeftReadings,
+  asLeftSurvey,
   fellgateChecks,
   fellgateJobDetails,
   movesAsPlanned,
@@ -18,26 +20,12 @@ export function writeFellgateJob(stage: FellgateStage = "left"): JobWriter {
   const job = new JobWriter(fellgateDocument, fellgateJobDetails);
   if (stage === "started") return job;
   for (const check of fellgateChecks) job.add("check", check);
-  const conditions = {
-    temperatureUnit: "C" as const,
-    ambient: 19.5,
-    metal: [
-      { place: "casing, turbine end", value: 21.2 },
-      { place: "bearing 1 pedestal", value: 20.8 },
-    ],
-  };
-  const found = job.survey(
-    { stage: "as_found", sameSetUp: false, instrument: "gauge-1", conditions },
-    asFoundReadings(),
-  );
+  const found = job.survey(asFoundSurvey, asFoundReadings());
   if (stage === "found") return job;
   const plan = job.plan(found);
   if (stage === "planned") return job;
   for (const move of movesAsPlanned(plan)) job.add("move", move);
-  const left = job.survey(
-    { stage: "as_left", sameSetUp: true, instrument: "gauge-1" },
-    asLeftReadings(job.resultOf(found), plan),
-  );
+  const left = job.survey(asLeftSurvey, asLeftReadings(job.resultOf(found), plan));
   job.confirm(found, left);
   return job;
 }

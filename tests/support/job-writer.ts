@@ -7,7 +7,6 @@ import { confirmationKind } from "../../server/calculations/confirmation.ts";
 import { shimMoveKind } from "../../server/calculations/shim-move.ts";
 import { engineVersion } from "../../server/compute/version.ts";
 import {
-  countingReadings,
   readJobLog,
   type EntryDocuments,
   type JobEntry,
@@ -18,15 +17,16 @@ import {
 import {
   axisRequestOf,
   boreFitRequestOf,
-  closingId,
   confirmationRequestOf,
   moveRequestOf,
 } from "../../server/jobs/job-requests.ts";
+import { surveyDriftOf } from "../../server/jobs/survey-drift.ts";
 import type { Job } from "../../server/models/job.ts";
 import { presentJob } from "../../server/presenters/present-job.ts";
 import type { ReportContext } from "../../server/reports/report-format.ts";
 import type { CallerNames } from "../../server/services/caller-names.ts";
-import type { LoadedJob, StoredResults } from "../../server/services/job-store.ts";
+import type { StoredResults } from "../../server/services/job-results.ts";
+import type { LoadedJob } from "../../server/services/job-store.ts";
 import { hashOf } from "../../server/services/sign-job.ts";
 import type { JobDetails, Reading, SurveyRequest } from "../../shared/schemas/job-entries.ts";
 import type { JobRecord } from "../../shared/schemas/jobs.ts";
@@ -80,26 +80,20 @@ export class JobWriter {
     const fits = this.run(boreFitKind, boreFitRequestOf(this, survey, "fixture"));
     const { bores } = fits.answer.result;
     const deviations = this.run(axisDeviationKind, axisRequestOf(this, bores, "fixture"));
-    const station = countingReadings(survey).closing[0]?.document.reading.station;
-    const opened = bores.find(({ id }) => id === station)?.centre;
-    const closed = bores.find(({ id }) => station !== undefined && id === closingId(station))?.centre;
     this.add("survey_result", {
       survey: surveyId,
       boreFit: fits.id,
       axisDeviation: deviations.id,
       engineVersion,
       readings: [...survey.counting],
-      drift:
-        station !== undefined && opened && closed
-          ? { station, h: closed.h - opened.h, v: closed.v - opened.v }
-          : null,
+      drift: surveyDriftOf(this, survey, bores),
     });
   }
 
   plan(surveyId: string): ShimMoveResult {
     const { stations } = this.resultOf(surveyId);
     const plan = this.run(shimMoveKind, moveRequestOf(this, stations, undefined, null));
-    this.add("plan", { survey: surveyId, calculation: plan.id });
+    this.add("plan", { survey: surveyId, surveyResult: this.resultIdOf(surveyId), calculation: plan.id });
     return plan.answer.result;
   }
 
@@ -120,7 +114,13 @@ export class JobWriter {
         null,
       ),
     );
-    this.add("confirmation", { before, after, calculation: confirmed.id });
+    this.add("confirmation", {
+      before,
+      beforeResult: this.resultIdOf(before),
+      after,
+      afterResult: this.resultIdOf(after),
+      calculation: confirmed.id,
+    });
   }
 
   /** Signs as the service would: only what nothing stands in the way of. */
@@ -135,6 +135,10 @@ export class JobWriter {
     const deviations = this.stored.deviations(id);
     if (!deviations) throw new Error("The survey is not computed.");
     return deviations;
+  }
+
+  private resultIdOf(surveyId: string): string {
+    return this.surveyState(surveyId).result?.id ?? "";
   }
 
   record(): JobRecord {

@@ -14,9 +14,15 @@ const recalculate = `<?xml version="1.0" encoding="UTF-8"?>
 /** Sheet name to its rows, every number in full. */
 export type OpenedWorkbook = Readonly<Record<string, readonly (readonly string[])[]>>;
 
-/** Opens a workbook in LibreOffice, which computes every formula itself, and reads what the sheets then show. */
-export function openInSpreadsheetProgram(workbook: Uint8Array): Promise<OpenedWorkbook> {
-  const everySheet = "csv:Text - txt - csv (StarCalc):44,34,76,1,,0,false,false,false,false,false,-1";
+/**
+ * Opens a workbook in LibreOffice, which computes every formula itself, and reads what the sheets then hold; every number
+ * by its format where asked.
+ */
+export function openInSpreadsheetProgram(
+  workbook: Uint8Array,
+  { asShown = false }: { readonly asShown?: boolean } = {},
+): Promise<OpenedWorkbook> {
+  const everySheet = `csv:Text - txt - csv (StarCalc):44,34,76,1,,0,false,false,${asShown},false,false,-1`;
   return converted(workbook, everySheet, async (folder) => {
     const sheets = (await readdir(folder)).map(async (file) => {
       const rows = parse(await readFile(join(folder, file)), { relax_column_count: true });

@@ -1,8 +1,11 @@
-import type { JobRecord, JobSurvey, SurveyResult } from "../../schemas/jobs.ts";
+import type { JobRecord } from "../../schemas/jobs.ts";
+import type { JobSurvey, SurveyResult } from "../../schemas/job-surveys.ts";
 
 export interface ComputedSurvey {
   readonly survey: JobSurvey;
   readonly result: SurveyResult;
+  /** Among all surveys of the job, counted from 1. */
+  readonly number: number;
   /** In words: "as found", "as left". */
   readonly name: string;
 }
@@ -22,14 +25,14 @@ export function computedSurveys({ surveys }: Pick<JobRecord, "surveys">): Comput
   return computed.map(({ survey, result, number }) => {
     const words = stageWords[survey.survey.stage];
     const alone = computed.filter((other) => other.survey.survey.stage === survey.survey.stage).length === 1;
-    return { survey, result, name: alone ? words : `${words}, survey ${number}` };
+    return { survey, result, number, name: alone ? words : `${words}, survey ${number}` };
   });
 }
 
-/** What a job's figures compare: the first survey as found (or the first at all), and the last one where it is another. */
+/** What a job's figures compare: the newest survey as found (or the first at all), and the last one where it is another. */
 export function comparedSurveys(record: Pick<JobRecord, "surveys">): ComputedSurvey[] {
   const computed = computedSurveys(record);
-  const before = computed.find(({ survey }) => survey.survey.stage === "as_found") ?? computed[0];
+  const before = computed.filter(({ survey }) => survey.survey.stage === "as_found").at(-1) ?? computed[0];
   const after = computed.at(-1);
   return [before, after === before ? undefined : after].filter((one) => one !== undefined);
 }

@@ -1,4 +1,4 @@
-import type { JobFlag } from "../../schemas/jobs.ts";
+import type { JobFlag } from "../../schemas/job-surveys.ts";
 import { flowKey, wrapWords } from "../flow-key.ts";
 import type { Figure, Shape } from "../shape.ts";
 
