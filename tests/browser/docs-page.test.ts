@@ -24,20 +24,20 @@ describe("the docs page", () => {
       const operation = page.locator(".opblock", { hasText: "/v1/bore-fits" }).first();
       await operation.waitFor();
 
-      await page.getByRole("button", { name: "Authorize" }).first().click();
+      await page.getByRole("button", { name: "Authorize", exact: true }).first().click();
       const dialog = page.locator(".dialog-ux");
       await dialog.locator("input").first().fill(key);
       await dialog
         .getByRole("button", { name: /^(Apply credentials|Authorize)$/ })
         .first()
         .click();
-      await dialog.getByRole("button", { name: "Close" }).first().click();
+      await dialog.getByRole("button", { name: "Close", exact: true }).first().click();
 
       await operation.locator(".opblock-summary-control").click();
-      await operation.getByRole("button", { name: "Try it out" }).click();
+      await operation.getByRole("button", { name: "Try it out", exact: true }).click();
       const body = operation.locator("textarea.body-param__text");
       expect(JSON.parse(await body.inputValue())).toHaveProperty("bores");
-      await operation.getByRole("button", { name: "Execute" }).click();
+      await operation.getByRole("button", { name: "Execute", exact: true }).click();
       const answered = operation.locator(".live-responses-table tr.response .response-col_status").first();
       await answered.waitFor();
       expect(await answered.innerText()).toMatch(/^201/);

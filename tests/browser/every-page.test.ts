@@ -21,7 +21,7 @@ describe("every page", () => {
     async (path) => {
       const { page, misdeeds } = await openPage(opened.browser, opened.service.url);
       await page.goto(opened.service.url + path, { waitUntil: "networkidle" });
-      await page.getByRole("region", { name: atRest }).waitFor();
+      await page.getByRole("region", { name: atRest, exact: true }).waitFor();
       expect(misdeeds).toEqual(noMisdeeds);
     },
   );
@@ -32,13 +32,16 @@ describe("every page", () => {
       await page.goto(opened.service.url + path, { waitUntil: "networkidle" });
       await page.getByRole("navigation", { name: "Guide", exact: true }).waitFor();
       expect([path, await page.getByRole("alert").count()]).toEqual([path, 0]);
-      expect([path, await page.getByRole("link", { name: "Sign in" }).count()]).toEqual([path, 1]);
+      expect([path, await page.getByRole("link", { name: "Sign in", exact: true }).count()]).toEqual([
+        path,
+        1,
+      ]);
     }
     expect(misdeeds).toEqual(noMisdeeds);
     await page.goto(`${opened.service.url}/guide/worked-example`);
     await page.getByRole("img", { name: /^Figure 2\. Plan and elevation/ }).waitFor();
     await page.goto(`${opened.service.url}/guide/codes#too_few_points`);
-    await page.getByRole("link", { name: "too_few_points" }).click();
+    await page.getByRole("link", { name: "too_few_points", exact: true }).click();
     await page.waitForURL(`${opened.service.url}/v1/problems/too_few_points`);
     expect(await page.getByRole("heading", { level: 1 }).innerText()).toBe("too_few_points");
   });
@@ -53,9 +56,9 @@ describe("every page", () => {
     for (const path of [...own, ...tried, ...records]) {
       await page.goto(opened.service.url + path, { waitUntil: "networkidle" });
       await page.getByRole("heading", { level: 1 }).waitFor();
-      if (path.startsWith("/calculations/")) await page.getByLabel("Title block").waitFor();
+      if (path.startsWith("/calculations/")) await page.getByLabel("Title block", { exact: true }).waitFor();
       if (path.startsWith("/try")) {
-        await page.getByRole("button", { name: "Send call" }).click();
+        await page.getByRole("button", { name: "Send call", exact: true }).click();
         await page.getByText("201 Created").waitFor();
       }
       expect([path, misdeeds]).toEqual([path, noMisdeeds]);
@@ -75,6 +78,28 @@ describe("every page", () => {
     }
   });
 
+  it.each([1100, 1280, 1600])(
+    "has its header in one row, %d pixels wide, for an administrator",
+    async (width) => {
+      const { page } = await openPage(opened.browser, opened.service.url);
+      await page.setViewportSize({ width, height: 800 });
+      await signIn(page, opened);
+      const header = page.getByRole("banner");
+      const inRow = [
+        ...(await header.getByRole("link").all()),
+        header.getByRole("button", { name: "Sign out" }),
+      ];
+      expect(inRow.length).toBeGreaterThanOrEqual(11);
+      const boxes = await Promise.all(inRow.map((each) => each.boundingBox()));
+      const middles = boxes.map((box) => (box ? box.y + box.height / 2 : Number.NaN));
+      expect(Math.max(...middles) - Math.min(...middles)).toBeLessThan(4); // px
+      const rights = boxes.map((box) => (box ? box.x + box.width : Number.NaN));
+      expect(Math.max(...rights)).toBeLessThanOrEqual(width);
+      const lefts = boxes.map((box) => box?.x ?? Number.NaN);
+      expect(lefts.slice(1).every((left, index) => left >= (rights[index] ?? Infinity))).toBe(true);
+    },
+  );
+
   it.each([380, 768, 1280])("fits the guide into a window %d pixels wide", async (width) => {
     const { page } = await openPage(opened.browser, opened.service.url);
     await page.setViewportSize({ width, height: 800 });
@@ -91,39 +116,39 @@ describe("every page", () => {
     await signIn(page, opened);
     await page.reload();
     await page.getByText("Maren Oake, admin").waitFor();
-    await page.getByRole("button", { name: "Sign out" }).click();
-    await page.getByRole("heading", { level: 1, name: "Sign in" }).waitFor();
+    await page.getByRole("button", { name: "Sign out", exact: true }).click();
+    await page.getByRole("heading", { level: 1, name: "Sign in", exact: true }).waitFor();
     await page.goto(`${opened.service.url}/keys`);
-    await page.getByLabel("Password").waitFor();
+    await page.getByLabel("Password", { exact: true }).waitFor();
     expect(new URL(page.url()).pathname).toBe("/sign-in");
   });
 
   it("puts the last filters back with the back button", async () => {
     const { page } = await openPage(opened.browser, opened.service.url);
     await signIn(page, opened);
-    await page.getByLabel("Kind").selectOption("shim-move");
-    await page.getByRole("button", { name: "Apply filters" }).click();
+    await page.getByLabel("Kind", { exact: true }).selectOption("shim-move");
+    await page.getByRole("button", { name: "Apply filters", exact: true }).click();
     await page.waitForURL(/kind=shim-move/);
-    await page.getByRole("link", { name: "Shim moves" }).first().click();
-    await page.getByLabel("Title block").waitFor();
+    await page.getByRole("link", { name: "Shim moves", exact: true }).first().click();
+    await page.getByLabel("Title block", { exact: true }).waitFor();
     await page.goBack();
-    await page.getByRole("heading", { level: 1, name: "Calculations" }).waitFor();
-    expect(await page.getByLabel("Kind").inputValue()).toBe("shim-move");
+    await page.getByRole("heading", { level: 1, name: "Calculations", exact: true }).waitFor();
+    expect(await page.getByLabel("Kind", { exact: true }).inputValue()).toBe("shim-move");
     await page.goBack();
     await page.waitForURL((url) => url.search === "");
-    expect(await page.getByLabel("Kind").inputValue()).toBe("");
+    expect(await page.getByLabel("Kind", { exact: true }).inputValue()).toBe("");
   });
 
   it("prints a record as a sheet without the console round it", async () => {
     const { page } = await openPage(opened.browser, opened.service.url);
     await signIn(page, opened);
-    await page.getByRole("link", { name: "Axis and deviations" }).first().click();
-    await page.getByLabel("Title block").waitFor();
+    await page.getByRole("link", { name: "Axis and deviations", exact: true }).first().click();
+    await page.getByLabel("Title block", { exact: true }).waitFor();
     await page.emulateMedia({ media: "print" });
-    expect(await page.getByRole("navigation", { name: "Main" }).isVisible()).toBe(false);
-    expect(await page.getByRole("button", { name: "Replay record" }).isVisible()).toBe(false);
-    expect(await page.getByLabel("Title block").isVisible()).toBe(true);
-    expect(await page.getByRole("region", { name: atRest }).isVisible()).toBe(true);
+    expect(await page.getByRole("navigation", { name: "Main", exact: true }).isVisible()).toBe(false);
+    expect(await page.getByRole("button", { name: "Replay record", exact: true }).isVisible()).toBe(false);
+    expect(await page.getByLabel("Title block", { exact: true }).isVisible()).toBe(true);
+    expect(await page.getByRole("region", { name: atRest, exact: true }).isVisible()).toBe(true);
     expect(await page.locator("svg.figure-printed").isVisible()).toBe(true);
     const pdf = await page.pdf({ preferCSSPageSize: true });
     expect(pdf.subarray(0, 5).toString()).toBe("%PDF-");

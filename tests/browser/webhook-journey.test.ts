@@ -1,6 +1,13 @@
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { sendMail } from "../../server/mail/send-mail.ts";
-import { noMisdeeds, openConsole, openPage, signIn, type ConsoleInBrowser } from "../support/browser.ts";
+import {
+  goTo,
+  noMisdeeds,
+  openConsole,
+  openPage,
+  signIn,
+  type ConsoleInBrowser,
+} from "../support/browser.ts";
 import { localWebhooks } from "../support/webhook-driver.ts";
 import { WebhookReceiver } from "../support/webhook-receiver.ts";
 
@@ -19,42 +26,42 @@ describe("a webhook, from its making to its end", () => {
   it("is added in the console, tested, found in its log, given a new secret, switched off and removed", async () => {
     const { page, misdeeds } = await openPage(opened.browser, opened.service.url);
     await signIn(page, opened);
-    await page.getByRole("link", { name: "Webhooks" }).click();
-    await page.getByRole("button", { name: "Add webhook" }).click();
-    const form = page.getByRole("dialog", { name: "Add webhook" });
-    await form.getByLabel("Name").fill("Outage planner");
-    await form.getByLabel("Address").fill("https://10.0.0.1/hook");
+    await goTo(page, "Webhooks");
+    await page.getByRole("button", { name: "Add webhook", exact: true }).click();
+    const form = page.getByRole("dialog", { name: "Add webhook", exact: true });
+    await form.getByLabel("Name", { exact: true }).fill("Outage planner");
+    await form.getByLabel("Address", { exact: true }).fill("https://10.0.0.1/hook");
     await form.getByRole("checkbox", { name: /A job was signed/ }).check();
-    await form.getByRole("button", { name: "Add webhook" }).click();
+    await form.getByRole("button", { name: "Add webhook", exact: true }).click();
     await form
       .getByText(/not on the public network/)
       .first()
       .waitFor();
-    await form.getByLabel("Address").fill(receiver.url);
-    await form.getByRole("button", { name: "Add webhook" }).click();
-    const added = page.getByRole("dialog", { name: "Webhook added" });
+    await form.getByLabel("Address", { exact: true }).fill(receiver.url);
+    await form.getByRole("button", { name: "Add webhook", exact: true }).click();
+    const added = page.getByRole("dialog", { name: "Webhook added", exact: true });
     const secret = await added.getByTestId("secret").innerText();
-    await added.getByRole("button", { name: "I have copied it" }).click();
+    await added.getByRole("button", { name: "I have copied it", exact: true }).click();
     expect(await page.content()).not.toContain(secret);
 
-    await page.getByRole("link", { name: "Outage planner" }).click();
-    await page.getByRole("button", { name: "Send a test" }).click();
+    await page.getByRole("link", { name: "Outage planner", exact: true }).click();
+    await page.getByRole("button", { name: "Send a test", exact: true }).click();
     await page.getByText(/^The test arrived: answered 204 in \d+ ms\.$/).waitFor();
     expect(receiver.received[0]?.signedWith(secret)).toBe(true);
     const row = page.getByRole("row", { name: /webhook\.test.*delivered/s });
-    await row.getByRole("button", { name: "Deliver webhook.test again" }).click();
+    await row.getByRole("button", { name: "Deliver webhook.test again", exact: true }).click();
     await page.getByRole("row", { name: /webhook\.test.*waits/s }).waitFor();
 
-    await page.getByRole("button", { name: "Replace secret" }).click();
-    await page.getByRole("dialog").getByRole("button", { name: "Replace secret" }).click();
-    const replaced = page.getByRole("dialog", { name: "Secret replaced" });
+    await page.getByRole("button", { name: "Replace secret", exact: true }).click();
+    await page.getByRole("dialog").getByRole("button", { name: "Replace secret", exact: true }).click();
+    const replaced = page.getByRole("dialog", { name: "Secret replaced", exact: true });
     expect(await replaced.getByTestId("secret").innerText()).not.toBe(secret);
-    await replaced.getByRole("button", { name: "I have copied it" }).click();
+    await replaced.getByRole("button", { name: "I have copied it", exact: true }).click();
 
-    await page.getByRole("button", { name: "Switch off" }).click();
-    await page.getByRole("button", { name: "Switch on" }).waitFor();
-    await page.getByRole("button", { name: "Remove webhook" }).click();
-    await page.getByRole("dialog").getByRole("button", { name: "Remove webhook" }).click();
+    await page.getByRole("button", { name: "Switch off", exact: true }).click();
+    await page.getByRole("button", { name: "Switch on", exact: true }).waitFor();
+    await page.getByRole("button", { name: "Remove webhook", exact: true }).click();
+    await page.getByRole("dialog").getByRole("button", { name: "Remove webhook", exact: true }).click();
     await page.getByText("No webhooks yet").waitFor();
     expect(misdeeds).toEqual(noMisdeeds);
   });
@@ -65,7 +72,7 @@ describe("a webhook, from its making to its end", () => {
     await sendMail(opened.service.deps, { organisationId: organisation.id, ...mail });
     const { page, misdeeds } = await openPage(opened.browser, opened.service.url);
     await signIn(page, opened);
-    await page.getByRole("link", { name: "Outbox" }).click();
+    await goTo(page, "Outbox");
     const row = page.getByRole("row", { name: /Report of unit 2 – as left/ });
     expect(await row.innerText()).toContain("owner@fellgate.example");
     const saved = page.waitForEvent("download");

@@ -19,14 +19,12 @@ export function Layout() {
       <SkipLink to={mainId} />
       <SheetZones />
       <div className="sheet-frame">
-        <header className="no-print flex flex-wrap items-center gap-x-8 gap-y-3 border-b border-ink px-4 py-3 md:px-8">
+        <header className="sheet-header no-print">
           <Link to={paths.calculations} className="py-1">
             <Wordmark />
           </Link>
           <Navigation />
-          <div className="ml-auto min-w-0">
-            <SessionStrip />
-          </div>
+          <SessionStrip />
         </header>
         <main id={mainId} tabIndex={-1} className="min-w-0 flex-1 px-4 py-6 outline-none md:px-8 md:py-8">
           <Outlet />

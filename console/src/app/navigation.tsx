@@ -13,8 +13,8 @@ export function Navigation() {
   const mayReadWebhooks = useMay("webhooks:read");
   const mayReadOutbox = useMay("outbox:read");
   return (
-    <nav aria-label="Main">
-      <ul className="flex flex-wrap gap-x-6 gap-y-1">
+    <nav aria-label="Main" className="header-pages">
+      <ul>
         {member && <PageLink to={paths.jobs}>Jobs</PageLink>}
         {member && <PageLink to={paths.machines}>Machines</PageLink>}
         {member && <PageLink to={paths.calculations}>Calculations</PageLink>}

@@ -55,6 +55,8 @@ export const apiPaths = {
   machineTemplate: "/v1/machine-template",
   jobs: "/v1/jobs",
   job: (id: string): string => `/v1/jobs/${encodeURIComponent(id)}`,
+  jobEvents: (id: string): string => `/v1/jobs/${encodeURIComponent(id)}/events`,
+  indications: (id: string): string => `/v1/jobs/${encodeURIComponent(id)}/indications`,
   meta: "/v1/meta",
   problems: "/v1/problems",
   problem: (code: string): string => `/v1/problems/${encodeURIComponent(code)}`,

@@ -1,5 +1,11 @@
 import type { z } from "zod";
-import { requestFile, sendRequest, type ServiceAnswer, type ServiceRequest } from "./send-request.ts";
+import {
+  openEventStream,
+  requestFile,
+  sendRequest,
+  type ServiceAnswer,
+  type ServiceRequest,
+} from "./send-request.ts";
 import { readSession, renewSession } from "./session-store.ts";
 import { NoAnswerError, ProblemError } from "./service-error.ts";
 
@@ -22,6 +28,14 @@ export function callAsMember(call: Call): Promise<ServiceAnswer> {
  */
 export function fetchFileAsMember(call: Call): Promise<Blob> {
   return asMember(call, requestFile);
+}
+
+/**
+ * A stream of events, opened in the member's name: the browser's own EventSource could not carry the token.
+ * @throws ProblemError, NoAnswerError
+ */
+export function openStreamAsMember(call: Call): Promise<ReadableStream<Uint8Array>> {
+  return asMember(call, openEventStream);
 }
 
 async function asMember<Result>(

@@ -12,6 +12,8 @@ export interface ServiceRequest {
   readonly ifMatch?: string;
   readonly idempotencyKey?: string;
   readonly accessToken?: string;
+  /** The event after which a stream goes on. */
+  readonly lastEventId?: string;
   readonly signal?: AbortSignal;
 }
 
@@ -51,6 +53,18 @@ export async function requestFile(request: ServiceRequest): Promise<Blob> {
   });
 }
 
+/**
+ * A stream of events, open as long as its reader wants it.
+ * @throws ProblemError for a refusal, NoAnswerError when no stream came back
+ */
+export async function openEventStream(request: ServiceRequest): Promise<ReadableStream<Uint8Array>> {
+  const response = await exchange(request, "text/event-stream, application/problem+json");
+  const requestId = response.headers.get("x-request-id");
+  if (!response.ok) throw refusalOf(response, await readBody(response, requestId), requestId);
+  if (response.body) return response.body;
+  throw new NoAnswerError("The service answered with no stream.", requestId);
+}
+
 function refusalOf(response: Response, body: unknown, requestId: string | null): Error {
   const problem = problemSchema.safeParse(body);
   if (problem.success) return new ProblemError(problem.data);
@@ -69,6 +83,7 @@ async function exchange(
   if (body !== undefined) headers.set("Content-Type", request.file?.mediaType ?? "application/json");
   if (request.ifMatch !== undefined) headers.set("If-Match", request.ifMatch);
   if (request.idempotencyKey !== undefined) headers.set("Idempotency-Key", request.idempotencyKey);
+  if (request.lastEventId !== undefined) headers.set("Last-Event-ID", request.lastEventId);
   if (request.accessToken !== undefined) headers.set("Authorization", `Bearer ${request.accessToken}`);
   try {
     return await fetch(request.path, {

@@ -15,6 +15,7 @@ export interface Call {
 
 export interface Answer {
   readonly status: number;
+  /** A stream is sent as it is, anything else as JSON. */
   readonly body: unknown;
 }
 
@@ -89,7 +90,8 @@ export class FakeService {
       throw new TypeError(`The test answers nothing to ${route}.`);
     }
     const { status, body } = await orAborted(Promise.resolve(answerer(call)), init.signal);
-    return new Response(status === 204 ? null : JSON.stringify(body), {
+    const sent = body instanceof ReadableStream ? body : status === 204 ? null : JSON.stringify(body);
+    return new Response(sent, {
       status,
       headers: { "x-request-id": "req-1" },
     });

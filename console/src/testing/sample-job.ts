@@ -92,8 +92,8 @@ export function sampleSurvey(isComputed = true): JobRecord["surveys"][number] {
     survey: { stage: "as_found", sameSetUp: false },
     flags: [{ code: "closing_reading_missing", detail: "brg-1 was not read once more.", station: "brg-1" }],
     readings: [
-      { ...entry(411), reading: reading("brg-1"), counts: true, sourceFile: null },
-      { ...entry(412), reading: reading("cas-1"), counts: false, sourceFile: null },
+      { ...entry(411), reading: reading("brg-1"), counts: true, standing: "in_use", sourceFile: null },
+      { ...entry(412), reading: reading("cas-1"), counts: false, standing: "withdrawn", sourceFile: null },
     ],
     result: isComputed
       ? ({
@@ -129,7 +129,20 @@ export function sampleJob(overrides: Partial<JobRecord> = {}): JobRecord {
         : { check: id, text, answer: null, by: null, at: null, remark: null },
     ),
     surveys: [sampleSurvey()],
-    plans: [{ ...entry(420), survey: surveyId, calculation: sampleId(202), result: resultOf("shim-move") }],
+    plans: [
+      {
+        ...entry(420),
+        survey: surveyId,
+        surveyResult: sampleId(413),
+        current: true,
+        calculation: sampleId(202),
+        from: {
+          reference: ["brg-1", "brg-2"],
+          stations: resultOf("axis-deviation")["stations"],
+        },
+        result: resultOf("shim-move"),
+      },
+    ],
     moves: [],
     confirmations: [],
     concessions: [],

@@ -139,6 +139,30 @@ describe("the guide's codes", () => {
   });
 });
 
+describe("the guide on jobs", () => {
+  it("has a line for every obstacle to a signature, with what to do", async () => {
+    serviceForStranger().on(openApi, example);
+    renderConsole("/guide/jobs");
+    const table = await screen.findByRole("table", { name: "What stands in the way of a signature" });
+    expect(within(table).getAllByRole("row").length).toBeGreaterThan(10);
+    const row = within(table).getByRole("row", { name: /^not_confirmed / });
+    expect(row.textContent).toContain("Confirm the last survey against the one as found.");
+    expect(screen.getByRole("img", { name: "Figure 1. The order of a job" })).toBeTruthy();
+    const refusals = screen.getByRole("table", { name: "What the call that signs refuses" });
+    expect(within(refusals).getByText("Enter your own password again.")).toBeTruthy();
+  });
+
+  it("says so when the document has no job that can be followed, and what failed when it cannot be read", async () => {
+    const service = serviceForStranger().on(openApi, refusal("unavailable"));
+    const { user } = renderConsole("/guide/jobs");
+    const alert = await screen.findByRole("alert");
+    expect(alert.textContent).toContain("The example could not be read.");
+    service.on(openApi, example);
+    await user.click(within(alert).getByRole("button", { name: "Try again" }));
+    expect(await screen.findByText("The documents have no job that can be followed")).toBeTruthy();
+  });
+});
+
 describe("the guide's worked example", () => {
   it("shows its shape while the document is read", async () => {
     const held = heldAnswer(example);

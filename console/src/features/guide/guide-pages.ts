@@ -14,6 +14,11 @@ export const guidePages = [
     lead: "Which way is positive, from which end a bore is seen, and which units a number is in.",
   },
   {
+    slug: "jobs",
+    title: "Jobs",
+    lead: "What a job is made of, the order of its work, why its signature is refused, and one followed in numbers.",
+  },
+  {
     slug: "worked-example",
     title: "Worked example",
     lead: "One call followed by hand, from gauge readings to shims.",

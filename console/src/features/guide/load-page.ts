@@ -6,6 +6,7 @@ const methodPages = () => import("./components/method-pages.tsx");
 /** Loads what stands on a page of the guide when it is first opened. */
 export const loadPage: Readonly<Record<GuideSlug, () => Promise<ComponentType>>> = {
   conventions: async () => (await import("./components/conventions.tsx")).Conventions,
+  jobs: async () => (await import("./components/jobs.tsx")).Jobs,
   "worked-example": async () => (await import("./components/worked-example.tsx")).WorkedExample,
   "cold-targets": async () => (await methodPages()).ColdTargets,
   "measurement-plans": async () => (await methodPages()).MeasurementPlans,

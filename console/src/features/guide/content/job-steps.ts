@@ -51,11 +51,12 @@ export const jobSteps: readonly JobStep[] = [
   {
     does: "Move in small steps, each locked before the next, watching the neighbours.",
     kind: null,
-    slug: "moves",
+    slug: "jobs",
   },
   {
     does: "Measure again, the reference stations first, and confirm what moved.",
     kind: "confirmation",
     slug: "confirmations",
   },
+  { does: "Settle what is open, sign by name, and hand over the report.", kind: null, slug: "jobs" },
 ];

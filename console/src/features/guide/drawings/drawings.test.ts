@@ -6,6 +6,7 @@ import { drawCrossSection } from "./draw-cross-section.ts";
 import { drawDeviation } from "./draw-deviation.ts";
 import { drawForms } from "./draw-forms.ts";
 import { drawGuard } from "./draw-guard.ts";
+import { drawJobOrder } from "./draw-job-order.ts";
 import { drawMachine } from "./draw-machine.ts";
 import { drawRoll } from "./draw-roll.ts";
 import { drawShimSigns, padChange } from "./draw-shim-signs.ts";
@@ -20,6 +21,7 @@ const drawings: readonly (readonly [string, (width: number) => Figure])[] = [
   ["criteria", drawCriteria],
   ["guarded verdicts", drawGuard],
   ["cold targets", drawColdTarget],
+  ["the order of a job", drawJobOrder],
 ];
 /** A phone, a sheet of paper, a wide screen. */
 const widths = [80, 172, 320];

@@ -26,7 +26,7 @@ export function put(value: number, decimals: number): string {
 export function tabulateChecks(
   caption: string,
   checks: readonly Check[],
-  unit: string,
+  unit: string | null,
   decimals: number,
 ): FigureTable {
   return {

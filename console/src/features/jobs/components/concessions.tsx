@@ -90,7 +90,7 @@ export function AxisAcceptances({ record, mayAct }: SectionProps) {
           {record.axisAcceptances.map((one) => (
             <NamedEntry
               key={one.id}
-              what={`axis of the survey ${computed.find(({ survey }) => survey.id === one.survey)?.name ?? "not computed"}`}
+              what={`axis of the survey ${computed.find(({ survey }) => survey.id === one.survey)?.name ?? "not computed"}${one.current ? "" : ", which was computed again since"}`}
               by={one.name}
               reason={one.reason}
               at={one.createdAt}

@@ -28,6 +28,11 @@ export function Confirmations({ record, mayAct }: { record: JobRecord; mayAct: b
             {nameOf(confirmation.after)} against {nameOf(confirmation.before)}, by{" "}
             {authorName(confirmation.author)} <Instant at={confirmation.createdAt} />
           </p>
+          {!confirmation.current && (
+            <p className="font-semibold text-signal">
+              A survey of the two was computed again since, or its readings have changed. Confirm again.
+            </p>
+          )}
           <ConfirmationResult request={{ units: { axial, bore, offset } }} result={confirmation.result} />
         </div>
       ))}

@@ -1,4 +1,4 @@
-import type { JobFlag } from "../../../../../shared/schemas/jobs.ts";
+import type { JobFlag } from "../../../../../shared/schemas/job-surveys.ts";
 
 /** What a person must know or do: said once each, in the signal tone. */
 export function Flags({ flags, title = "Flags" }: { flags: readonly JobFlag[]; title?: string }) {

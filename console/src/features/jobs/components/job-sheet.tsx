@@ -4,6 +4,7 @@ import { Attachments } from "./attachments.tsx";
 import { Comments } from "./comments.tsx";
 import { AxisAcceptances, Concessions } from "./concessions.tsx";
 import { Confirmations } from "./confirmations.tsx";
+import { FollowMove } from "./follow-move.tsx";
 import { Flags } from "./flags.tsx";
 import { MakerCautions } from "../../machines/components/maker-cautions.tsx";
 import { JobDetails } from "./job-details.tsx";
@@ -46,6 +47,7 @@ export function JobSheet({ record, organisation, isNewest, mayWrite }: JobSheetP
       <SetUpChecks record={record} mayAct={mayAct} />
       <Surveys record={record} mayAct={mayAct} />
       <Plans record={record} mayAct={mayAct} />
+      {isNewest && <FollowMove record={record} mayAct={mayAct} />}
       <Moves record={record} mayAct={mayAct} />
       <Confirmations record={record} mayAct={mayAct} />
       <Concessions record={record} mayAct={mayAct} />

@@ -1,4 +1,5 @@
-import type { JobRecord, StoredReading } from "../../../../../shared/schemas/jobs.ts";
+import type { JobRecord } from "../../../../../shared/schemas/jobs.ts";
+import type { StoredReading } from "../../../../../shared/schemas/job-surveys.ts";
 import type { Author } from "../../../../../shared/schemas/machines.ts";
 
 export const stageChoices = [

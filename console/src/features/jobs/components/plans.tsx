@@ -81,21 +81,17 @@ function planFrom(data: FormData): unknown {
 }
 
 function PlanSheet({ record, plan }: { record: JobRecord; plan: Plan }) {
-  const call = moveCallOf(record, plan.survey);
-  const survey = record.surveys.find(({ id }) => id === plan.survey);
-  const isOutdated =
-    survey?.result !== null && survey?.result !== undefined && survey.result.createdAt > plan.createdAt;
   return (
     <div className="sheet-stack">
       <p className="text-xs text-muted">
         Planned by {authorName(plan.author)} <Instant at={plan.createdAt} />
       </p>
-      {isOutdated && (
+      {!plan.current && (
         <p className="font-semibold text-signal">
-          The survey was computed again after this plan: “found” below is of the newer result. Plan again.
+          The survey was computed again after this plan, or its readings have changed. Plan again.
         </p>
       )}
-      {call && <MoveSheet call={call} result={plan.result} />}
+      <MoveSheet call={moveCallOf(record, plan)} result={plan.result} />
     </div>
   );
 }

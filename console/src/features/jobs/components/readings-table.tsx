@@ -1,5 +1,5 @@
 import type { ReactNode } from "react";
-import type { StoredReading } from "../../../../../shared/schemas/jobs.ts";
+import type { StoredReading } from "../../../../../shared/schemas/job-surveys.ts";
 import { DataTable, type DataColumn } from "../../../components/ui/data-table.tsx";
 import { Instant } from "../../../components/ui/instant.tsx";
 import { authorName, readingWords } from "./job-words.ts";

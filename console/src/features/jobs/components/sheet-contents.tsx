@@ -3,6 +3,7 @@ const sections = [
   ["checks", "Set-up checks"],
   ["surveys", "Surveys"],
   ["plan", "Plan"],
+  ["follow", "Follow a move"],
   ["moves", "Moves"],
   ["confirmation", "Confirmation"],
   ["concessions", "Concessions"],

@@ -53,7 +53,11 @@ function SignForm({ job, onDone }: { job: string; onDone: () => void }) {
     if (found) return;
     sign.mutate(undefined, {
       onSuccess: onDone,
-      onError: (error) => setFaults(faultsAtPointers(error)),
+      onError: (error) => {
+        setFaults(faultsAtPointers(error));
+        if (isWrongPassword(error))
+          form.current?.querySelector<HTMLInputElement>("[type=password]")?.select();
+      },
     });
   };
   return (
@@ -76,7 +80,12 @@ function SignForm({ job, onDone }: { job: string; onDone: () => void }) {
         autoComplete="current-password"
         error={faultAt(faults, "/password")}
       />
-      {sign.isError && (
+      {isWrongPassword(sign.error) && (
+        <p role="alert" className="font-semibold text-signal">
+          The job is not signed. Type your own password again.
+        </p>
+      )}
+      {sign.isError && !isWrongPassword(sign.error) && (
         <Failure error={sign.error} what="The job is not signed.">
           {sign.error instanceof ProblemError && (
             <ul className="mt-2 grid gap-1">
@@ -95,4 +104,9 @@ function SignForm({ job, onDone }: { job: string; onDone: () => void }) {
       </div>
     </form>
   );
+}
+
+/** Said at its field: nothing has failed, and nobody has to look up the request. */
+function isWrongPassword(error: unknown): boolean {
+  return error instanceof ProblemError && error.problem.code === "password_wrong";
 }

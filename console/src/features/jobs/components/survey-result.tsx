@@ -4,7 +4,8 @@ import { planElevationOf, surveyOf } from "../../../../../shared/figures/plan-el
 import { tabulateAxis } from "../../../../../shared/figures/plan-elevation/tabulate-axis.ts";
 import { tabulatePlanElevation } from "../../../../../shared/figures/plan-elevation/tabulate-plan-elevation.ts";
 import { decimalsAcross, writeSigned } from "../../../../../shared/figures/write-number.ts";
-import type { JobRecord, JobSurvey, SurveyResult as Result } from "../../../../../shared/schemas/jobs.ts";
+import type { JobRecord } from "../../../../../shared/schemas/jobs.ts";
+import type { JobSurvey, SurveyResult as Result } from "../../../../../shared/schemas/job-surveys.ts";
 import { NumberTable } from "../../../components/ui/number-table.tsx";
 import { VerdictSummary } from "../../results/components/verdict-summary.tsx";
 import { Warnings, type PlacedWarning } from "../../results/components/warnings.tsx";

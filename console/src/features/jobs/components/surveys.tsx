@@ -1,5 +1,6 @@
 import { surveyName } from "../../../../../shared/figures/job/compared-surveys.ts";
-import type { JobRecord, JobSurvey } from "../../../../../shared/schemas/jobs.ts";
+import type { JobRecord } from "../../../../../shared/schemas/jobs.ts";
+import type { JobSurvey } from "../../../../../shared/schemas/job-surveys.ts";
 import { Button } from "../../../components/ui/button.tsx";
 import { Disclosure } from "../../../components/ui/disclosure.tsx";
 import { Failure } from "../../../components/ui/failure.tsx";

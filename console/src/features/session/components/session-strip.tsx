@@ -19,17 +19,20 @@ export function SessionStrip() {
     },
   });
   if (!member) return <WayIn />;
+  const who = `${member.name}, ${member.role}`;
   return (
-    <div className="flex min-w-0 flex-wrap items-center gap-x-4 gap-y-1">
+    <div className="header-session">
       <p className="min-w-0">
-        <span className="field-name block break-words">{member.organisation.name}</span>
-        <span className="break-words">
-          {member.name}, {member.role}
+        <span className="field-name block truncate" title={member.organisation.name}>
+          {member.organisation.name}
+        </span>
+        <span className="block truncate" title={who}>
+          {who}
         </span>
       </p>
       <button
         type="button"
-        className="link cursor-pointer py-1 disabled:opacity-50"
+        className="link flex-none cursor-pointer py-1 disabled:opacity-50"
         disabled={mutation.isPending}
         onClick={() => mutation.mutate()}
       >
@@ -46,7 +49,7 @@ function WayIn() {
   const { pathname } = useLocation();
   if (session.status !== "closed" || !pathname.startsWith(paths.guide)) return null;
   return (
-    <Link className="link" to={signInAddress(pathname)}>
+    <Link className="link ml-auto" to={signInAddress(pathname)}>
       Sign in
     </Link>
   );
