@@ -37,7 +37,7 @@ console.log(`Job ${job.id}`);
 // Set-up checks before the first reading: a survey without them is marked on every report.
 for (const check of read("jobs/checks.json") as object[]) await add("/checks", check);
 
-const asFound = await survey("as_found", false, read("jobs/as-found-readings.json"));
+const asFound = await survey("as-found");
 const [plan] = (await add("/plans", { survey: asFound })).ids;
 console.log(`Plan ${plan}`);
 
@@ -47,7 +47,7 @@ for (const move of read("jobs/moves.json") as { component: string }[]) {
   console.log(`Moved ${move.component}${flags.map(({ detail }) => `; ${detail}`).join("")}`);
 }
 
-const asLeft = await survey("as_left", true, read("jobs/as-left-readings.json"));
+const asLeft = await survey("as-left");
 await add("/confirmations", { before: asFound, after: asLeft });
 
 const record = await get<{ signOff: { ready: boolean; obstacles: { detail: string }[] } }>(
@@ -68,16 +68,17 @@ for (const format of ["pdf", "xlsx", "dxf", "json"]) {
   console.log(`Report ${file}`);
 }
 
-async function survey(stage: string, sameSetUp: boolean, readings: unknown): Promise<string> {
-  const [id = ""] = (await add("/surveys", { stage, sameSetUp, instrument: "gauge-1" })).ids;
-  await add(`/surveys/${id}/readings`, { readings });
+/** A survey under its conditions, with its readings, computed. */
+async function survey(name: string): Promise<string> {
+  const [id = ""] = (await add("/surveys", read(`jobs/${name}-survey.json`))).ids;
+  await add(`/surveys/${id}/readings`, { readings: read(`jobs/${name}-readings.json`) });
   await add(`/surveys/${id}/results`);
   const { surveys } = await get<{
     surveys: { id: string; result: { summary: Record<string, number> }; flags: { detail: string }[] }[];
   }>(`/v1/jobs/${job.id}`);
   const computed = surveys.find((one) => one.id === id);
   const { conforms, undecided, exceeds } = computed?.result.summary ?? {};
-  console.log(`Survey ${stage}: ${conforms} conform, ${undecided} undecided, ${exceeds} exceed`);
+  console.log(`Survey ${name}: ${conforms} conform, ${undecided} undecided, ${exceeds} exceed`);
   for (const { detail } of computed?.flags ?? []) console.log(`  ${detail}`);
   return id;
 }

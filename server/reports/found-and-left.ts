@@ -1,14 +1,13 @@
-import type { JobRecord, JobSurvey, SurveyResult } from "../../shared/schemas/jobs.ts";
+import {
+  computedSurveys,
+  surveyName,
+  type ComputedSurvey,
+} from "../../shared/figures/job/compared-surveys.ts";
+import type { JobRecord } from "../../shared/schemas/jobs.ts";
 import type { MachineStation } from "../../shared/schemas/machines.ts";
 
-type FitAnswer = SurveyResult["fits"][number];
-type StationAnswer = SurveyResult["stations"][number];
-
-/** A survey with what it came to. */
-export interface ComputedSurvey {
-  readonly survey: JobSurvey;
-  readonly result: SurveyResult;
-}
+type FitAnswer = ComputedSurvey["result"]["fits"][number];
+type StationAnswer = ComputedSurvey["result"]["stations"][number];
 
 /** One bore of a computed survey: as drawn, as fitted, as judged. Lengths in the machine's units. */
 export interface SurveyedBore {
@@ -21,12 +20,39 @@ export interface SurveyedBore {
   readonly axis: { readonly h: number; readonly v: number };
 }
 
-/** The newest computed survey of a stage; null where there is none. */
-export function computedSurvey(record: JobRecord, stage: "as_found" | "as_left"): ComputedSurvey | null {
-  const found = record.surveys
-    .filter(({ survey, result }) => survey.stage === stage && result !== null)
-    .at(-1);
-  return found?.result ? { survey: found, result: found.result } : null;
+/** The computed surveys of a job as its reports set them side by side. */
+export interface ReportedSurveys {
+  /** The newest of its stage; null where there is none. */
+  readonly found: ComputedSurvey | null;
+  /** All others in order: after a step, or taken again since. */
+  readonly others: readonly ComputedSurvey[];
+  /** The newest of its stage; null where there is none. */
+  readonly left: ComputedSurvey | null;
+}
+
+export function reportedSurveys(record: JobRecord): ReportedSurveys {
+  const all = computedSurveys(record);
+  const newest = (stage: "as_found" | "as_left") =>
+    all.filter(({ survey }) => survey.survey.stage === stage).at(-1) ?? null;
+  const [found, left] = [newest("as_found"), newest("as_left")];
+  return { found, others: all.filter((survey) => survey !== found && survey !== left), left };
+}
+
+/** What a survey that is neither as found nor as left is called: its number, its label and its stage. */
+export function numberedName({ number, survey }: ComputedSurvey): string {
+  return `survey ${number}, ${surveyName(survey)}`;
+}
+
+/** The concession that a station carries as this survey shows it: where no later one has measured it again. */
+export function concessionOf(
+  record: JobRecord,
+  { number }: ComputedSurvey,
+  stationId: string,
+): JobRecord["concessions"][number] | null {
+  const isLatest = !computedSurveys(record).some(
+    (other) => other.number > number && other.result.stations.some(({ id }) => id === stationId),
+  );
+  return isLatest ? (record.concessions.filter(({ station }) => station === stationId).at(-1) ?? null) : null;
 }
 
 /** Every bore of the survey, in the order of the machine's stations. */

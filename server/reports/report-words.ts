@@ -1,4 +1,5 @@
 import type { JobRecord } from "../../shared/schemas/jobs.ts";
+import type { StoredReading } from "../../shared/schemas/job-surveys.ts";
 import type { Author } from "../../shared/schemas/machines.ts";
 import { draftMark } from "./report-format.ts";
 
@@ -10,6 +11,13 @@ export function signatureWords({ signature }: JobRecord): string {
 export function authorName({ member, key }: Author): string {
   return member?.name ?? key?.name ?? "";
 }
+
+/** Whether a reading counts, and why not. */
+export const countsWords = {
+  in_use: "yes",
+  superseded: "no, read again",
+  withdrawn: "no, withdrawn",
+} as const satisfies Record<StoredReading["standing"], string>;
 
 /** The title block's owner: the job's, or the machine's. */
 export function ownerOf({ details, machine }: JobRecord): string | null {
@@ -27,4 +35,27 @@ export function verdictWords({ details }: JobRecord): string {
   return details.verdict?.rule === "simple"
     ? "Simple rule: the deviation alone against the tolerance."
     : `Guarded rule (JCGM 106): conforms when |d| + U is within the tolerance, exceeds when |d| - U is beyond it, else undecided. U at level ${level}.`;
+}
+
+/** What must be known of something made from a survey that has changed since. */
+export const outdatedWords = {
+  plan: "The survey was computed again, or read again, since: plan again.",
+  confirmation: "A survey was computed again, or read again, since: confirm again.",
+} as const;
+
+/** Which way is positive, on every sheet of numbers. */
+export const signWords = "h is positive to the right and v up, seen looking downstream.";
+
+/** Concessions in one line; null where there is none. */
+export function concessionWords({ concessions }: JobRecord): string | null {
+  if (concessions.length === 0) return null;
+  return `Concessions: ${concessions.map(({ station, name }) => `${station} by ${name}`).join("; ")}.`;
+}
+
+/** The axis that the job asks for: its method, and what it is laid through. */
+export function axisWords({ details, machine }: JobRecord): string {
+  const { axis } = details;
+  const method = (axis?.method ?? "least_squares").replaceAll("_", " ");
+  const through = axis ? (axis.through ?? []) : (machine.reference ?? []);
+  return through.length === 0 ? method : `${method}, through ${through.join(", ")}`;
 }

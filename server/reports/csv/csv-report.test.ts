@@ -2,7 +2,9 @@ import { parse } from "csv-parse/sync";
 import { describe, expect, it } from "vitest";
 import { hostileJob, oneStationJob } from "../../../tests/support/hostile-job.ts";
 import { fellgateReport, writeFellgateJob } from "../../../tests/support/job-record.ts";
+import { stressJob } from "../../../tests/support/stress-job.ts";
 import type { JobWriter } from "../../../tests/support/job-writer.ts";
+import { asFoundReadings } from "../../demo/fellgate-job.ts";
 import { writeCsv } from "../../spreadsheets/write-csv.ts";
 import { csvReport } from "./csv-report.ts";
 
@@ -16,6 +18,7 @@ describe("the table of a job", () => {
     ["just begun", () => writeFellgateJob("started")],
     ["of one station", oneStationJob],
     ["with names that are traps", hostileJob],
+    ["as large as they come", stressJob],
   ])("read by csv-parse and written again is the same bytes: %s", async (_, begin) => {
     const text = await textOf(begin());
     const rows = parse(text, { record_delimiter: "\r\n" });
@@ -37,6 +40,25 @@ describe("the table of a job", () => {
     }
     expect(new Set(rows.map((row) => row["record hash"]))).toEqual(new Set([context.recordHash]));
     expect(rows[0]?.["status"]).toBe("Signed by Ines Alder on 2026-11-04");
+  });
+
+  it("has columns for surveys after steps, between as found and as left", async () => {
+    const job = writeFellgateJob("found");
+    const setUp = { sameSetUp: true, instrument: "gauge-1" };
+    const some = asFoundReadings().filter(({ station }) =>
+      ["brg-1", "cas-1", "cas-2", "shr-3"].includes(station),
+    );
+    job.survey({ stage: "after_step", ...setUp, label: "Casing set" }, some);
+    job.survey({ stage: "as_left", ...setUp }, asFoundReadings());
+    const rows = records(await textOf(job));
+    const [, step] = job.record().surveys;
+    const heading = "survey 2, Casing set (after a step) deviation v (mm)";
+    const headings = Object.keys(rows[0] ?? {});
+    expect(headings.indexOf(heading)).toBeGreaterThan(headings.indexOf("as found verdict"));
+    expect(headings.indexOf(heading)).toBeLessThan(headings.indexOf("as left deviation v (mm)"));
+    const known = new Map(step?.result?.stations.map(({ id, deviation }) => [id, String(deviation.v)]));
+    expect(known.size).toBe(4);
+    expect(rows.map((row) => row[heading])).toEqual(rows.map(({ station = "" }) => known.get(station) ?? ""));
   });
 
   it("leaves what is missing empty, never 0", async () => {

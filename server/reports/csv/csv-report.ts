@@ -1,11 +1,12 @@
+import type { ComputedSurvey } from "../../../shared/figures/job/compared-surveys.ts";
 import type { JobRecord } from "../../../shared/schemas/jobs.ts";
 import type { MachineStation } from "../../../shared/schemas/machines.ts";
 import { writeCsv } from "../../spreadsheets/write-csv.ts";
-import { allowedBy, boresOf, computedSurvey, type SurveyedBore } from "../found-and-left.ts";
+import { allowedBy, boresOf, numberedName, reportedSurveys, type SurveyedBore } from "../found-and-left.ts";
 import type { ReportContext, ReportFormat } from "../report-format.ts";
 import { signatureWords } from "../report-words.ts";
 
-/** One row a station, as found and as left side by side, every number in full. */
+/** One row a station, as found, every survey after a step and as left side by side, every number in full. */
 export const csvReport: ReportFormat = {
   extension: "csv",
   mediaType: "text/csv; charset=utf-8",
@@ -23,6 +24,7 @@ interface Column {
 
 function columnsOf(record: JobRecord, { recordHash, engineVersion }: ReportContext): Column[] {
   const { axial, bore, offset } = record.machine.units;
+  const { found, others, left } = reportedSurveys(record);
   const always = (heading: string, value: string | number): Column => ({ heading, value: () => value });
   const least = (station: MachineStation, plane: "h" | "v", side: 0 | 1) => {
     const allowed = allowedBy(station);
@@ -47,8 +49,9 @@ function columnsOf(record: JobRecord, { recordHash, engineVersion }: ReportConte
     { heading: `tolerance h most (${offset})`, value: (station) => least(station, "h", 1) },
     { heading: `tolerance v least (${offset})`, value: (station) => least(station, "v", 0) },
     { heading: `tolerance v most (${offset})`, value: (station) => least(station, "v", 1) },
-    ...surveyColumns(record, "as_found"),
-    ...surveyColumns(record, "as_left"),
+    ...surveyColumns(record, "as found", found),
+    ...others.flatMap((survey) => surveyColumns(record, numberedName(survey), survey)),
+    ...surveyColumns(record, "as left", left),
     {
       heading: "concession",
       value: ({ id }) => {
@@ -74,13 +77,11 @@ function columnsOf(record: JobRecord, { recordHash, engineVersion }: ReportConte
 }
 
 /** Empty where the survey was not computed, or has not this station. */
-function surveyColumns(record: JobRecord, stage: "as_found" | "as_left"): Column[] {
+function surveyColumns(record: JobRecord, words: string, computed: ComputedSurvey | null): Column[] {
   const { offset, bore: diameterUnit } = record.machine.units;
-  const computed = computedSurvey(record, stage);
   const bores = new Map(
     (computed ? boresOf(record, computed) : []).map((bore) => [bore.station.id, bore] as const),
   );
-  const words = stage.replace("_", " ");
   const column = (heading: string, value: (bore: SurveyedBore) => string | number | null | undefined) => ({
     heading: `${words} ${heading}`,
     value: ({ id }: MachineStation) => {

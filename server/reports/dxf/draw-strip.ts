@@ -1,5 +1,5 @@
 import type { Drawing, Place } from "./drawing.ts";
-import { centreMm, type SheetScale } from "./sheet-scale.ts";
+import { centreMm, writeTimes, type SheetScale } from "./sheet-scale.ts";
 import type { DrawnMachine, DrawnSurvey } from "./drawn-machine.ts";
 
 type Plane = "h" | "v";
@@ -24,7 +24,7 @@ export function drawStrip(drawing: Drawing, machine: DrawnMachine, scale: SheetS
   drawing.text(
     "TEXT",
     [zLow, middle + reach + (plane === "v" ? scale.nameRoom : 0) + 2 * letter],
-    plane === "v" ? "ELEVATION: v over z, up is high" : "PLAN: h over z, seen from above, down is right",
+    `${plane === "v" ? "ELEVATION: v over z, up is high" : "PLAN: h over z, seen from above, down is right"}; downstream to the right; offsets ${writeTimes(scale.exaggeration)} as large`,
     { height: 1.6 * letter },
   );
   for (const { zMm } of machine.stations)

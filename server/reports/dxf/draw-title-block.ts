@@ -1,8 +1,9 @@
 import type { JobRecord } from "../../../shared/schemas/jobs.ts";
 import { dateOf, draftMark, type ReportContext } from "../report-format.ts";
-import { creatorOf, ownerOf, signatureWords } from "../report-words.ts";
-import { Drawing } from "./drawing.ts";
-import type { SheetScale } from "./sheet-scale.ts";
+import { axisWords, creatorOf, ownerOf, signatureWords, verdictWords } from "../report-words.ts";
+import { numberedName, reportedSurveys } from "../found-and-left.ts";
+import { lineSpacing, linesIn, type Drawing } from "./drawing.ts";
+import { writeTimes, type SheetScale } from "./sheet-scale.ts";
 
 type Field = readonly [name: string, value: string];
 
@@ -13,17 +14,17 @@ export function drawTitleBlock(
   context: ReportContext,
   scale: SheetScale,
 ): void {
-  const { letter, exaggeration } = scale;
+  const { letter } = scale;
   const { left, top, width } = scale.titleBlock;
   const middle = left + 0.62 * width;
-  const fields = fieldsOf(record, context, exaggeration).map(([name, value]) => `${name}: ${value}`);
+  const fields = fieldsOf(record, context, scale).map(([name, value]) => `${name}: ${value}`);
   drawColumn(drawing, letter, [left, middle, top], fields);
   drawColumn(
     drawing,
     letter,
     [middle, left + width, top],
     [
-      ...record.flags.map(({ detail }) => `Flag: ${detail}`),
+      ...[...new Set(record.flags.map(({ detail }) => detail))].map((detail) => `Flag: ${detail}`),
       ...record.cautions.map(({ text }) => `Caution: ${text}`),
     ],
   );
@@ -42,13 +43,14 @@ function drawColumn(
   [left, right, top]: readonly [number, number, number],
   rows: readonly string[],
 ): void {
-  const signs = Math.floor((right - left - 2 * letter) / (letter * Drawing.signWidth));
   let y = top;
-  for (const lines of rows.map((row) => wrap(row, signs))) {
-    const bottom = y - (lines.length * 1.7 + 0.6) * letter;
+  for (const lines of rows.map((row) => linesIn(right - left, letter, row))) {
+    const bottom = y - (lines.length * lineSpacing + 0.6) * letter;
     drawing.box("TITLE-BLOCK", [left, bottom], [right, y]);
     lines.forEach((line, index) => {
-      drawing.text("TITLE-BLOCK", [left + letter, y - (index + 1) * 1.7 * letter], line, { height: letter });
+      drawing.text("TITLE-BLOCK", [left + letter, y - (index + 1) * lineSpacing * letter], line, {
+        height: letter,
+      });
     });
     y = bottom;
   }
@@ -58,7 +60,7 @@ function drawColumn(
 function fieldsOf(
   record: JobRecord,
   { recordHash, engineVersion }: ReportContext,
-  exaggeration: number,
+  { exaggeration, endViews }: SheetScale,
 ): Field[] {
   const { machine, details, signature } = record;
   const { axial, offset } = machine.units;
@@ -69,7 +71,7 @@ function fieldsOf(
   const fields: readonly (readonly [string, string | null | undefined])[] = [
     ["Legal owner", ownerOf(record)],
     ["Title", `${machine.name}: bore alignment, ${record.title}`],
-    ["Document type", "Alignment record: elevation, plan and end view"],
+    ["Document type", "Alignment record: elevation, plan and end views"],
     ["Identification number", record.id],
     ["Revision index", String(record.revision)],
     ["Date of issue", dateOf(record).toISOString().slice(0, 10)],
@@ -82,8 +84,10 @@ function fieldsOf(
     ["Units", `mm${converted}`],
     [
       "Scale",
-      `1:1 along z; across it, and in the end view, ${Number(exaggeration.toPrecision(6))} times as large. Elevation and plan show target + deviation, each survey from its own axis.`,
+      `1:1 along z; across it ${writeTimes(exaggeration)} as large, in the end views ${writeTimes(endViews.exaggeration)}. Elevation and plan show target + deviation, each survey from its own axis.`,
     ],
+    ["Axis", axisWords(record)],
+    ["Verdicts", verdictWords(record)],
     ["Surveys", surveyWords(record)],
     ["Record hash", recordHash],
     ["Engine version", engineVersion],
@@ -91,33 +95,12 @@ function fieldsOf(
   return fields.flatMap(([name, value]) => (value ? [[name, value] as const] : []));
 }
 
-function surveyWords({ surveys }: JobRecord): string {
-  const has = (stage: string) => surveys.some(({ survey, result }) => survey.stage === stage && result);
+function surveyWords(record: JobRecord): string {
+  const { found, others, left } = reportedSurveys(record);
   const drawn = [
-    ...(has("as_found") ? ["as found on layer AS-FOUND"] : []),
-    ...(has("as_left") ? ["as left on layer AS-LEFT"] : []),
+    ...(found ? ["as found on layer AS-FOUND"] : []),
+    ...(left ? ["as left on layer AS-LEFT"] : []),
+    ...others.map((survey) => `${numberedName(survey)}, in the other forms of the report`),
   ];
-  return drawn.length > 0 ? drawn.join(", ") : "none has been computed";
-}
-
-/** Lines of at most so many signs, broken between words where that can be. */
-export function wrap(text: string, signs: number): string[] {
-  const lines: string[] = [];
-  let line = "";
-  for (const word of text.split(/\s+/)) {
-    for (const part of pieces(word, signs)) {
-      if (line !== "" && line.length + 1 + part.length > signs) {
-        lines.push(line);
-        line = part;
-      } else line = line === "" ? part : `${line} ${part}`;
-    }
-  }
-  return line === "" ? lines : [...lines, line];
-}
-
-function pieces(word: string, signs: number): string[] {
-  const all = [...word];
-  return Array.from({ length: Math.ceil(all.length / signs) }, (_, index) =>
-    all.slice(index * signs, (index + 1) * signs).join(""),
-  );
+  return drawn.length > 0 ? drawn.join("; ") : "none has been computed";
 }

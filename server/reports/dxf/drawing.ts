@@ -7,6 +7,7 @@ import {
   point2d,
   point3d,
 } from "@tarikjabiri/dxf";
+import { wrapText } from "../wrap-text.ts";
 
 /** Every layer, with its colour by the AutoCAD colour index and its line type. */
 const layers = {
@@ -39,6 +40,16 @@ const alignments = {
   middle: TextHorizontalAlignment.Center,
   right: TextHorizontalAlignment.Right,
 } as const;
+
+/** Between baselines, in heights of a letter. */
+export const lineSpacing = 1.7;
+
+/** Lines of `text` that fit a width, a letter's width left free on both sides; none of empty text. */
+export function linesIn(width: number, letter: number, text: string): string[] {
+  const room = (width - 2 * letter) / (letter * Drawing.signWidth);
+  const words = text.replaceAll(/\s+/g, " ").trim();
+  return words === "" ? [] : wrapText(words, room);
+}
 
 /** A drawing in millimetres. Coordinates are kept to a nanometre, so that no number needs an exponent. */
 export class Drawing {

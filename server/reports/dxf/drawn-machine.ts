@@ -1,6 +1,6 @@
 import type { JobRecord } from "../../../shared/schemas/jobs.ts";
 import { convertersFor } from "../../../shared/units.ts";
-import { allowedBy, boresOf, computedSurvey } from "../found-and-left.ts";
+import { allowedBy, boresOf, concessionOf, reportedSurveys } from "../found-and-left.ts";
 
 /** h to the right, v up; millimetres. */
 export interface PlaneMm {
@@ -24,6 +24,12 @@ export interface DrawnStation {
 export interface DrawnBore {
   readonly station: DrawnStation;
   readonly deviationMm: PlaneMm;
+  /** Whether it set the axis of its survey. */
+  readonly reference: boolean;
+  /** Null without a tolerance. */
+  readonly verdict: "conforms" | "undecided" | "exceeds" | null;
+  /** Who granted one; null where none is shown with this survey. */
+  readonly concession: string | null;
   /** Expanded; null when nothing is known. */
   readonly uncertaintyMm: PlaneMm | null;
 }
@@ -60,8 +66,13 @@ export function drawnMachine(record: JobRecord): DrawnMachine {
     };
   });
   const byId = new Map(stations.map((station) => [station.id, station]));
-  const surveys = (["as_found", "as_left"] as const).flatMap((stage): DrawnSurvey[] => {
-    const computed = computedSurvey(record, stage);
+  const { found, left } = reportedSurveys(record);
+  const surveys = (
+    [
+      ["AS-FOUND", "as found", found],
+      ["AS-LEFT", "as left", left],
+    ] as const
+  ).flatMap(([layer, name, computed]): DrawnSurvey[] => {
     if (!computed) return [];
     const bores = boresOf(record, computed).flatMap(({ station: { id }, answer }): DrawnBore[] => {
       const station = byId.get(id);
@@ -70,14 +81,15 @@ export function drawnMachine(record: JobRecord): DrawnMachine {
         ? [
             {
               station,
+              reference: answer.reference,
+              verdict: answer.verdict,
+              concession: concessionOf(record, computed, id)?.name ?? null,
               deviationMm: plane(answer.deviation),
               uncertaintyMm: uncertainty && plane(uncertainty),
             },
           ]
         : [];
     });
-    const [layer, name] =
-      stage === "as_found" ? (["AS-FOUND", "as found"] as const) : (["AS-LEFT", "as left"] as const);
     return [{ layer, name, bores: bores.toSorted((a, b) => a.station.zMm - b.station.zMm) }];
   });
   return { stations: stations.toSorted((a, b) => a.zMm - b.zMm), surveys };

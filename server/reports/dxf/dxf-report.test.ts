@@ -3,10 +3,10 @@ import { describe, expect, it } from "vitest";
 import { farApartJob, hostileJob, oneStationJob } from "../../../tests/support/hostile-job.ts";
 import { writeFellgateJob } from "../../../tests/support/job-record.ts";
 import type { JobWriter } from "../../../tests/support/job-writer.ts";
+import { stressJob } from "../../../tests/support/stress-job.ts";
 import { readDrawing, type ReadDrawing } from "../../../tests/support/read-drawing.ts";
 import { millimetresPer } from "../../../shared/units.ts";
 import { spread } from "./draw-dimensions.ts";
-import { wrap } from "./draw-title-block.ts";
 import { layerNames, plainText } from "./drawing.ts";
 import { dxfReport } from "./dxf-report.ts";
 
@@ -15,10 +15,12 @@ const on = ({ entities }: ReadDrawing, layer: string, kind: string) =>
   entities.filter((entity) => entity.layer === layer && entity.kind === kind);
 const textsOf = ({ entities }: ReadDrawing) => entities.flatMap(({ text }) => text ?? []);
 
-/** Times as large as it is, as the drawing itself says. */
-function exaggerationOf(drawing: ReadDrawing): number {
+/** Times as large as it is, as the drawing itself says: of the strips, and of the end views. */
+function exaggerationsOf(drawing: ReadDrawing): [strips: number, endViews: number] {
   const words = textsOf(drawing).find((text) => text.startsWith("Scale:")) ?? "";
-  return Number(/([\d.e+-]+) times as large/.exec(words)?.[1]);
+  const [, strips, endViews] =
+    /([\d.e+-]+) times as large, in the end views ([\d.e+-]+) times/.exec(words) ?? [];
+  return [Number(strips), Number(endViews)];
 }
 
 describe("the drawing of a job", () => {
@@ -33,7 +35,7 @@ describe("the drawing of a job", () => {
     expect(drawing.fixes).toEqual([]);
     expect(drawing.units).toBe(4);
     expect(drawing.layers).toEqual(expect.arrayContaining(layerNames));
-    const times = exaggerationOf(drawing);
+    const [times, endTimes] = exaggerationsOf(drawing);
     const [perZ, perOffset] = [
       millimetresPer[record.machine.units.axial],
       millimetresPer[record.machine.units.offset],
@@ -60,22 +62,47 @@ describe("the drawing of a job", () => {
           expect(Math.abs((point?.[1] ?? NaN) - (expected[strip]?.[1] ?? NaN))).toBeLessThan(1e-5); // mm
         }
       });
-      // End view: every vector starts at one point, h right and v up.
+      // End views: h right and v up.
       const vectors = on(drawing, layer, "LINE");
       result?.stations.forEach(({ deviation }, index) => {
         const [from, tip] = vectors[index]?.points ?? [];
         expect(
-          Math.abs((tip?.[0] ?? NaN) - (from?.[0] ?? NaN) - times * perOffset * deviation.h),
+          Math.abs((tip?.[0] ?? NaN) - (from?.[0] ?? NaN) - endTimes * perOffset * deviation.h),
         ).toBeLessThan(1e-5);
         expect(
-          Math.abs((tip?.[1] ?? NaN) - (from?.[1] ?? NaN) - times * perOffset * deviation.v),
+          Math.abs((tip?.[1] ?? NaN) - (from?.[1] ?? NaN) - endTimes * perOffset * deviation.v),
         ).toBeLessThan(1e-5);
       });
     }
-    const ids = on(drawing, "STATIONS", "TEXT").map(({ text }) => text);
-    expect(ids).toHaveLength(14);
-    expect(on(drawing, "TOLERANCE", "LWPOLYLINE").filter(({ closed }) => closed)).toHaveLength(28);
+    // Gates in both strips, and in the end views those that are not round.
+    expect(on(drawing, "TOLERANCE", "LWPOLYLINE").filter(({ closed }) => closed)).toHaveLength(28 + 3);
   });
+
+  it("names every station twice, with its verdict and concession under its end view", async () => {
+    const job = writeFellgateJob("found");
+    job.add("concession", {
+      station: "exh-1",
+      name: "Ada Verne",
+      reason: "To be shimmed at the next outage.",
+    });
+    const texts = textsOf(await readDrawing(await bytesOf(job)));
+    const [survey] = job.record().surveys;
+    for (const { id, reference, deviation, verdict } of survey?.result?.stations ?? []) {
+      const own = reference ? [id, `${id} (ref.)`] : [id, id];
+      expect(texts.filter((text) => text === id || text === `${id} (ref.)`)).toEqual(own);
+      expect(texts).toContain(`as found ${deviation.radial.toFixed(4)} mm ${verdict}`);
+    }
+    expect(texts.filter((text) => text.startsWith("conceded by"))).toEqual(["conceded by Ada Verne"]);
+  });
+
+  it("keeps text of a job as large as they come off every other", async () => {
+    const drawing = await readDrawing(await bytesOf(stressJob()));
+    expect([...drawing.errors, ...drawing.fixes]).toEqual([]);
+    const placed = drawing.entities.filter(({ kind, layer }) => kind === "TEXT" && layer !== "DRAFT");
+    const lines = placed.map(({ points, height }) => `${points?.[0]?.join(" ")} ${height}`);
+    expect(new Set(lines).size).toBe(lines.length);
+    expect(textsOf(drawing).join(" ")).toContain("survey 2, Casing set (after a step)");
+  }, 30_000);
 
   it("carries the fields of a title block, the hash, the units and the cautions", async () => {
     const job = writeFellgateJob();
@@ -140,13 +167,5 @@ describe("plainText", () => {
 describe("spread", () => {
   it("keeps names apart and in order", () => {
     expect(spread([0, 0, 0.5, 10], 1)).toEqual([0, 1, 2, 10]);
-  });
-});
-
-describe("wrap", () => {
-  it("breaks between words, and inside one that is too long", () => {
-    expect(wrap("one two three", 7)).toEqual(["one two", "three"]);
-    expect(wrap("abcdefghij k", 4)).toEqual(["abcd", "efgh", "ij k"]);
-    expect(wrap("", 4)).toEqual([]);
   });
 });

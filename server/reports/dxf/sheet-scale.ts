@@ -3,6 +3,7 @@ import { millimetresPer, type LengthUnit } from "../../../shared/units.ts";
 import { stepAtMost } from "../../../shared/figures/pick-step.ts";
 import { Drawing } from "./drawing.ts";
 import type { DrawnMachine, PlaneMm } from "./drawn-machine.ts";
+import { scaleEndViews, type EndViewScale } from "./end-view-scale.ts";
 
 /** Where everything stands. z is true to scale; what lies across it is drawn `exaggeration` times as large. */
 export interface SheetScale {
@@ -20,7 +21,9 @@ export interface SheetScale {
   readonly wordRoom: number;
   readonly elevationY: number;
   readonly planY: number;
-  readonly endView: readonly [x: number, y: number];
+  /** Top left corner of the key. */
+  readonly key: readonly [x: number, y: number];
+  readonly endViews: EndViewScale;
   /** Top left corner of the title block, and its width. */
   readonly titleBlock: { readonly left: number; readonly top: number; readonly width: number };
 }
@@ -40,6 +43,14 @@ export function scaleSheet(machine: DrawnMachine, axialUnit: LengthUnit): SheetS
   const nameRoom = room(machine.stations.map(({ id }) => id));
   const wordRoom = room(zs.map((zMm) => zWords(zMm, axialUnit)));
   const planY = -(2 * reach + 8 * letter);
+  const width = length * 1.4;
+  const endViews = scaleEndViews(
+    machine,
+    { left: zLow, top: planY - reach - wordRoom - 8 * letter },
+    width,
+    letter,
+  );
+  const rows = Math.ceil(machine.stations.length / endViews.columns);
   return {
     zLow,
     zHigh,
@@ -51,8 +62,9 @@ export function scaleSheet(machine: DrawnMachine, axialUnit: LengthUnit): SheetS
     wordRoom,
     elevationY: 0,
     planY,
-    endView: [zLow + length * 1.08 + 2 * reach, planY / 2],
-    titleBlock: { left: zLow, top: planY - reach - wordRoom - 8 * letter, width: length * 1.4 },
+    key: [zHigh + length * 0.07, reach],
+    endViews,
+    titleBlock: { left: zLow, top: endViews.top - rows * endViews.row - 3 * letter, width },
   };
 }
 
@@ -89,3 +101,6 @@ export function zWords(zMm: number, unit: LengthUnit): string {
 
 const plain = (value: number, unit: LengthUnit): string =>
   writeNumber(value, decimalsAlong(unit)).replace("\u2212", "-");
+
+/** A magnification in words: "1000 times". */
+export const writeTimes = (factor: number): string => `${Number(factor.toPrecision(6))} times`;

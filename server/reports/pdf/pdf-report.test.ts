@@ -5,6 +5,7 @@ import { farApartJob, hostileJob, oneStationJob } from "../../../tests/support/h
 import { fellgateReport, writeFellgateJob } from "../../../tests/support/job-record.ts";
 import type { JobWriter } from "../../../tests/support/job-writer.ts";
 import { manyStationsJob } from "../../../tests/support/many-stations-job.ts";
+import { stressJob } from "../../../tests/support/stress-job.ts";
 import { readPdf, type ReadPdf } from "../../../tests/support/read-pdf.ts";
 import { draftMark, type ReportContext } from "../report-format.ts";
 import { pdfReport } from "./pdf-report.ts";
@@ -189,6 +190,7 @@ describe("the PDF report", () => {
     ["stations far apart", farApartJob, 8],
     ["hostile names, in inches and mils", hostileJob, 14],
     ["a hundred stations", () => manyStationsJob(100), 20],
+    ["a job as large as they come", stressJob, 48],
   ])(
     "of %s keeps every word inside the frame and off every other",
     async (_words, begin, sheets) => {

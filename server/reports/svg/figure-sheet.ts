@@ -2,6 +2,7 @@ import type { JobFigure } from "../../../shared/figures/job/job-figures.ts";
 import { withNotes } from "../../../shared/figures/job/with-notes.ts";
 import type { JobRecord } from "../../../shared/schemas/jobs.ts";
 import { draftMark, type ReportContext } from "../report-format.ts";
+import { concessionWords } from "../report-words.ts";
 import { writeSvg } from "./write-svg.ts";
 
 /** Width of what A4 across leaves inside a margin: lettering is 2.5 mm high on paper. */
@@ -11,9 +12,15 @@ const widthMm = 250;
 export function writeJobFigure(figure: JobFigure, record: JobRecord, context: ReportContext): string {
   const state = record.signature ? `Signed by ${record.signature.name}` : draftMark;
   const words =
-    `${record.machineName}. ${record.title}, revision ${record.revision}. ${state}. ` +
-    `Record ${context.recordHash}, engine ${context.engineVersion}.`;
+    `${figure.title}. ${record.machineName}. ${record.title}, revision ${record.revision}. ${state}. ` +
+    `${conceded(figure, record)}Record ${context.recordHash}, engine ${context.engineVersion}.`;
   return writeSvg(withNotes(figure.draw(widthMm), { flags: flagsOf(figure, record), words }));
+}
+
+/** A station's concession stands under every figure that judges it. */
+function conceded({ survey }: JobFigure, record: JobRecord): string {
+  const words = survey === null ? concessionWords(record) : null;
+  return words ? `${words} ` : "";
 }
 
 /** A bore section bears what is said of its survey; every other figure what is said of the whole job. */

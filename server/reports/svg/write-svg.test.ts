@@ -107,6 +107,20 @@ describe("a figure as SVG", () => {
     }
   });
 
+  it("says which figure it is, and under what judges a station its concession", () => {
+    const job = writeFellgateJob("found");
+    job.add("concession", {
+      station: "exh-1",
+      name: "Ada Verne",
+      reason: "To be shimmed at the next outage.",
+    });
+    const report = { record: job.record(), context: job.context() };
+    const drawn = (id: string) => textsOf(svgOf(report, id)).join(" ");
+    expect(drawn("bore-1-5")).toContain("Bore section cas-4, as found. Fellgate Unit 2.");
+    expect(drawn("end-view")).toContain("Concessions: exh-1 by Ada Verne.");
+    expect(drawn("bore-1-5")).not.toContain("Concessions");
+  });
+
   it("shows names that would act as text", () => {
     const texts = textsOf(svgOf(hostile, "plan-elevation"));
     for (const name of ["<b>&amp;</b>", 'say "no"', "[U+202E]lamron", "'quoted"])

@@ -1,14 +1,9 @@
+import type { ComputedSurvey } from "../../../shared/figures/job/compared-surveys.ts";
 import type { JobRecord } from "../../../shared/schemas/jobs.ts";
-import {
-  columnName,
-  formulaCell,
-  numberCell,
-  textCell,
-  type CellLook,
-  type SheetCell,
-} from "../../spreadsheets/cell.ts";
-import { allowedBy, type Allowed, type SurveyedBore } from "../found-and-left.ts";
+import { columnName, formulaCell, numberCell, textCell, type SheetCell } from "../../spreadsheets/cell.ts";
+import { allowedBy, concessionOf, type Allowed, type SurveyedBore } from "../found-and-left.ts";
 import { formatsOf } from "./number-formats.ts";
+import { verdictLooks } from "./section.ts";
 
 interface StationColumn {
   readonly heading: string;
@@ -43,6 +38,7 @@ const order = [
   "uncertaintyRadial",
   "verdict",
   "check",
+  "concession",
 ] as const;
 type Name = (typeof order)[number];
 
@@ -52,7 +48,7 @@ const at = (name: Name, row: number): string => `${columnName(order.indexOf(name
 const roundingSlack = "1E-12";
 
 /** What is known as numbers, what follows as formulas; beside the service's verdict one that anybody can follow. */
-export function stationColumns(record: JobRecord): StationColumn[] {
+export function stationColumns(record: JobRecord, computed: ComputedSurvey): StationColumn[] {
   const { axial, offset } = record.machine.units;
   const { along, across } = formatsOf(record);
   const entry = (heading: string, value: (bore: SurveyedBore) => number | null | undefined) => ({
@@ -70,7 +66,11 @@ export function stationColumns(record: JobRecord): StationColumn[] {
     cell: (bore: SurveyedBore, row: number) => formulaCell(formula(row, bore), value(bore), across),
   });
   const columns: Readonly<Record<Name, StationColumn>> = {
-    station: { heading: "Station", width: 20, cell: ({ station }) => textCell(station.id) },
+    station: {
+      heading: "Station",
+      width: 22,
+      cell: ({ station }) => textCell(station.id, { wrap: true }),
+    },
     reference: {
       heading: "Sets the axis",
       width: 12,
@@ -148,6 +148,11 @@ export function stationColumns(record: JobRecord): StationColumn[] {
             )
           : null,
     },
+    concession: {
+      heading: "Concession by",
+      width: 24,
+      cell: ({ station }) => textCell(concessionOf(record, computed, station.id)?.name, { wrap: true }),
+    },
   };
   return order.map((name) => columns[name]);
 }
@@ -177,10 +182,3 @@ function ratioFormula(allowed: Allowed, row: number): string {
   };
   return `MAX(${share("h", "leastH", "mostH")},${share("v", "leastV", "mostV")})`;
 }
-
-/** Told apart without colour too: by the word itself and its weight. */
-const verdictLooks: Readonly<Record<"conforms" | "undecided" | "exceeds", CellLook>> = {
-  conforms: { backgroundColor: "#E3F1E5" },
-  undecided: { backgroundColor: "#FFF3D6" },
-  exceeds: { backgroundColor: "#F8DEDA", fontWeight: "bold" },
-};

@@ -9,8 +9,9 @@ import {
   type SheetCell,
 } from "../../spreadsheets/cell.ts";
 import type { Sheet } from "../../spreadsheets/sheet.ts";
-import { computedSurvey } from "../found-and-left.ts";
+import { numberedName, reportedSurveys } from "../found-and-left.ts";
 import type { ReportContext } from "../report-format.ts";
+import { lineUnderTitle } from "./section.ts";
 import { authorName, creatorOf, ownerOf, signatureWords, verdictWords } from "../report-words.ts";
 
 const wrapped = { wrap: true, alignVertical: "top" } as const;
@@ -19,16 +20,18 @@ const wrapped = { wrap: true, alignVertical: "top" } as const;
 export function summarySheet(record: JobRecord, context: ReportContext): Sheet {
   const rows: SheetCell[][] = [
     [titleCell("Bore alignment record")],
-    [textCell(signatureWords(record), { fontWeight: "bold" })],
+    lineUnderTitle(signatureWords(record), { fontWeight: "bold" }),
     [],
     ...identification(record, context),
     [],
     ...outcome(record),
-    ...list("Flags", record.flags, ({ detail, station }) => [station, detail]),
-    ...list("What stands in the way of a signature", record.signOff.obstacles, ({ detail, station }) => [
-      station,
-      detail,
-    ]),
+    ...(record.flags.length === 0 ? [[], [headingCell("Flags"), textCell("none")]] : []),
+    ...list("Flags", said(record.flags), ({ detail, station }) => [station, detail]),
+    ...list(
+      "What stands in the way of a signature",
+      said(record.signOff.obstacles),
+      ({ detail, station }) => [station, detail],
+    ),
     ...list("Concessions", record.concessions, ({ station, name, reason }) => [
       station,
       `${name}: ${reason}`,
@@ -87,9 +90,13 @@ function revisionReason({ revision, revisions }: JobRecord): string {
 
 function outcome(record: JobRecord): SheetCell[][] {
   const format = fixed(decimalsAcross(record.machine.units.offset));
-  return (["as_found", "as_left"] as const).flatMap((stage) => {
-    const words = stage === "as_found" ? "As found" : "As left";
-    const computed = computedSurvey(record, stage);
+  const { found, others, left } = reportedSurveys(record);
+  const all = [
+    ["As found", found] as const,
+    ...others.map((survey) => [numberedName(survey), survey] as const),
+    ["As left", left] as const,
+  ];
+  return all.flatMap(([words, computed]) => {
     if (!computed) return [[headingCell(words), textCell("Not computed.")]];
     const { conforms, undecided, exceeds, worst } = computed.result.summary;
     const worstWords = worst ? `; worst ${worst.id}` : "";
@@ -103,11 +110,11 @@ function outcome(record: JobRecord): SheetCell[][] {
         ? [
             [
               headingCell(`Drift at ${drift.station}, h (${record.machine.units.offset})`),
-              left(drift.h, format),
+              leftNumber(drift.h, format),
             ],
             [
               headingCell(`Drift at ${drift.station}, v (${record.machine.units.offset})`),
-              left(drift.v, format),
+              leftNumber(drift.v, format),
             ],
           ]
         : []),
@@ -118,7 +125,7 @@ function outcome(record: JobRecord): SheetCell[][] {
   });
 }
 
-const left = (value: number, format: string) => numberCell(value, format, { align: "left" });
+const leftNumber = (value: number, format: string) => numberCell(value, format, { align: "left" });
 
 function list<Item>(
   heading: string,
@@ -134,4 +141,9 @@ function list<Item>(
       return [textCell(name, wrapped), textCell(words, wrapped)];
     }),
   ];
+}
+
+/** Each once, however many surveys bear it. */
+function said(flags: JobRecord["flags"]): JobRecord["flags"] {
+  return [...new Map(flags.map((flag) => [`${flag.station} ${flag.detail}`, flag])).values()];
 }

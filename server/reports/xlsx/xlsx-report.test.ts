@@ -3,9 +3,15 @@ import readExcelFile from "read-excel-file/node";
 import { describe, expect, it } from "vitest";
 import { hostileJob, hostileText, oneStationJob } from "../../../tests/support/hostile-job.ts";
 import { fellgateReport, writeFellgateJob } from "../../../tests/support/job-record.ts";
-import type { JobWriter } from "../../../tests/support/job-writer.ts";
+import { JobWriter } from "../../../tests/support/job-writer.ts";
+import { foreignName, stressJob } from "../../../tests/support/stress-job.ts";
 import { openInSpreadsheetProgram, type OpenedWorkbook } from "../../../tests/support/spreadsheet-program.ts";
+import type { JobDetails } from "../../../shared/schemas/job-entries.ts";
 import type { JobRecord } from "../../../shared/schemas/jobs.ts";
+import { fellgateDocument } from "../../demo/fellgate-document.ts";
+import { asFoundReadings, fellgateJobDetails } from "../../demo/fellgate-job.ts";
+import { fixed, numberCell } from "../../spreadsheets/cell.ts";
+import { writeWorkbook } from "../../spreadsheets/write-workbook.ts";
 import type { ReportContext } from "../report-format.ts";
 import { xlsxReport } from "./xlsx-report.ts";
 
@@ -41,6 +47,16 @@ function tableOf(opened: OpenedWorkbook, sheet: string): Map<string, Record<stri
       ]),
   );
 }
+
+const through = ["brg-1", "cas-3", "shr-1", "shr-3"];
+const everyAxis: [string, NonNullable<JobDetails["axis"]>][] = [
+  ["of two stations", { method: "two_station", through: ["brg-1", "shr-3"] }],
+  ["of least squares", { method: "least_squares", through }],
+  ["of the narrowest zones", { method: "minimum_zone", zone: "planes", through }],
+  ["of the narrowest cylinder", { method: "minimum_zone", zone: "cylinder", through }],
+  ["of least distances", { method: "least_absolute", through }],
+  ["that is the line of sight", { method: "line_of_sight" }],
+];
 
 describe("the workbook of a job", () => {
   it.each([
@@ -81,6 +97,83 @@ describe("the workbook of a job", () => {
     },
     120_000,
   );
+
+  it.each(everyAxis)(
+    "is computed again to the service's own numbers from an axis %s, surveys after steps too",
+    async (_, axis) => {
+      const job = new JobWriter(fellgateDocument, { ...fellgateJobDetails, axis });
+      const setUp = { sameSetUp: false, instrument: "gauge-1" };
+      job.survey({ stage: "as_found", ...setUp }, asFoundReadings());
+      job.survey({ stage: "after_step", ...setUp, label: "Casing set" }, asFoundReadings().slice(0, 12));
+      const record = job.record();
+      const opened = await openInSpreadsheetProgram(withoutValues(await reportOf(job)));
+      expect(Object.keys(opened)).toContain("Survey 2");
+      expect(opened["Survey 2"]?.[0]?.[0]).toBe("Survey 2, Casing set (after a step): Fellgate Unit 2");
+      const [found, step] = record.surveys;
+      for (const [sheet, survey, count] of [
+        ["As found", found, 14],
+        ["Survey 2", step, 12],
+      ] as const) {
+        const table = tableOf(opened, sheet);
+        expect(table.size).toBe(count);
+        for (const { id, deviation } of survey?.result?.stations ?? []) {
+          const row = table.get(id);
+          for (const plane of ["h", "v"] as const)
+            expect(Math.abs(Number(row?.[`Deviation ${plane}`]) - deviation[plane])).toBeLessThan(1e-9); // mm
+        }
+      }
+    },
+    120_000,
+  );
+
+  it("shows numbers of either sign, and what rounds to nothing without one", async () => {
+    const bytes = await writeWorkbook({
+      title: "",
+      creator: "",
+      description: "",
+      createdAt: new Date(0),
+      pageHead: { left: "", right: "" },
+      pageFoot: [],
+      sheets: [
+        {
+          name: "A",
+          widths: [12],
+          rows: [0.12346, -0.12346, -0.00006, -0.00004, 0].map((value) => [numberCell(value, fixed(4))]),
+        },
+      ],
+    });
+    const { A: shown = [] } = await openInSpreadsheetProgram(bytes, { asShown: true });
+    expect(shown.flat()).toEqual(["0.1235", "-0.1235", "-0.0001", "0.0000", "0.0000"]);
+  }, 60_000);
+
+  it("holds a job as large as they come: every survey, move, check and concession, its rows high enough", async () => {
+    const job = stressJob();
+    const record = job.record();
+    const sheets = await readExcelFile(await reportOf(job), { trim: false });
+    expect(sheets.map(({ sheet }) => sheet)).toEqual([
+      "Summary",
+      "As found",
+      "Moves",
+      "Survey 2",
+      "Survey 3",
+      "As left",
+      "Conditions",
+    ]);
+    const cellsOf = (name: string) => sheets.find(({ sheet }) => sheet === name)?.data ?? [];
+    const moved = cellsOf("Moves").filter(([at]) => /^2026-11-\d\d \d\d:\d\d$/.test(String(at)));
+    expect(moved).toHaveLength(record.moves.reduce((total, { moved: all = [] }) => total + all.length, 0));
+    for (const row of moved) expect(row[1]).toMatch(/^\d-/);
+    expect(
+      cellsOf("Conditions")
+        .flat()
+        .filter((cell) => cell === "not answered"),
+    ).toHaveLength(5);
+    const conceded = (name: string) =>
+      cellsOf(name)
+        .map((row) => row.at(-1))
+        .filter((cell) => cell === foreignName);
+    expect([conceded("As found"), conceded("As left")]).toEqual([[], [foreignName]]);
+  }, 60_000);
 
   it("shows the service's numbers to readers that do not compute", async () => {
     const { record, context } = fellgateReport({ signed: true });

@@ -1,5 +1,5 @@
 import { writeWorkbook } from "../../spreadsheets/write-workbook.ts";
-import { computedSurvey } from "../found-and-left.ts";
+import { numberedName, reportedSurveys } from "../found-and-left.ts";
 import { dateOf, type ReportFormat } from "../report-format.ts";
 import { creatorOf, signatureWords } from "../report-words.ts";
 import { conditionsSheet } from "./conditions-sheet.ts";
@@ -11,8 +11,9 @@ import { surveySheet } from "./survey-sheet.ts";
 export const xlsxReport: ReportFormat = {
   extension: "xlsx",
   mediaType: "application/vnd.openxmlformats-officedocument.spreadsheetml.sheet",
-  write: (record, context) =>
-    writeWorkbook({
+  write: (record, context) => {
+    const { found, others, left } = reportedSurveys(record);
+    return writeWorkbook({
       title: `${record.machineName}: ${record.title}`,
       creator: creatorOf(record) ?? "",
       description: `Job ${record.id}, revision ${record.revision}. ${signatureWords(record)}. Record ${context.recordHash}. Engine ${context.engineVersion}.`,
@@ -21,10 +22,20 @@ export const xlsxReport: ReportFormat = {
       pageFoot: [`Job ${record.id} r${record.revision}`, `Record ${context.recordHash}`],
       sheets: [
         summarySheet(record, context),
-        surveySheet(record, "As found", computedSurvey(record, "as_found")),
+        surveySheet(record, "As found", found),
         movesSheet(record),
-        surveySheet(record, "As left", computedSurvey(record, "as_left")),
+        ...others.map((survey) => {
+          const stage = numberedName(survey);
+          return surveySheet(
+            record,
+            `Survey ${survey.number}`,
+            survey,
+            `${stage.charAt(0).toUpperCase()}${stage.slice(1)}`,
+          );
+        }),
+        surveySheet(record, "As left", left),
         conditionsSheet(record),
       ],
-    }),
+    });
+  },
 };

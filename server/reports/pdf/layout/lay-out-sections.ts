@@ -12,7 +12,7 @@ import {
   listIndent,
   paragraphGap,
 } from "./text-metrics.ts";
-import { wrapText } from "./wrap-text.ts";
+import { wrapText } from "../../wrap-text.ts";
 
 /** Gives every block of every section its place, on as many sheets as it takes. */
 export function layOutSections(sections: readonly Section[]): LaidSheet[] {

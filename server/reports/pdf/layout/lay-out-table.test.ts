@@ -11,7 +11,7 @@ import {
 } from "../../../../shared/figures/figure-table.ts";
 import { layOutTable, type LaidTable } from "./lay-out-table.ts";
 import { splitColumns } from "./split-columns.ts";
-import { cutLine, wrapText } from "./wrap-text.ts";
+import { cutLine, wrapText } from "../../wrap-text.ts";
 
 const words = fc.array(fc.stringMatching(/^[a-z]{1,30}$/), { minLength: 1, maxLength: 20 });
 

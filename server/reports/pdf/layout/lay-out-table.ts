@@ -4,7 +4,7 @@ import { textWidth } from "../../../../shared/figures/shape.ts";
 import { writeNumber, writeSigned } from "../../../../shared/figures/write-number.ts";
 import { legibleLine, legibleText } from "./legible-text.ts";
 import { splitColumns } from "./split-columns.ts";
-import { wrapText } from "./wrap-text.ts";
+import { wrapText } from "../../wrap-text.ts";
 
 export interface LaidColumn {
   readonly x: number;

@@ -1,6 +1,6 @@
 import { textWidth } from "../../../../shared/figures/shape.ts";
 import { letterHeights } from "./sheet-geometry.ts";
-import { wrapText } from "./wrap-text.ts";
+import { wrapText } from "../../wrap-text.ts";
 
 /** Between baselines of running text. */
 export const lineHeight = letterHeights.text * 1.65;

@@ -4,7 +4,7 @@ import { draftMark, type ReportContext } from "../../report-format.ts";
 import { signatureWords } from "../../report-words.ts";
 import { legibleLine } from "../layout/legible-text.ts";
 import { frame, recordBlock, sheetSize, titleBlock } from "../layout/sheet-geometry.ts";
-import { cutLine } from "../layout/wrap-text.ts";
+import { cutLine } from "../../wrap-text.ts";
 import type { Canvas } from "./canvas.ts";
 import { drawProjectionSymbol } from "./projection-symbol.ts";
 import { recordLines, titleCells, titleRowHeight } from "./title-fields.ts";

@@ -1,7 +1,7 @@
 import { flagSentences } from "../../../../shared/figures/job/with-notes.ts";
 import type { JobRecord } from "../../../../shared/schemas/jobs.ts";
 import { dateOf, draftMark, type ReportContext } from "../../report-format.ts";
-import { ownerOf, verdictWords } from "../../report-words.ts";
+import { axisWords, ownerOf, verdictWords } from "../../report-words.ts";
 import {
   headingBlock,
   listBlock,
@@ -17,8 +17,8 @@ import {
   tabulateInstruments,
   tabulatePeople,
   tabulateVerdicts,
-} from "../tables/job-tables.ts";
-import { writeMoment, writeSpan } from "../tables/write-moment.ts";
+} from "../../tables/job-tables.ts";
+import { writeMoment, writeSpan } from "../../tables/write-moment.ts";
 
 /** The first sheet: what the record is of, who made it, what it came to, and what must be known before it is used. */
 export function coverSection(record: JobRecord, context: ReportContext): Section {
@@ -44,7 +44,6 @@ export function coverSection(record: JobRecord, context: ReportContext): Section
 
 function identification(record: JobRecord, { engineVersion, recordHash }: ReportContext): [string, string][] {
   const { details, machine } = record;
-  const { method, through } = axisOf(record);
   return [
     ["Job", record.title],
     ["Job id, revision", `${record.id}, ${record.revision}`],
@@ -57,7 +56,7 @@ function identification(record: JobRecord, { engineVersion, recordHash }: Report
     ["Record as of", `${writeMoment(dateOf(record).toISOString())} UTC`],
     ["Downstream", machine.downstream],
     ["Read looking", `${details.seen}, unless a reading says otherwise`],
-    ["Axis", through.length === 0 ? method : `${method}, through ${through.join(", ")}`],
+    ["Axis", axisWords(record)],
     ["Verdict rule", verdictWords(record)],
     ["Units", `z ${machine.units.axial}, bores ${machine.units.bore}, offsets ${machine.units.offset}`],
     ["Engine version", engineVersion],
@@ -68,14 +67,6 @@ function identification(record: JobRecord, { engineVersion, recordHash }: Report
 }
 
 const bareHash = (hash: string): string => hash.replace(/^sha256:/, "");
-
-function axisOf({ details, machine }: JobRecord): { method: string; through: readonly string[] } {
-  const axis = details.axis;
-  return {
-    method: (axis?.method ?? "least_squares").replaceAll("_", " "),
-    through: axis ? (axis.through ?? []) : (machine.reference ?? []),
-  };
-}
 
 function verdicts(record: JobRecord): Block[] {
   const blocks = tableBlocks(tabulateVerdicts(record));

@@ -8,6 +8,7 @@ import type { PlanElevationModel } from "../../../../shared/figures/plan-elevati
 import { scalePlanElevation } from "../../../../shared/figures/plan-elevation/scale-plan-elevation.ts";
 import { convertLength } from "../../../../shared/figures/write-number.ts";
 import type { JobRecord } from "../../../../shared/schemas/jobs.ts";
+import { concessionWords } from "../../report-words.ts";
 import { listBlock, textBlock, type Block, type Section } from "../layout/blocks.ts";
 import { figureScale } from "../layout/lay-out-sections.ts";
 import { legibleLine } from "../layout/legible-text.ts";
@@ -79,12 +80,15 @@ function endViews(model: EndViewModel, record: JobRecord): Block[] {
   }).flat();
 }
 
-function flagLines({ flags }: JobRecord): string[] {
-  if (flags.length === 0) return ["Flags of the record: none."];
-  return [
-    "Flags of the record:",
-    ...flagSentences(flags, flagsNamed, "on the first sheets").map(legibleLine),
+/** What is said under a figure: of flags and concessions a heading, then each. */
+function flagLines(record: JobRecord): string[] {
+  const conceded = concessionWords(record);
+  const said = [
+    ...flagSentences(record.flags, flagsNamed, "on the first sheets"),
+    ...(conceded ? [conceded] : []),
   ];
+  if (said.length === 0) return ["Flags of the record: none."];
+  return ["Flags of the record:", ...said.map(legibleLine)];
 }
 
 function flagBlocks([first = "", ...rest]: readonly string[]): Block[] {

@@ -19,8 +19,9 @@ import {
   type Block,
   type Section,
 } from "../layout/blocks.ts";
-import { tabulateAdvice, tabulateLoggedMoves, tabulateOrder } from "../tables/move-tables.ts";
-import { writeMoment } from "../tables/write-moment.ts";
+import { outdatedWords, signWords } from "../../report-words.ts";
+import { tabulateAdvice, tabulateLoggedMoves, tabulateOrder } from "../../tables/move-tables.ts";
+import { writeMoment } from "../../tables/write-moment.ts";
 
 /** The plans, and what was moved and confirmed; nothing of what a job does not have. */
 export function moveSections(record: JobRecord): Section[] {
@@ -53,6 +54,8 @@ function planSection(record: JobRecord, plan: JobRecord["plans"][number], index:
       textBlock(
         `From the survey ${nameOf(record, plan.survey)}, planned ${writeMoment(plan.createdAt)} UTC. Moves in h are done before moves in v; readings and moves are cumulative from where the component stood.`,
       ),
+      ...outdated(plan, outdatedWords.plan),
+      textBlock(`${signWords} Shims: positive is thickness added.`, "muted"),
       ...tableBlocks(tabulateAdvice(result)),
       ...tableBlocks(tabulateStacks(result, units)),
       ...tableBlocks(tabulateComponents(result, units)),
@@ -65,30 +68,20 @@ function planSection(record: JobRecord, plan: JobRecord["plans"][number], index:
             headingBlock("Re-measure after the last move, in this order"),
             textBlock(result.remeasure.join(", ")),
           ]),
-      ...tableBlocks(predicted(record, plan)),
+      ...tableBlocks(
+        tabulatePredicted({ units, reference: plan.from.reference, stations: plan.from.stations }, result),
+      ),
     ],
   };
 }
 
-/** Before and after by prediction; null where the survey that it was planned from has been computed anew. */
-function predicted(record: JobRecord, plan: JobRecord["plans"][number]) {
-  const { machine, surveys } = record;
-  const found = surveys.find(({ id }) => id === plan.survey)?.result;
-  if (!found) return null;
-  return tabulatePredicted(
-    {
-      units: machine.units,
-      reference: found.axis.through,
-      stations: found.stations.map(({ id, z, deviation }) => ({ id, z, deviation })),
-    },
-    plan.result,
-  );
+/** What a reader must know of something made from a survey that has changed since. */
+function outdated({ current }: { readonly current: boolean }, words: string): Block[] {
+  return current ? [] : [textBlock(words, "signal")];
 }
 
-function confirmation(
-  record: JobRecord,
-  { before, after, createdAt, result }: JobRecord["confirmations"][number],
-): Block[] {
+function confirmation(record: JobRecord, entry: JobRecord["confirmations"][number]): Block[] {
+  const { before, after, createdAt, result } = entry;
   const { units } = record.machine;
   const { reference, unexpected, outstanding, warnings } = result;
   const repeats =
@@ -99,6 +92,7 @@ function confirmation(
       `${capitalise(nameOf(record, after))} against ${nameOf(record, before)}, computed ${writeMoment(createdAt)} UTC. Reference stations ${repeats}.`,
       reference.repeats === true ? "ink" : "signal",
     ),
+    ...outdated(entry, outdatedWords.confirmation),
     ...(unexpected.length === 0
       ? []
       : [textBlock(`Moved and not meant to: ${unexpected.join(", ")}.`, "signal")]),
@@ -110,6 +104,10 @@ function confirmation(
     ...tableBlocks(tabulateCommonChange(result, units)),
     ...tableBlocks(tabulateMoved(result, units)),
     ...tableBlocks(tabulateUnmoved(result, units)),
+    textBlock(
+      `${signWords} Statistic: the square of the change over its covariance; up to the limit, reading error alone explains it.`,
+      "muted",
+    ),
     // Where the axis was laid anew, the verdicts are not those of the survey by itself.
     ...(reference.repeats === true ? [] : tableBlocks(tabulateAsLeft(result, units))),
   ];

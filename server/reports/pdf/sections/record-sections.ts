@@ -14,13 +14,13 @@ import {
 import {
   tabulateChecks,
   tabulateDrift,
-  tabulateReadings,
   tabulateSurveys,
   tabulateTemperatures,
   tabulateWarnings,
-} from "../tables/condition-tables.ts";
-import { tabulateAttachments, tabulateComments, tabulateRevisions } from "../tables/job-tables.ts";
-import { tabulateFoundAndLeft, tabulateStations } from "../tables/station-tables.ts";
+} from "../../tables/condition-tables.ts";
+import { tabulateReadings } from "../../tables/reading-tables.ts";
+import { tabulateAttachments, tabulateComments, tabulateRevisions } from "../../tables/job-tables.ts";
+import { tabulateFoundAndLeft, tabulateStations } from "../../tables/station-tables.ts";
 
 export function deviationSections(record: JobRecord): Section[] {
   const table = tabulateFoundAndLeft(record);
@@ -33,7 +33,7 @@ export function deviationSections(record: JobRecord): Section[] {
       blocks: [
         { kind: "table", table },
         textBlock(
-          `Deviation: centre less target less axis, positive to the right and up. U: expanded uncertainty at level ${record.details.level ?? 0.95}. Clock: direction of the deviation, clockwise from the top. (ref.): sets the axis.`,
+          `Deviation: centre less target less axis, positive to the right and up, seen looking downstream. U: expanded uncertainty at level ${levelOf(record)}. Clock: direction of the deviation, clockwise from the top. Of tol.: share of the tolerance used, of a range from its middle. (ref.): sets the axis; where two stations alone do, each of them deviates by 0 without uncertainty, and what their readings are uncertain by is in the others' U.`,
           "muted",
         ),
       ],
@@ -56,7 +56,7 @@ export function conditionSections(record: JobRecord): Section[] {
       blocks: [
         ...tableBlocks(tabulateChecks(record)),
         ...tableBlocks(tabulateSurveys(record)),
-        ...tableBlocks(tabulateTemperatures(record)),
+        ...temperatures(record),
         ...tableBlocks(tabulateDrift(record)),
       ],
     },
@@ -90,11 +90,24 @@ export function conditionSections(record: JobRecord): Section[] {
                 ...tableBlocks(named(tabulateAxis(result.axis, units), name)),
               ]),
               ...tableBlocks(tabulateWarnings(record)),
+              textBlock(
+                `Centres off the line of sight, positive to the right and up, seen looking downstream. U: expanded uncertainty of the fit alone at level ${levelOf(record)}. Roundness: peak to valley about the centre. Coverage: arc that was read. Used, of: readings.`,
+                "muted",
+              ),
             ],
           },
         ]
       : []),
   ];
+}
+
+const levelOf = ({ details }: JobRecord): number => details.level ?? 0.95;
+
+/** Metal temperatures belong to a survey: that none was noted is said. */
+function temperatures(record: JobRecord): Block[] {
+  const table = tabulateTemperatures(record);
+  if (table.rows.length > 0 || record.surveys.length === 0) return tableBlocks(table);
+  return [headingBlock(table.caption), textBlock("None was noted.", "signal")];
 }
 
 const remarks = (heading: string, text: string | null | undefined): Block[] =>

@@ -19,9 +19,12 @@ function wrapParagraph(paragraph: string, width: number): string[] {
 }
 
 function cutWord(word: string, width: number): string[] {
-  const pieces: string[] = [];
-  for (let from = 0; from < word.length; from += width) pieces.push(word.slice(from, from + width));
-  return pieces.length === 0 ? [""] : pieces;
+  if (word.length <= width) return [word];
+  // By whole characters: half of one is none.
+  const all = [...word];
+  return Array.from({ length: Math.ceil(all.length / width) }, (_, index) =>
+    all.slice(index * width, (index + 1) * width).join(""),
+  );
 }
 
 /** One line of at most `room` characters; what is cut off is told by an ellipsis. */

@@ -4,11 +4,11 @@ import {
   textCell,
   textColumn,
   type FigureTable,
-} from "../../../../shared/figures/figure-table.ts";
-import { computedSurveys } from "../../../../shared/figures/job/compared-surveys.ts";
-import { decimalsAcross } from "../../../../shared/figures/write-number.ts";
-import type { JobRecord } from "../../../../shared/schemas/jobs.ts";
-import { authorName } from "../../report-words.ts";
+} from "../../../shared/figures/figure-table.ts";
+import { computedSurveys } from "../../../shared/figures/job/compared-surveys.ts";
+import { decimalsAcross } from "../../../shared/figures/write-number.ts";
+import type { JobRecord } from "../../../shared/schemas/jobs.ts";
+import { authorName } from "../report-words.ts";
 import { writeMoment } from "./write-moment.ts";
 
 export function tabulatePeople({ details }: JobRecord): FigureTable {
@@ -92,8 +92,10 @@ export function tabulateAcceptances({ axisAcceptances, surveys }: JobRecord): Fi
       textColumn("reason"),
       textColumn("entered, UTC"),
     ],
-    rows: axisAcceptances.map(({ survey, name, reason, createdAt }) => [
-      textCell(`survey ${surveys.findIndex(({ id }) => id === survey) + 1}`),
+    rows: axisAcceptances.map(({ survey, name, reason, createdAt, current }) => [
+      textCell(
+        `survey ${surveys.findIndex(({ id }) => id === survey) + 1}${current ? "" : ", computed again since"}`,
+      ),
       textCell(name),
       textCell(reason),
       textCell(writeMoment(createdAt)),

@@ -5,20 +5,15 @@ import {
   textCell,
   textColumn,
   type FigureTable,
-} from "../../../../shared/figures/figure-table.ts";
-import { computedSurveys, surveyName } from "../../../../shared/figures/job/compared-surveys.ts";
-import { decimalsAcross } from "../../../../shared/figures/write-number.ts";
-import type { JobRecord, JobSurvey } from "../../../../shared/schemas/jobs.ts";
+} from "../../../shared/figures/figure-table.ts";
+import { computedSurveys, surveyName } from "../../../shared/figures/job/compared-surveys.ts";
+import { decimalsAcross } from "../../../shared/figures/write-number.ts";
+import type { JobRecord } from "../../../shared/schemas/jobs.ts";
+import type { JobSurvey, SurveyDrift } from "../../../shared/schemas/job-surveys.ts";
 import { writeMoment } from "./write-moment.ts";
 
 const dash = "\u2013";
 const answers = { yes: "yes", no: "no", not_applicable: "not applicable" } as const;
-const forms = {
-  points: "wall points",
-  turned_gauge: "turned gauge",
-  rotating_target: "rotating target",
-  wire: "stretched wire",
-} as const;
 
 export function tabulateChecks({ checks }: JobRecord): FigureTable {
   return {
@@ -116,61 +111,23 @@ export function tabulateDrift(record: JobRecord): FigureTable {
       textColumn("station"),
       numberColumn("h", offset),
       numberColumn("v", offset),
+      numberColumn("uncertainty", offset),
+      textColumn("explained by it"),
     ],
     rows: computedSurveys(record).map(({ name, result: { drift } }) => [
       textCell(name),
       textCell(drift?.station ?? "no closing reading"),
       signedCell(drift?.h, decimals),
       signedCell(drift?.v, decimals),
+      numberCell(drift?.uncertainty, decimals),
+      textCell(drift ? driftWords(drift) : dash),
     ]),
   };
 }
 
-/** Every reading of a survey in the order in which it was taken; the raw numbers stand in the record. */
-export function tabulateReadings({ details }: JobRecord, survey: JobSurvey): FigureTable {
-  const readings = survey.readings.toSorted(
-    (one, other) => Date.parse(one.reading.takenAt) - Date.parse(other.reading.takenAt),
-  );
-  return {
-    caption: `Readings ${surveyName(survey)}`,
-    columns: [
-      textColumn("taken, UTC"),
-      textColumn("station"),
-      textColumn("form"),
-      numberColumn("readings", null),
-      textColumn("seen"),
-      textColumn("upper half"),
-      textColumn("instrument"),
-      textColumn("by"),
-      textColumn("counts"),
-      textColumn("from file"),
-    ],
-    rows: readings.map(({ reading, counts, sourceFile }) => [
-      textCell(writeMoment(reading.takenAt)),
-      textCell(reading.closing ? `${reading.station}, closing` : reading.station),
-      textCell(forms[reading.form]),
-      numberCell(countOf(reading), 0),
-      textCell(reading.seen ?? details.seen),
-      textCell(reading.upperHalf ?? "not stated"),
-      textCell(reading.instrument ?? survey.survey.instrument ?? dash),
-      textCell(reading.person ?? dash),
-      textCell(counts ? "yes" : "no"),
-      textCell(sourceFile ? `${sourceFile.name} ${sourceFile.sha256}` : dash),
-    ]),
-  };
-}
-
-function countOf(reading: JobSurvey["readings"][number]["reading"]): number | null {
-  switch (reading.form) {
-    case "points":
-      return reading.points.length;
-    case "turned_gauge":
-      return reading.readings.length;
-    case "rotating_target":
-      return reading.spots.length;
-    case "wire":
-      return null;
-  }
+function driftWords({ exceeds, level }: SurveyDrift): string {
+  if (exceeds === null) return "not known";
+  return `${exceeds ? "no" : "yes"}, at ${Number((100 * level).toPrecision(6))} %`;
 }
 
 /** Everything that the engine said must be known before a number is used. */

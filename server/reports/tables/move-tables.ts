@@ -5,10 +5,10 @@ import {
   textCell,
   textColumn,
   type FigureTable,
-} from "../../../../shared/figures/figure-table.ts";
-import { decimalsAcross, decimalsFor } from "../../../../shared/figures/write-number.ts";
-import type { JobRecord } from "../../../../shared/schemas/jobs.ts";
-import type { ShimMoveResult } from "../../../../shared/schemas/shim-moves.ts";
+} from "../../../shared/figures/figure-table.ts";
+import { decimalsAcross, decimalsFor } from "../../../shared/figures/write-number.ts";
+import type { JobRecord } from "../../../shared/schemas/jobs.ts";
+import type { ShimMoveResult } from "../../../shared/schemas/shim-moves.ts";
 import { writeMoment } from "./write-moment.ts";
 
 /** What was moved as it was logged: a row a support, with the move's flags and the reason given. */

@@ -6,31 +6,43 @@ import {
   textColumn,
   type Cell,
   type FigureTable,
-} from "../../../../shared/figures/figure-table.ts";
-import { computedSurveys, type ComputedSurvey } from "../../../../shared/figures/job/compared-surveys.ts";
+} from "../../../shared/figures/figure-table.ts";
+import { computedSurveys, type ComputedSurvey } from "../../../shared/figures/job/compared-surveys.ts";
 import {
   decimalsAcross,
   decimalsAlong,
   decimalsFor,
   writeNumber,
   writeSigned,
-} from "../../../../shared/figures/write-number.ts";
-import type { LengthUnit } from "../../../../shared/units.ts";
-import type { JobRecord } from "../../../../shared/schemas/jobs.ts";
-import type { MachineStation } from "../../../../shared/schemas/machines.ts";
+} from "../../../shared/figures/write-number.ts";
+import type { JobRecord } from "../../../shared/schemas/jobs.ts";
+import type { MachineDocument, MachineStation } from "../../../shared/schemas/machines.ts";
+import { concessionOf } from "../found-and-left.ts";
 
-/** A tolerance in words: "R 0.12" is round, planes are half-widths or ranges. */
-export function toleranceWords({ tolerance }: Pick<MachineStation, "tolerance">, unit: LengthUnit): string {
-  const decimals = Math.min(4, decimalsAcross(unit));
-  // Zeros that say nothing are left out: "0.12", not "0.1200".
-  const plain = (text: string): string => (text.includes(".") ? text.replace(/\.?0+$/, "") : text);
-  const number = (value: number): string => plain(writeNumber(value, decimalsFor([value], decimals)));
+/** Decimals that show every tolerance of a machine: as few as do, never more than a result has. */
+function toleranceDecimals({ stations, units }: MachineDocument): number {
+  const most = decimalsAcross(units.offset);
+  const needed = stations.flatMap(({ tolerance }) =>
+    tolerance
+      ? Object.values(tolerance)
+          .flat()
+          .map((limit) => {
+            const decimals = Array.from({ length: most }, (_, index) => index);
+            return decimals.find((one) => Number(limit.toFixed(one)) === limit) ?? most;
+          })
+      : [],
+  );
+  return Math.max(0, ...needed);
+}
+
+/** A tolerance in words: "radial 0.12" is round, planes are half-widths or ranges. */
+export function toleranceWords({ tolerance }: Pick<MachineStation, "tolerance">, decimals: number): string {
   const side = (one: number | readonly number[]): string =>
     typeof one === "number"
-      ? `\u00b1${number(one)}`
-      : `${plain(writeSigned(one[0] ?? 0, decimals))} to ${plain(writeSigned(one[1] ?? 0, decimals))}`;
+      ? `\u00b1${writeNumber(one, decimals)}`
+      : `${writeSigned(one[0] ?? 0, decimals)} to ${writeSigned(one[1] ?? 0, decimals)}`;
   if (!tolerance) return "none";
-  if ("radial" in tolerance) return `radial ${number(tolerance.radial)}`;
+  if ("radial" in tolerance) return `radial ${writeNumber(tolerance.radial, decimals)}`;
   const [h, v] = [side(tolerance.h), side(tolerance.v)];
   return h === v ? `h, v ${h}` : `h ${h}, v ${v}`;
 }
@@ -61,7 +73,7 @@ export function tabulateStations({ machine, details }: JobRecord): FigureTable {
       numberCell(station.nominalDiameter, Math.min(3, decimalsAcross(bore))),
       signedCell(station.target?.h ?? 0, decimalsAcross(offset)),
       signedCell(station.target?.v ?? 0, decimalsAcross(offset)),
-      textCell(toleranceWords(station, offset)),
+      textCell(toleranceWords(station, toleranceDecimals(machine))),
     ]),
   };
 }
@@ -80,7 +92,7 @@ export function tabulateFoundAndLeft(record: JobRecord): FigureTable {
     ]),
     decimalsAcross(offset),
   );
-  const conceded = new Map(record.concessions.map(({ station, name }) => [station, name]));
+  const tolerances = toleranceDecimals(record.machine);
   return {
     caption: "Every station, survey by survey",
     columns: [
@@ -110,7 +122,7 @@ export function tabulateFoundAndLeft(record: JobRecord): FigureTable {
         numberCell(station.z, decimalsAlong(axial)),
         signedCell(station.target?.h ?? 0, decimals),
         signedCell(station.target?.v ?? 0, decimals),
-        textCell(toleranceWords(station, offset)),
+        textCell(toleranceWords(station, tolerances)),
       ];
       const blank = head.map(() => textCell(""));
       return measured.map((survey, index) => {
@@ -119,7 +131,7 @@ export function tabulateFoundAndLeft(record: JobRecord): FigureTable {
         return [
           ...(index === 0 ? [name, ...head.slice(1)] : blank),
           ...surveyCells(survey, station.id, decimals),
-          textCell(conceded.get(station.id) ?? "\u2013"),
+          textCell(concessionOf(record, survey, station.id)?.name ?? "\u2013"),
         ];
       });
     }),
