@@ -259,7 +259,8 @@ export const shimMoveResult = z
             "alone: each component by itself, the stock is enough for all. enumeration, mixed_integer_program: all components together, for the stock they share. in_turn: each with what those before it leave.",
         }),
         proved: z.boolean().meta({
-          description: "Whether no better choice exists, in cost, pieces handled, total change and stock order.",
+          description:
+            "Whether no better choice exists, in cost, pieces handled, total change and stock order.",
         }),
         gap: z.number().nullable().meta({
           description:
