@@ -27,7 +27,8 @@ const testColumns: readonly Column[] = [
 const testCells = ({ statistic, limit, dof }: Test): Cell[] => [
   numberCell(statistic, 3),
   numberCell(limit, 3),
-  numberCell(dof, 1),
+  // Hundreds of them are as good as any number: a tenth says nothing.
+  numberCell(dof, dof !== null && dof >= 100 ? 0 : 1),
 ];
 const pairColumns = (name: string, unit: string) => [
   numberColumn(`${name} h`, unit),

@@ -111,6 +111,23 @@ describe("the tables of a move sheet", () => {
     expect(stacks?.rows.map((row) => row[9])).toMatchObject([{ decimals: 4 }, { decimals: 4 }]);
   });
 
+  it("write the pieces of all stacks with equal decimals, as many as the finest needs", () => {
+    const [casing, ...rest] = result.components;
+    const [forward, aft] = casing!.stacks;
+    const stacks = [
+      { ...forward!, add: [10, 0.075] },
+      { ...aft!, remove: [9.9] },
+    ];
+    const table = tabulateStacks({ ...result, components: [{ ...casing!, stacks }, ...rest] }, units);
+    const words = table!.rows.map((row) =>
+      row.slice(7, 9).map((cell) => (cell.kind === "text" ? cell.text : "")),
+    );
+    expect(words).toEqual([
+      ["10.000 + 0.075", "–"],
+      ["–", "9.900"],
+    ]);
+  });
+
   it("are left out where there is nothing to tell", () => {
     const nothing = { ...result, components: [], steps: [] };
     expect(tabulateStacks(nothing, units)).toBeNull();

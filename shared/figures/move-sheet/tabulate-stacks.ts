@@ -22,7 +22,11 @@ export function tabulateStacks(result: ShimMoveResult, units: Units): FigureTabl
     stacks.flatMap(({ from, to, ideal, change }) => [from, to, ideal, change]),
     decimalsAcross(unit),
   );
-  const pieces = (thicknesses: readonly number[]) => textCell(writePieces(thicknesses, decimals));
+  const pieceDecimals = decimalsNeeded(
+    stacks.flatMap(({ add, remove }) => [...add, ...remove]),
+    decimals,
+  );
+  const pieces = (thicknesses: readonly number[]) => textCell(writePieces(thicknesses, pieceDecimals));
   const piecesColumn = (heading: string): Column => ({ heading, unit, align: "start" });
   return {
     caption: "Shims",
@@ -53,8 +57,19 @@ export function tabulateStacks(result: ShimMoveResult, units: Units): FigureTabl
   };
 }
 
-/** Piece by piece, without zeros that say nothing: "1 + 0.05". */
+/** Piece by piece, all with as many decimals as the finest piece needs: "1.00 + 0.05". */
 function writePieces(thicknesses: readonly number[], decimals: number): string {
   if (thicknesses.length === 0) return "–";
-  return thicknesses.map((thickness) => String(Number(writeNumber(thickness, decimals)))).join(" + ");
+  return thicknesses.map((thickness) => writeNumber(thickness, decimals)).join(" + ");
+}
+
+/** The fewest decimals that write all of `values` as `most` decimals would. */
+function decimalsNeeded(values: readonly number[], most: number): number {
+  const needed = values.map(
+    (value) =>
+      writeNumber(value, most)
+        .replace(/\.?0+$/, "")
+        .split(".")[1]?.length,
+  );
+  return Math.max(0, ...needed.map((length = 0) => length));
 }
