@@ -52,6 +52,8 @@ export const limits = {
   entriesPerJob: 20_000,
   /** Of JSON in all entries of a job's log. */
   charactersPerJob: 64 * 1024 * 1024,
+  /** Entries and indications together: what who watches a job can be told. */
+  eventsPerJob: 500_000,
   readingFilesPerJob: 500,
   jobsPerHistory: 20,
   /** Streams that one credential may have open in one process. */

@@ -1,4 +1,5 @@
 import type { Transaction } from "sequelize";
+import { limits } from "../../shared/limits.ts";
 import type { IndicationAnswer, IndicationRequest } from "../../shared/schemas/indications.ts";
 import type { Deps } from "../deps.ts";
 import { HttpProblem, problemOfFaults } from "../http/http-problem.ts";
@@ -39,7 +40,7 @@ export class JobFollower {
 
   /**
    * Keeps it with what was answered to it, as the next event of its job.
-   * @throws HttpProblem not_found, job_signed where the job was signed meanwhile
+   * @throws HttpProblem not_found, job_signed where the job was signed meanwhile, call_too_large
    */
   async keep(
     transaction: Transaction,
@@ -49,6 +50,10 @@ export class JobFollower {
     const organisationId = by.caller.organisation.id;
     const row = await lockJob(deps, transaction, organisationId, jobId);
     refuseSigned(row);
+    if (row.events >= limits.eventsPerJob) {
+      const detail = `A job keeps ${limits.eventsPerJob} events: log the move, and go on without indications.`;
+      throw new HttpProblem("call_too_large", detail, { limit: limits.eventsPerJob });
+    }
     const createdAt = deps.now();
     const answer = { id: deps.newId(), createdAt: createdAt.toISOString(), ...followed };
     await row.update({ events: row.events + 1 }, { transaction });

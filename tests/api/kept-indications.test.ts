@@ -3,6 +3,7 @@ import { once } from "node:events";
 import { setTimeout as sleep } from "node:timers/promises";
 import { QueryTypes } from "sequelize";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { limits } from "../../shared/limits.ts";
 import type { Caller } from "../../server/services/caller.ts";
 import { JobFollower } from "../../server/services/follow-job.ts";
 import { inTransaction } from "../../server/services/in-transaction.ts";
@@ -86,6 +87,25 @@ describe("what is kept of a followed move", () => {
     expect([first.status, again.headers["idempotent-replayed"]]).toEqual([201, "true"]);
     expect(again.text).toBe(first.text);
     expect(await count()).toBe(before + 1);
+  });
+
+  it("keeps no more indications than a job may hold, and tells the rest so", async () => {
+    const { jobs } = app.deps.database.models;
+    const { events } = await jobs.findOne({ where: { id: move.job.id }, rejectOnEmpty: true });
+    await jobs.update({ events: limits.eventsPerJob - 1 }, { where: { id: move.job.id } });
+    const [last, more] = [
+      await move.indicate({ sights: move.sights(0.4) }),
+      await move.indicate({ sights: move.sights(0.4) }),
+    ];
+    expect([last.status, more.status, more.answer]).toEqual([
+      201,
+      413,
+      expect.objectContaining({ code: "call_too_large", limit: limits.eventsPerJob }),
+    ]);
+    await app.deps.database.models.jobIndications.destroy({
+      where: { jobId: move.job.id, event: limits.eventsPerJob },
+    });
+    await jobs.update({ events }, { where: { id: move.job.id } });
   });
 
   it("ends a stream of indications whose key is revoked, and keeps nothing more of it", async () => {

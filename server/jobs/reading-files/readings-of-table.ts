@@ -6,16 +6,23 @@ import type { Units } from "../../../shared/units.ts";
 import { schemaFaults } from "../../http/schema-faults.ts";
 import { decimalSigns, readBoolean, readMoment, readNumber, type Decimal } from "./read-cell.ts";
 import { readingColumns, type Column, type MappedColumn, type ReadingColumn } from "./reading-columns.ts";
+import {
+  bodyOf,
+  rowMembers,
+  wholeMembers,
+  wireMembers,
+  type GatheredValues,
+  type Value,
+  type Values,
+} from "./reading-members.ts";
 import type { Cell, Table, TableFault } from "./table.ts";
 
-type Value = string | number | boolean;
-type Values = Partial<Record<ReadingColumn, Value>>;
-
 /** A reading as its rows tell it, before it is known to be sound. */
-interface Gathered {
+interface Gathered extends GatheredValues {
   readonly line: number;
-  readonly whole: Values;
   readonly rows: { readonly line: number; readonly values: Values }[];
+  /** Cells that are there and could not be read: told where they stand, and not missing beside. */
+  readonly unread: Set<string>;
 }
 
 export interface ReadReadings {
@@ -49,7 +56,7 @@ export function readingsOfTable(table: Table, columns: readonly MappedColumn[], 
   for (const one of gathered) {
     const body = bodyOf(one);
     const wrong = schemaFaults(readingSchema, body);
-    faults.push(...wrong.map((fault) => placed(fault, one)));
+    faults.push(...wrong.flatMap((fault) => placed(fault, one) ?? []));
     if (wrong.length > 0) continue;
     sound.push(readingSchema.parse(body));
     lines.push(one.line);
@@ -65,11 +72,12 @@ function gather(
 ): Gathered[] {
   const all = new Map<string, Gathered>();
   for (const { line, cells } of table.rows) {
-    const { whole, row } = readRow(line, cells, columns, units, faults);
+    const { whole, row, unread } = readRow(line, cells, columns, units, faults);
     const place = JSON.stringify([whole.station, whole["taken at"], whole.closing ?? false]);
     const earlier = all.get(place);
-    const reading = earlier ?? { line, whole: { ...whole }, rows: [] };
+    const reading = earlier ?? { line, whole: { ...whole }, rows: [], unread: new Set() };
     all.set(place, reading);
+    for (const column of unread) reading.unread.add(cellKey(column, line));
     for (const [name, value] of Object.entries(whole) as [ReadingColumn, Value][]) {
       const stands = reading.whole[name];
       if (stands === undefined) reading.whole[name] = value;
@@ -89,7 +97,8 @@ function readRow(
   columns: readonly MappedColumn[],
   units: Units,
   faults: TableFault[],
-): { whole: Values; row: Values } {
+): { whole: Values; row: Values; unread: readonly ReadingColumn[] } {
+  const unread: ReadingColumn[] = [];
   const whole: Values = {};
   const row: Values = {};
   const isSpots = cells.some(
@@ -101,6 +110,7 @@ function readRow(
     const { of, as, dimension }: Column = readingColumns[column];
     const read = readAs(as, cell);
     if (read === null) {
+      unread.push(column);
       faults.push({
         line,
         column: header,
@@ -122,7 +132,7 @@ function readRow(
       detail: "The row has more cells than the head.",
     });
   }
-  return { whole, row };
+  return { whole, row, unread };
 }
 
 const wanted: Readonly<Record<string, string>> = {
@@ -141,60 +151,19 @@ function readAs(as: string, cell: Cell): Value | null {
 
 const cut = (cell: Cell): string => `"${String(cell).slice(0, limits.echoedTextLength)}"`;
 
-/** The members of a reading, by the names of the wire. */
-function bodyOf({ whole, rows }: Gathered): Record<string, unknown> {
-  const { form } = whole;
-  const rowsAs = (names: Readonly<Record<string, ReadingColumn>>) =>
-    rows.map(({ values }) => named(values, names));
-  const lists: Readonly<Record<string, object>> = {
-    points: { points: rowsAs({ h: "h", v: "v", z: "z", u: "u" }) },
-    turned_gauge: { readings: rowsAs({ clockDeg: "clock", reading: "reading", u: "u" }) },
-    rotating_target: { spots: rowsAs({ clockDeg: "clock", h: "h", v: "v", u: "u" }) },
-    wire: {
-      wire: named(whole, {
-        left: "left",
-        right: "right",
-        bottom: "bottom",
-        top: "top",
-        sag: "sag",
-        wireDiameter: "wire diameter",
-        measuredTo: "measured to",
-      }),
-    },
-  };
-  return {
-    ...named(whole, {
-      station: "station",
-      form: "form",
-      takenAt: "taken at",
-      person: "person",
-      upperHalf: "upper half",
-      instrument: "instrument",
-      closing: "closing",
-      seen: "seen",
-      sense: "sense",
-      zero: "zero",
-      method: "method",
-      nominalDiameter: "nominal diameter",
-      readingUncertainty: "reading uncertainty",
-      gaugeSag: "gauge sag",
-    }),
-    ...(typeof form === "string" ? lists[form] : {}),
-  };
-}
+/** A cell of a row by its line; of the whole reading by its column alone, wherever it stands. */
+const cellKey = (column: ReadingColumn, line: number): string =>
+  readingColumns[column].of === "row" ? `${column} ${line}` : column;
 
-function named(values: Values, names: Readonly<Record<string, ReadingColumn>>): Record<string, Value> {
-  return Object.fromEntries(
-    Object.entries(names).flatMap(([member, column]) => {
-      const value = values[column];
-      return value === undefined ? [] : [[member, value]];
-    }),
-  );
-}
-
-/** A fault of a reading at the line it comes from. */
-function placed({ pointer, code, detail }: Fault, { line, rows }: Gathered): TableFault {
-  const [, list, index, member] = pointer.split("/");
-  const row = list === "points" || list === "readings" || list === "spots" ? rows[Number(index)] : undefined;
-  return { line: row?.line ?? line, column: (row ? member : list) ?? null, code, detail };
+/** A fault of a reading at the line and column it comes from; null for what is missing because its cell was not read. */
+function placed({ pointer, code, detail }: Fault, { line, rows, unread }: Gathered): TableFault | null {
+  const [, member = "", index, inner = ""] = pointer.split("/");
+  const row = ["points", "readings", "spots"].includes(member) ? rows[Number(index)] : undefined;
+  const column = row
+    ? rowMembers[inner]
+    : member === "wire"
+      ? wireMembers[index ?? ""]
+      : wholeMembers[member];
+  if (code === "required" && column && unread.has(cellKey(column, row?.line ?? line))) return null;
+  return { line: row?.line ?? line, column: column ?? ((row ? inner : member) || null), code, detail };
 }
