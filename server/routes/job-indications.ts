@@ -104,7 +104,7 @@ const watchJobOperation = defineOperation({
   tag,
   summary: "Watch a job",
   description:
-    "Server-sent events: `indication` with what was answered to it, `entry` for what was added to the log, `end` with its reason before the service ends the stream. Ids are the numbers of the job's events, from 1 and without a gap, in the order in which they were kept; Last-Event-ID goes on where a stream was cut (0: from the first), without it the stream begins now.",
+    "Server-sent events: `watching` with the number of the last event that is known, once; `indication` with what was answered to it, `entry` for what was added to the log, `end` with its reason before the service ends the stream. Ids are the numbers of the job's events, from 1 and without a gap, in the order in which they were kept; Last-Event-ID goes on where a stream was cut (0: from the first), without it the stream begins now.",
   response: { status: 200, description: "The events.", mediaType: "text/event-stream", schema: z.string() },
   errors: ["rate_limited"],
   handle: async (call) => {

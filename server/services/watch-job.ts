@@ -85,8 +85,8 @@ export async function watchJob(
     await sink.write(text);
     spokeAt = performance.now();
   };
-  // An id without an event: a reader that is cut off before the first one knows where to go on.
-  await say(`: watching\nid: ${sent}\n\n`);
+  // A reader that is cut off before the first event knows where to go on.
+  await say(`id: ${sent}\nevent: watching\ndata: ${JSON.stringify({ last: sent })}\n\n`);
   while (sink.isOpen()) {
     if (deps.shutdown.begun) return await say('event: end\ndata: {"reason":"service_stopping"}\n\n');
     if (performance.now() - checkedAt > CREDENTIAL_CHECK_MS) {

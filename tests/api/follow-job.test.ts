@@ -114,9 +114,10 @@ describe("following a move", () => {
       return { watcher, heard: collect(response) };
     };
     const first = await watch();
-    await until(() => /^id: \d+\n\n/m.test(first.heard.text));
-    expect(first.heard.text).not.toContain("event:");
-    const [, place = ""] = /^id: (\d+)$/m.exec(first.heard.text) ?? [];
+    await until(() => first.heard.text.endsWith("\n\n"));
+    const [, place = ""] =
+      /^id: (\d+)\nevent: watching\ndata: \{"last":\1\}\n\n$/.exec(first.heard.text) ?? [];
+    expect(place).not.toBe("");
     first.watcher.destroy();
     const { answer } = await move.indicate({ indicators: [{ id: "compressor-aft-top", reading: 0.1 }] });
     const second = await watch({ "Last-Event-ID": place });

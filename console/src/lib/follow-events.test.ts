@@ -1,13 +1,13 @@
 import { describe, expect, it } from "vitest";
 import { problemKinds, type ProblemCode } from "../../../shared/error-codes.ts";
-import { delayAfter, followEvents } from "./follow-events.ts";
-import type { StreamEvent } from "./read-event-stream.ts";
+import { delayAfter, followEvents, type StreamEvent } from "./follow-events.ts";
 import { NoAnswerError, ProblemError } from "./service-error.ts";
 
-const streamOf = (text: string) =>
+const bytesOf = (text: string) => new TextEncoder().encode(text);
+const streamOf = (...pieces: Uint8Array[]) =>
   new ReadableStream<Uint8Array>({
     start(controller) {
-      controller.enqueue(new TextEncoder().encode(text));
+      for (const piece of pieces) controller.enqueue(piece);
       controller.close();
     },
   });
@@ -31,7 +31,7 @@ async function follow(attempts: readonly (string | Error)[], lastId: string | nu
       asked.push(id);
       if (answer === undefined || answer instanceof Error)
         return Promise.reject(answer ?? new Error("No more."));
-      return Promise.resolve(streamOf(answer));
+      return Promise.resolve(streamOf(bytesOf(answer)));
     },
     onEvent: (event) => events.push(event),
     onState: (state) => states.push(state),
@@ -53,7 +53,29 @@ describe("followEvents", () => {
   });
 
   it("goes on from the place that the service named before any event", async () => {
-    expect((await follow([": watching\nid: 41\n\n", ""])).asked).toEqual([null, "41"]);
+    const { asked, events } = await follow(['id: 41\nevent: watching\ndata: {"last":41}\n\n', ""]);
+    expect([asked, events]).toEqual([[null, "41"], []]);
+  });
+
+  it("hears the same wherever the stream is cut, and not what its end cuts off", async () => {
+    const text = 'id: 7\r\nevent: entry\r\ndata: {"a":"σ"}\r\n\r\n: alive\n\ndata: 8\n\ndata: 9';
+    const bytes = bytesOf(text);
+    for (let at = 0; at <= bytes.length; at++) {
+      const events: StreamEvent[] = [];
+      const ending = new AbortController();
+      await followEvents({
+        lastId: null,
+        signal: ending.signal,
+        open: () => Promise.resolve(streamOf(bytes.slice(0, at), bytes.slice(at))),
+        onEvent: (event) => events.push(event),
+        onState: () => undefined,
+        wait: () => Promise.resolve(ending.abort()),
+      });
+      expect(events).toEqual([
+        { type: "entry", data: '{"a":"σ"}' },
+        { type: "message", data: "8" },
+      ]);
+    }
   });
 
   it("keeps the place it was given while nothing was heard", async () => {

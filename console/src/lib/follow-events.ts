@@ -1,5 +1,10 @@
-import { createEventReader, type StreamEvent } from "./read-event-stream.ts";
+import { createParser } from "eventsource-parser";
 import { ProblemError } from "./service-error.ts";
+
+export interface StreamEvent {
+  readonly type: string;
+  readonly data: string;
+}
 
 export type StreamState = "live" | "reconnecting" | "stopped";
 
@@ -14,6 +19,8 @@ export interface EventSubscription {
   readonly wait?: (milliseconds: number, signal: AbortSignal) => Promise<void>;
 }
 
+/** The service's first word: where the stream begins. */
+const greeting = "watching";
 /** The service says that it is alive every 10 s: after this long without a word the line is dead. */
 const silenceMs = 35_000;
 const [firstDelayMs, longestDelayMs] = [500, 30_000];
@@ -40,10 +47,11 @@ export async function followEvents({
     try {
       const stream = await open(lastId, signal);
       onState("live", null);
-      for await (const { events, lastId: id } of readEvents(stream, signal)) {
-        if (id !== "") lastId = id;
-        if (events.length > 0) failures = 0;
-        events.forEach(onEvent);
+      for await (const { id, type, data } of readEvents(stream, signal)) {
+        lastId = id ?? lastId;
+        if (type === greeting) continue;
+        failures = 0;
+        onEvent({ type, data });
       }
     } catch (caught) {
       error = caught;
@@ -62,18 +70,23 @@ export function delayAfter(failures: number, chance = Math.random()): number {
   return Math.min(longestDelayMs, firstDelayMs * 2 ** failures) * (0.5 + chance / 2);
 }
 
+/** The browser's own EventSource sends no Authorization, so the stream is fetched and read here. */
 async function* readEvents(stream: ReadableStream<Uint8Array>, signal: AbortSignal) {
   const reader = stream.getReader();
   const cancel = (): void => void reader.cancel().catch(() => undefined);
   signal.addEventListener("abort", cancel);
   const decoder = new TextDecoder();
-  const events = createEventReader();
+  const heard: (StreamEvent & { readonly id: string | undefined })[] = [];
+  const parser = createParser({
+    onEvent: ({ id, event = "message", data }) => heard.push({ id, type: event, data }),
+  });
   try {
     for (;;) {
       const silence = setTimeout(cancel, silenceMs);
       const { done, value } = await reader.read().finally(() => clearTimeout(silence));
       if (done || signal.aborted) return;
-      yield { events: events.take(decoder.decode(value, { stream: true })), lastId: events.lastId() };
+      parser.feed(decoder.decode(value, { stream: true }));
+      yield* heard.splice(0);
     }
   } finally {
     signal.removeEventListener("abort", cancel);

@@ -19,7 +19,7 @@ export class FakeEvents {
         this.controller = null;
       },
     });
-    this.write(`: watching\nid: ${this.number}\n\n`);
+    this.write(`id: ${this.number}\nevent: watching\ndata: {"last":${this.number}}\n\n`);
     return { status: 200, body };
   };
 

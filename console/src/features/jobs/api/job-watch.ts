@@ -1,8 +1,7 @@
 import { indicationAnswer, type IndicationAnswer } from "../../../../../shared/schemas/indications.ts";
 import { apiPaths } from "../../../config/paths.ts";
 import { openStreamAsMember } from "../../../lib/call-api.ts";
-import { followEvents, type StreamState } from "../../../lib/follow-events.ts";
-import type { StreamEvent } from "../../../lib/read-event-stream.ts";
+import { followEvents, type StreamEvent, type StreamState } from "../../../lib/follow-events.ts";
 import { NoAnswerError } from "../../../lib/service-error.ts";
 
 export interface Watched {
