@@ -129,7 +129,10 @@ function headersOf(operation: Operation, access: Access): z.ZodObject | null {
 /** A body that is a file, in any of these media types. */
 function fileContent(mediaTypes: readonly string[]) {
   const schema = z.string().meta({ format: "binary", description: "The file's bytes." });
-  return Object.fromEntries(mediaTypes.map((mediaType) => [mediaType, { schema }]));
+  const json = z.record(z.string(), z.unknown());
+  return Object.fromEntries(
+    mediaTypes.map((mediaType) => [mediaType, { schema: mediaType === "application/json" ? json : schema }]),
+  );
 }
 
 function successOf({ response }: Operation) {

@@ -7,6 +7,7 @@ import type {
   SurveyRequest,
 } from "../../shared/schemas/job-entries.ts";
 import type { ShimMoveResult } from "../../shared/schemas/shim-moves.ts";
+import { plannedBoreMoves } from "../../shared/planned-move.ts";
 import { setUpCheckIds } from "../../shared/set-up-checks.ts";
 import { fellgateStations, referenceStations } from "./fellgate-machine.ts";
 import { readBore } from "./fellgate-readings.ts";
@@ -118,7 +119,7 @@ export function movesAsPlanned(moves: Pick<ShimMoveResult, "steps" | "components
     component,
     at: `2026-11-${String(6 + Math.floor(index / 4)).padStart(2, "0")}T${String(8 + 2 * (index % 4)).padStart(2, "0")}:00:00Z`,
     person: MILLWRIGHT,
-    moved: moves.components.find(({ id }) => id === component)?.realised ?? [],
+    moved: plannedBoreMoves(moves.components.find(({ id }) => id === component)),
     finished: true,
   }));
 }

@@ -2,6 +2,7 @@ import type { BoreFitResult } from "../../shared/schemas/bore-fits.ts";
 import type { IndicationAnswer, IndicationRequest } from "../../shared/schemas/indications.ts";
 import type { MachineDocument } from "../../shared/schemas/machines.ts";
 import type { ShimMoveResult } from "../../shared/schemas/shim-moves.ts";
+import { plannedBoreMoves } from "../../shared/planned-move.ts";
 import { convertersFor } from "../../shared/units.ts";
 import type { Fault } from "../../shared/error-codes.ts";
 import { unknownReference } from "../calculations/common-faults.ts";
@@ -84,7 +85,7 @@ export function followComponent(basis: FollowBasis, indication: IndicationReques
       zMm: axial.toMm(z),
       blocked: blocked ?? [],
     })),
-    wanted: (plan.components.find(({ id }) => id === indication.component)?.realised ?? []).map(
+    wanted: plannedBoreMoves(plan.components.find(({ id }) => id === indication.component)).map(
       ({ support, h, v }) => ({ supportId: support, hMm: offset.toMm(h), vMm: offset.toMm(v) }),
     ),
     indicators: indicators.map(({ indicator, reading }) => ({

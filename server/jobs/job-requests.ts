@@ -3,6 +3,7 @@ import type { BoreFitRequest, BoreFitResult, BoreRequest } from "../../shared/sc
 import type { ConfirmationRequest } from "../../shared/schemas/confirmations.ts";
 import type { JobDetails, Reading } from "../../shared/schemas/job-entries.ts";
 import { limits } from "../../shared/limits.ts";
+import { plannedBoreMoves } from "../../shared/planned-move.ts";
 import type { MachineDocument } from "../../shared/schemas/machines.ts";
 import type { ShimMoveRequest, ShimMoveResult } from "../../shared/schemas/shim-moves.ts";
 import type { Units } from "../../shared/units.ts";
@@ -185,7 +186,7 @@ export function confirmationRequestOf(
     })),
     moves: (planned?.components ?? [])
       .filter(({ id }) => touched.has(id))
-      .flatMap(({ id, realised }) => realised.map(({ support, h, v }) => ({ component: id, support, h, v }))),
+      .flatMap((one) => plannedBoreMoves(one).map((move) => ({ component: one.id, ...move }))),
     log: [
       ...state.moves.map(({ document }) => ({
         at: document.at,

@@ -25,6 +25,17 @@ describe("moveOrderFlags", () => {
     expect(codes([], { component: "bearing-2", at, finished: true })).toEqual(["bearing_before_casing"]);
   });
 
+  it("marks a bearing that moves before a casing that is only to be turned", () => {
+    const still = [{ support: "s", h: 0, v: 0 }];
+    const waiting = (roll: object) => {
+      const components = [{ id: "casing", realised: still, roll }, plan.components[1]];
+      const bearing = { component: "bearing-2", at, finished: true };
+      return moveOrderFlags(machine, { components } as unknown as ShimMoveResult, [], bearing);
+    };
+    expect(waiting({ found: 1e-4, predicted: 0 }).map(({ code }) => code)).toEqual(["bearing_before_casing"]);
+    expect(waiting({ found: 1e-4, predicted: 1e-4 })).toEqual([]);
+  });
+
   it("marks a casing that moves after a bearing", () => {
     const casing = { component: "casing", at, finished: true };
     const bearing = { component: "bearing-2", at, finished: true };

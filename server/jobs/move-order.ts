@@ -76,9 +76,12 @@ export function stationsMovedBy(machine: MachineDocument, component: string): st
   return [...new Set(visit(component).flatMap(({ stations }) => stations ?? []))];
 }
 
-/** Components that a plan moves. */
+/** Components that a plan moves, or turns. */
 function plannedMoves(plan: ShimMoveResult | null): string[] {
   return (plan?.components ?? [])
-    .filter(({ realised }) => realised.some(({ h, v }) => h !== 0 || v !== 0))
+    .filter(
+      ({ realised, roll }) =>
+        roll?.found !== roll?.predicted || realised.some(({ h, v }) => h !== 0 || v !== 0),
+    )
     .map(({ id }) => id);
 }

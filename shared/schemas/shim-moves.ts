@@ -201,7 +201,8 @@ const componentAnswer = z
         found: z.number().meta({ description: "Radians, clockwise positive." }),
         predicted: z.number().meta({ description: "What the shims chosen leave of it." }),
         boreShift: z.object({ h: z.number(), v: z.number() }).meta({
-          description: "How far the bores move while the roll is taken out: part of predicted, not of moves.",
+          description:
+            "How far the bores move while the roll is taken out: part of predicted and of what indicators read, not of moves.",
         }),
       })
       .meta({ id: "RollAnswer" })
@@ -225,7 +226,10 @@ const stepAnswer = z
           indicators: z.array(z.object({ id: z.string(), reading: z.number() })),
         }),
       )
-      .meta({ description: "Equal parts, cumulative from the component's start." }),
+      .meta({
+        description:
+          "Equal parts, cumulative from the component's start. Indicators read the move of the bore: with a roll, that of the supports and boreShift.",
+      }),
     watch: z.array(
       z.object({
         station: z.string(),

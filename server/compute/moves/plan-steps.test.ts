@@ -121,6 +121,33 @@ describe("the parts of a step", () => {
     near(beyond!.readingMm, -0.4);
   });
 
+  it("read what the bore does while a roll is taken out, for an indicator points at the bore", () => {
+    // Feet 650 below the bore, 0.0001 rad clockwise: turned back, the bore goes 0.065 to the left (rigid body, small angles).
+    const feet = [
+      { supportId: "f", place: "left" as const, hMm: -1000, vMm: -650 },
+      { supportId: "f", place: "right" as const, hMm: 1000, vMm: -650 },
+    ];
+    const indicators = [
+      indicator("top", 0),
+      indicator("right", 90),
+      indicator("inside-right", 90, "inside"),
+      indicator("oblique", 45),
+    ];
+    const { answer, plan } = solvePart(
+      [stationOff("s", 0, 0.2, -0.3)],
+      [feetAt("f", 0)],
+      { maximumIncrementMm: 0.25, indicators },
+      { roll: { radians: 1e-4, feet } },
+    );
+    near(answer.realised[0]!.hMm, -0.135);
+    const [half, whole] = plan.steps[0]!.increments;
+    const readings = whole!.readings.map(({ readingMm }) => readingMm);
+    [0.3, -0.2, 0.2, (0.3 - 0.2) * Math.SQRT1_2].forEach((wanted, k) => {
+      near(readings[k]!, wanted);
+      near(half!.readings[k]!.readingMm, wanted / 2);
+    });
+  });
+
   it("are refused by code when a call would make more of them than it may", () => {
     const most = { maximumIncrementMm: 0.01, incrementsMax: 20 };
     expect(solveMoves(machineOf(["casing", "bearing"], most)).steps.length).toBe(2);

@@ -40,10 +40,7 @@ export function incrementCount(moves: readonly SupportMove[], maximumMm: number 
   return maximumMm === null ? 1 : Math.max(1, Math.ceil(largestMm / maximumMm - 1e-9));
 }
 
-function incrementsOf(
-  problem: MoveProblem,
-  { component, answer, supportMove }: SolvedComponent,
-): Increment[] {
+function incrementsOf(problem: MoveProblem, { component, answer, realised }: SolvedComponent): Increment[] {
   const indicators = problem.indicators.filter(({ componentId }) => componentId === component.id);
   const count = incrementCount(answer.realised, problem.maximumIncrementMm);
   return Array.from({ length: count }, (_, k) => {
@@ -56,13 +53,16 @@ function incrementsOf(
       })),
       readings: indicators.map((indicator) => ({
         indicatorId: indicator.id,
-        readingMm: readingMm(indicator, supportMove) * share,
+        readingMm: readingMm(indicator, realised) * share,
       })),
     };
   });
 }
 
-/** Positive when the part moves toward the indicator along its clock direction; reversed for one inside the bore. */
+/**
+ * Positive when the part moves toward the indicator along its clock direction; reversed for one inside the bore. `move` is
+ * that of the bores: an indicator points at the bore, and a part turned about it comes no nearer (rigid body, small angles).
+ */
 function readingMm({ zMm, clockDeg, contact }: MoveIndicator, move: RigidMove): number {
   const { h, v } = clockDirection(clockDeg);
   const { hMm, vMm } = move(zMm);

@@ -77,7 +77,7 @@ export const moveSolving: readonly Method[] = [
     title: "Roll",
     asked: "roll: {radians, feet}",
     says: [
-      "Clockwise positive, seen downstream. A measured roll is taken out by differences between the feet; the bore stands above them and moves sideways while that is done, and the stations are served from where that leaves them. Without a roll both feet are changed alike, so that it is kept.",
+      "Clockwise positive, seen downstream. A measured roll is taken out by differences between the feet; the bore stands above them and moves sideways while that is done, and the stations are served from where that leaves them. Indicators point at the bore and read its move. Without a roll both feet are changed alike, so that it is kept.",
     ],
     formulas: ["foot at h: +h · roll", "bore: roll · height, toward −h for a clockwise roll"],
     where: [["h", "of the foot from the bore's centre, small angles"]],

@@ -1,6 +1,7 @@
 import { useState } from "react";
 import { decimalsAcross, writeSigned } from "../../../../../shared/figures/write-number.ts";
 import { loggedMoveRequest } from "../../../../../shared/schemas/job-entries.ts";
+import { plannedBoreMoves } from "../../../../../shared/planned-move.ts";
 import type { JobRecord } from "../../../../../shared/schemas/jobs.ts";
 import { SelectField } from "../../../components/ui/select-field.tsx";
 import { TextAreaField, TextField } from "../../../components/ui/text-field.tsx";
@@ -18,7 +19,7 @@ export function LogMove({ record }: { record: JobRecord }) {
   // Supports left empty are not sent, so a fault's place counts only those that were.
   const [sent, setSent] = useState<readonly string[]>([]);
   const supports = (components.find(({ id }) => id === chosen)?.supports ?? []).map(({ id }) => id);
-  const planned = record.plans.at(-1)?.result.components.find(({ id }) => id === chosen)?.realised ?? [];
+  const planned = plannedBoreMoves(record.plans.at(-1)?.result.components.find(({ id }) => id === chosen));
   const plannedWords = (support: string, plane: "h" | "v"): string | undefined => {
     const move = planned.find((one) => one.support === support);
     return move && `planned ${writeSigned(move[plane], decimalsAcross(units.offset))}`;

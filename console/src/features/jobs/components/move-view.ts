@@ -6,6 +6,7 @@ import {
   type FigureTable,
 } from "../../../../../shared/figures/figure-table.ts";
 import { decimalsAcross } from "../../../../../shared/figures/write-number.ts";
+import { plannedBoreMoves } from "../../../../../shared/planned-move.ts";
 import type { IndicationAnswer } from "../../../../../shared/schemas/indications.ts";
 import type { JobRecord } from "../../../../../shared/schemas/jobs.ts";
 
@@ -73,7 +74,7 @@ export function tabulateLeft(
   unit: Unit,
 ): FigureTable {
   const decimals = decimalsAcross(unit);
-  const planned = plan.result.components.find(({ id }) => id === component)?.realised ?? [];
+  const planned = plannedBoreMoves(plan.result.components.find(({ id }) => id === component));
   return {
     caption: "Left to move: + right, + up",
     columns: [
