@@ -60,6 +60,8 @@ export const limits = {
   watchersPerCredential: 8,
   readingFileBytes: 10 * 1024 * 1024,
   readingRowsPerFile: 50_000,
+  /** Faults that a preview of a file lists; it says how many more there are. */
+  faultsPerPreview: 500,
   workbookBytes: 10 * 1024 * 1024,
   attachmentBytes: 10 * 1024 * 1024,
   attachmentsPerJob: 200,

@@ -40,8 +40,17 @@ export async function previewReadings(
     file: { name, bytes: content.length, sha256 },
     ...rest,
     readings: [...readings],
-    faults: faults.length > 0 ? faults : await engineFaults(deps, loaded, surveyId, read),
+    faults: faults.length > 0 ? firstOf(faults) : await engineFaults(deps, loaded, surveyId, read),
   };
+}
+
+/** As many as a person looks through, and how many more there are. */
+function firstOf(faults: readonly TableFault[]): TableFault[] {
+  const listed = faults.slice(0, limits.faultsPerPreview);
+  const more = faults.length - listed.length;
+  if (more === 0) return listed;
+  const detail = `${more} more faults are not listed: mend these, then look again.`;
+  return [...listed, { line: listed.at(-1)?.line ?? 1, column: null, code: "too_many_items", detail }];
 }
 
 /** What the engine says of readings that can be read, at the line on which each begins. */

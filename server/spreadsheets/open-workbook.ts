@@ -10,6 +10,8 @@ export interface OpenedSheet {
   readonly rows: readonly (readonly OpenedCell[])[];
   /** Addresses of cells that hold a formula: nothing evaluates it, and its stored value is not to be believed. */
   readonly formulas: ReadonlySet<string>;
+  /** Addresses of cells that hold an error, such as #REF!: they have no value, and are not empty. */
+  readonly errors: ReadonlySet<string>;
 }
 
 /** What a sheet may reach to. Farther cells would be filled up with empty ones. */
@@ -21,9 +23,9 @@ const farthest = { row: 20_000, column: 64 } as const;
  */
 export async function openWorkbook(bytes: Uint8Array): Promise<OpenedSheet[]> {
   const parts = unpackWorkbook(bytes);
-  const formulas = new Map<string, Set<string>>();
+  const scanned = new Map<string, Scanned>();
   for (const [path, xml] of parts) {
-    if (/^xl\/worksheets\/[^/]+\.xml$/.test(path)) formulas.set(path, scanSheet(xml));
+    if (/^xl\/worksheets\/[^/]+\.xml$/.test(path)) scanned.set(path, scanSheet(xml));
   }
   const files = sheetFiles(parts);
   // What was checked is what is read, packed again: no second reader of the zip can see another file.
@@ -40,19 +42,25 @@ export async function openWorkbook(bytes: Uint8Array): Promise<OpenedSheet[]> {
     name: sheet,
     // The reader's own types take the classes for what is made of them.
     rows: data as unknown as OpenedCell[][],
-    formulas: formulas.get(files.get(sheet) ?? "") ?? new Set<string>(),
+    ...(scanned.get(files.get(sheet) ?? "") ?? { formulas: new Set<string>(), errors: new Set<string>() }),
   }));
 }
 
-/** Addresses of formulas. @throws UnreadableWorkbook where a cell lies farther out than is taken */
-function scanSheet(xml: string): Set<string> {
-  const found = new Set<string>();
+interface Scanned {
+  readonly formulas: Set<string>;
+  readonly errors: Set<string>;
+}
+
+/** Addresses of formulas and errors. @throws UnreadableWorkbook where a cell lies farther out than is taken */
+function scanSheet(xml: string): Scanned {
+  const found: Scanned = { formulas: new Set(), errors: new Set() };
   for (const [, row] of xml.matchAll(/<row\b[^>]*?\sr="(\d+)"/g)) refuseFar(Number(row), 1);
   for (const [, attributes = "", rest = ""] of xml.matchAll(/<c\b([^>]*)>(<(?:f|is|v)\b)?/g)) {
     const [, letters = "", row = "1"] = /\sr="([A-Z]+)(\d+)"/.exec(attributes) ?? [];
     if (letters.length > 3) refuseFar(1, Infinity);
     refuseFar(Number(row), columnNumber(letters));
-    if (rest.startsWith("<f")) found.add(`${letters}${row}`);
+    if (rest.startsWith("<f")) found.formulas.add(`${letters}${row}`);
+    else if (/\st=(["'])e\1/.test(attributes)) found.errors.add(`${letters}${row}`);
   }
   return found;
 }

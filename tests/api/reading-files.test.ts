@@ -1,9 +1,11 @@
+import { limits } from "../../shared/limits.ts";
 import { createHash } from "node:crypto";
 import writeExcelFile from "write-excel-file/node";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { asFoundReadings } from "../../server/demo/fellgate-job.ts";
 import type { Reading } from "../../shared/schemas/job-entries.ts";
 import type { ReadingPreview } from "../../shared/schemas/reading-files.ts";
+import { alterPart } from "../support/altered-workbook.ts";
 import { openTestApp, type TestApp } from "../support/app.ts";
 import { makeOrganisation } from "../support/factories.ts";
 import { JobDriver } from "../support/fellgate-job.ts";
@@ -12,7 +14,7 @@ const head = "station,form,taken at,person,upper half,sense,zero,gauge sag (mm),
 const four = (station: string, readings: readonly (string | number)[], at = "2026-11-04T07:40:00Z") =>
   readings.map(
     (reading, index) =>
-      `${station},turned_gauge,${at},Ines Alder,on,larger_is_farther,nominal,0.02,${index * 90},${reading}`,
+      `${station},turned_gauge,${at},Ines Alder,on,larger_is_farther,nominal,0.02,${(index % 4) * 90},${reading}`,
   );
 const sound = [head, ...four("brg-1", [0.12, 0.05, -0.1, -0.03])].join("\r\n");
 
@@ -99,6 +101,26 @@ describe("files of readings", () => {
     });
   });
 
+  it("refuses values under no head, where a decimal comma would have split a number", async () => {
+    const trailing = sound.replaceAll("\r\n", ",\r\n").concat(",");
+    expect(await faults(trailing)).toEqual([]);
+    const split = [`${head},`, ...four("brg-1", ["0,12", "0,05", "-0,1", "-0,03"])].join("\n");
+    expect(await faults(split)).toEqual([[2, null, "unknown_field"]]);
+  });
+
+  it("asks the columns of numbers alone which decimal sign the file has, whatever minus is written", async () => {
+    const commas = sound.replaceAll(",", ";").replaceAll(".", ",");
+    const remarked = commas.replaceAll("\r\n", ";1.5\r\n").replace("(mm);1.5", "(mm);Remark").concat(";1.5");
+    expect(await faults(remarked, "&ignore=Remark")).toEqual([]);
+    expect(await faults(commas.replaceAll("Ines Alder", "4.2"))).toEqual([]);
+    const mixed = commas
+      .replace(";0,12", ";0.12")
+      .replaceAll(/0,02|-0,1\b|-0,03|0,05/g, (text) =>
+        text.startsWith("-") ? text.replace("-", "\u2212") : "0",
+      );
+    expect(await faults(mixed)).toEqual([[1, null, "combination_invalid"]]);
+  });
+
   it("names every fault once with its line and column, and takes empty for missing, never for 0", async () => {
     const lines = [
       head,
@@ -111,6 +133,22 @@ describe("files of readings", () => {
       ...[6, 7, 8, 9].map((line) => [line, "taken at", "wrong_type"]),
       [3, "reading", "required"],
     ]);
+  });
+
+  it("lists as many faults as a person looks through, and says how many more there are", async () => {
+    const lines = [
+      head,
+      ...four(
+        "brg-1",
+        Array.from({ length: limits.faultsPerPreview + 7 }, () => "x"),
+      ),
+    ];
+    const { faults: told } = await preview(lines.join("\n"));
+    expect(told).toHaveLength(limits.faultsPerPreview + 1);
+    expect(told.at(-1)).toMatchObject({
+      code: "too_many_items",
+      detail: expect.stringMatching(/^7 more/) as string,
+    });
   });
 
   it("says what the engine refuses at the line where the reading begins", async () => {
@@ -171,6 +209,25 @@ describe("files of readings", () => {
     expect(refused.faults).toMatchObject([{ line: 5, code: "wrong_type" }]);
     const stored = await send("reading-files", await workbookOf(rows), "", xlsx);
     expect(stored.status).toBe(201);
+  });
+
+  it("refuses an error of the spreadsheet in a column that may be empty, rather than take it for missing", async () => {
+    const rows = sound
+      .split("\r\n")
+      .map((line) => line.split(",").map((cell) => (/^-?\d+(\.\d+)?$/.test(cell) ? Number(cell) : cell)));
+    const book = await workbookOf(rows);
+    // Column H, the gauge's sag, is stated once for the reading: without it the bore would lie too high.
+    const broken = alterPart(book, "xl/worksheets/sheet1.xml", (xml) =>
+      xml.replaceAll(/<c r="H[2-5]"[^>]*>.*?<\/c>/g, (cell) =>
+        cell.replace(/<c (r="H\d").*/, '<c $1 t="e"><v>#DIV/0!</v></c>'),
+      ),
+    );
+    const { body } = await send("reading-previews", broken, "", xlsx);
+    const read = body as unknown as ReadingPreview;
+    expect(read.readings).toEqual([]);
+    expect(read.faults).toMatchObject([
+      { line: 2, code: "wrong_type", detail: expect.stringContaining("H2") },
+    ]);
   });
 
   it("refuses a workbook that is none, and CSV that is sent as a workbook", async () => {

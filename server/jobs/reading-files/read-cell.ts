@@ -12,19 +12,23 @@ const comma = /^[+-]?(\d+,\d*|,\d+)(e[+-]?\d+)?$/i;
  */
 export function readNumber(cell: Cell): number | null {
   if (typeof cell === "number") return Number.isFinite(cell) ? cell : null;
-  const text = (cell ?? "").replace("\u2212", "-");
+  const text = withPlainMinus(cell ?? "");
   if (!point.test(text) && !comma.test(text)) return null;
   const value = Number(text.replace(",", "."));
   return Number.isFinite(value) ? value : null;
 }
+
+/** U+2212 is the minus that typeset tables have. */
+const withPlainMinus = (text: string): string => text.replace("\u2212", "-");
 
 /** The decimal signs that the numbers among these cells use: a file that uses both was pieced together, or is misread. */
 export function decimalSigns(cells: readonly Cell[]): ReadonlySet<"point" | "comma"> {
   const signs = new Set<"point" | "comma">();
   for (const cell of cells) {
     if (typeof cell !== "string") continue;
-    if (comma.test(cell)) signs.add("comma");
-    else if (point.test(cell) && cell.includes(".")) signs.add("point");
+    const text = withPlainMinus(cell);
+    if (comma.test(text)) signs.add("comma");
+    else if (point.test(text) && text.includes(".")) signs.add("point");
   }
   return signs;
 }

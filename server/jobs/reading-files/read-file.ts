@@ -5,7 +5,7 @@ import { parseCsv } from "./parse-csv.ts";
 import { parseWorkbook } from "./parse-workbook.ts";
 import { mapColumns, type ReadingColumn } from "./reading-columns.ts";
 import { readingsOfTable } from "./readings-of-table.ts";
-import { UnreadableFile, type Table } from "./table.ts";
+import { UnreadableFile, type Table, type TableFault } from "./table.ts";
 
 /** What a file of readings may be sent as. */
 export const readingMediaTypes = [
@@ -56,8 +56,18 @@ export async function readFile({
   const mapped = mapColumns(head, { names, ignored });
   const columns = [...mapped.columns];
   if (mapped.faults.length > 0) return { ...unread(...mapped.faults), delimiter, columns };
+  const nameless = namelessFaults(table);
+  if (nameless.length > 0) return { ...unread(...nameless), delimiter, columns };
   const { readings, lines, decimal, faults } = readingsOfTable(table, columns, units);
   return { delimiter, decimal, columns, readings, lines, faults: [...faults] };
+}
+
+/** Values under no head are not dropped: a decimal comma that was taken for the end of a cell leaves its digits there. */
+function namelessFaults({ head, rows }: Table): TableFault[] {
+  const first = rows.find(({ cells }) => cells.some((cell, index) => cell !== null && head[index] === ""));
+  const detail =
+    "A value stands under no head: name the column, or put numbers with decimal commas in quotes.";
+  return first ? [{ line: first.line, column: null, code: "unknown_field", detail }] : [];
 }
 
 async function tryTable(content: Uint8Array, mediaType: ReadingMediaType): Promise<Table | UnreadableFile> {

@@ -40,7 +40,9 @@ export interface ReadReadings {
  */
 export function readingsOfTable(table: Table, columns: readonly MappedColumn[], units: Units): ReadReadings {
   const faults: TableFault[] = [];
-  const signs = decimalSigns(table.rows.flatMap(({ cells }) => cells));
+  // Of numbers alone: a station may be called 1.2, and what is to be ignored may hold anything.
+  const isNumber = columns.map(({ column }) => column !== null && readingColumns[column].as === "number");
+  const signs = decimalSigns(table.rows.flatMap(({ cells }) => cells.filter((_, index) => isNumber[index])));
   const [sign = null] = signs;
   if (signs.size > 1) {
     const detail = "Some numbers have a decimal point, some a comma: what was meant is not guessed.";

@@ -206,6 +206,13 @@ describe("a workbook with faults", () => {
     expect(found?.detail).toMatch(words);
   });
 
+  it("names the cell of an error of the spreadsheet, also where the cell may be empty", async () => {
+    const book = alterPart(await write(fellgateDocument), "xl/worksheets/sheet2.xml", (xml) =>
+      xml.replace(/<c r="E3"[^>]*>.*?<\/c>/, '<c r="E3" t="e"><v>#REF!</v></c>'),
+    );
+    expect(await faultsOf(book)).toMatchObject([{ sheet: "Stations", cell: "E3", code: "wrong_type" }]);
+  });
+
   it("lists all of them, each cell once", async () => {
     const once = alterCell(await write(fellgateDocument), "Stations", "D3", textInside("1,5"));
     const twice = alterCell(once, "Stations", "C4", textInside("turbine"));

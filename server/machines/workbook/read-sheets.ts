@@ -101,7 +101,7 @@ export function readTableSheet(
 }
 
 function take(
-  { name, formulas }: OpenedSheet,
+  { name, formulas, errors }: OpenedSheet,
   faults: Faults,
   item: Item,
   field: Field,
@@ -110,6 +110,11 @@ function take(
 ): void {
   if (formulas.has(cell)) {
     const detail = "Holds a formula: no formula is computed here. Enter its value.";
+    faults.push({ sheet: name, cell, code: "wrong_type", detail });
+    return;
+  }
+  if (errors.has(cell)) {
+    const detail = "Holds an error of the spreadsheet and no value. Enter its value.";
     faults.push({ sheet: name, cell, code: "wrong_type", detail });
     return;
   }
