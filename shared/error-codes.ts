@@ -53,7 +53,11 @@ export const problemKinds = {
   // 404, 405, 406, 409, 412, 413, 415, 422 of the protocol, 428, 429
   not_found: kind(404, "There is nothing here", "Check the address and the id."),
   method_not_allowed: kind(405, "This address does not take that method", "Use a method listed in Allow."),
-  not_acceptable: kind(406, "None of the accepted media types can be served", "Accept application/json."),
+  not_acceptable: kind(
+    406,
+    "None of the accepted media types can be served",
+    "Accept one of those that the detail names.",
+  ),
   request_timeout: kind(408, "The request took too long to arrive", "Send it again."),
   idempotency_in_progress: kind(
     409,

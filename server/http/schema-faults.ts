@@ -88,6 +88,14 @@ function sizeCode(origin: string, ofItems: "too_few_items" | "too_many_items"): 
 }
 
 function sentenceOf(issue: Issue): string {
+  if (issue.code === "too_big") {
+    if (issue.origin === "array") return `It holds at most ${issue.maximum} items.`;
+    if (issue.origin === "string") return `It has at most ${issue.maximum} characters.`;
+  }
+  if (issue.code === "too_small") {
+    if (issue.origin === "array") return `It holds at least ${issue.minimum} items.`;
+    if (issue.origin === "string") return `It has at least ${issue.minimum} characters.`;
+  }
   return /[.!?]$/.test(issue.message) ? issue.message : `${issue.message}.`;
 }
 

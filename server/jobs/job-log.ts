@@ -80,6 +80,8 @@ export interface JobEntry<Kind extends JobEntryKind = JobEntryKind> {
   readonly createdAt: Date;
   readonly memberId: string | null;
   readonly keyId: string | null;
+  /** The member's or key's name at that time. */
+  readonly authorName: string;
   readonly document: EntryDocuments[Kind];
 }
 

@@ -27,7 +27,7 @@ const tables = {
 
   job_entries: `jobId ${id} NOT NULL, revision INT UNSIGNED NOT NULL, sequence INT UNSIGNED NOT NULL, id ${id} NOT NULL,
     organisationId ${id} NOT NULL, kind ${word} NOT NULL, documentText LONGTEXT NOT NULL, createdAt ${time} NOT NULL,
-    memberId ${id} NULL, keyId ${id} NULL, event INT UNSIGNED NULL,
+    memberId ${id} NULL, keyId ${id} NULL, authorName ${name} NOT NULL, event INT UNSIGNED NULL,
     PRIMARY KEY (jobId, revision, sequence), UNIQUE KEY job_entries_id (jobId, revision, id),
     UNIQUE KEY job_entries_event (jobId, event),
     CONSTRAINT job_entries_job FOREIGN KEY (jobId) REFERENCES jobs (id)`,

@@ -20,6 +20,8 @@ export class JobEntryRow extends Model<InferAttributes<JobEntryRow>, InferCreati
   declare createdAt: Date;
   declare memberId: string | null;
   declare keyId: string | null;
+  /** The member's or key's name when the entry was made: renamed later, it changes no record. */
+  declare authorName: string;
   /** Its number among the job's events; null in the log of a later revision that began as a copy. */
   declare event: number | null;
 }
@@ -38,6 +40,7 @@ export function defineJobEntry(sequelize: Sequelize): typeof JobEntryRow {
       createdAt: columns.time(),
       memberId: columns.optionalReference(),
       keyId: columns.optionalReference(),
+      authorName: columns.text(),
       event: { type: DataTypes.INTEGER, allowNull: true },
     },
     { sequelize, tableName: "job_entries", modelName: "jobEntry" },

@@ -17,9 +17,23 @@ export function authorColumns(caller: Caller): { memberId: string | null; keyId:
     : { memberId: null, keyId: caller.key.id };
 }
 
+export const nameOfCaller = (caller: Caller): string =>
+  caller.by === "member" ? caller.member.name : caller.key.name;
+
+/** Who did it, by today's name, or by the one that was kept with what was done. */
 export function presentAuthor(
-  { memberId, keyId }: { readonly memberId: string | null; readonly keyId: string | null },
+  {
+    memberId,
+    keyId,
+    authorName,
+  }: {
+    readonly memberId: string | null;
+    readonly keyId: string | null;
+    readonly authorName?: string;
+  },
   names: CallerNames,
 ): Author {
-  return { member: names.member(memberId), key: names.key(keyId) };
+  const named = <Known extends { readonly name: string }>(known: Known | null) =>
+    known && authorName !== undefined ? { ...known, name: authorName } : known;
+  return { member: named(names.member(memberId)), key: named(names.key(keyId)) };
 }

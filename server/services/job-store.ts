@@ -13,7 +13,7 @@ import {
 } from "../jobs/job-log.ts";
 import type { Job } from "../models/job.ts";
 import type { JobEntryRow } from "../models/job-entry.ts";
-import { authorColumns, type By } from "./author.ts";
+import { authorColumns, nameOfCaller, type By } from "./author.ts";
 import { eventOfEntry } from "../webhooks/event-of-entry.ts";
 import { tell } from "../webhooks/events.ts";
 import { documentOf, findRevision } from "./machines.ts";
@@ -129,6 +129,7 @@ export async function appendEntries(
     createdAt,
     event: firstEvent + index,
     ...authorColumns(by.caller),
+    authorName: nameOfCaller(by.caller),
   }));
   await deps.database.models.jobEntries.bulkCreate(made, { transaction });
   await row.update({ version: row.version + 1, events: row.events + made.length }, { transaction });
@@ -164,13 +165,14 @@ export function refuseSigned({ state, revision }: Pick<Job, "state" | "revision"
 }
 
 function entryOf(row: JobEntryRow): JobEntry {
-  const { kind, id, createdAt, memberId, keyId, documentText } = row;
+  const { kind, id, createdAt, memberId, keyId, authorName, documentText } = row;
   return {
     kind,
     id,
     createdAt,
     memberId,
     keyId,
+    authorName,
     document: JSON.parse(documentText) as EntryDocuments[typeof kind],
   };
 }

@@ -14,7 +14,14 @@ import { isoTime } from "../presenters/time.ts";
 import type { By } from "./author.ts";
 import { readCallerNames } from "./caller-names.ts";
 import { loadResults } from "./job-results.ts";
-import { appendEntries, loadJob, type Added, type LoadedJob, type NewEntry } from "./job-store.ts";
+import {
+  appendEntries,
+  loadJob,
+  refuseSigned,
+  type Added,
+  type LoadedJob,
+  type NewEntry,
+} from "./job-store.ts";
 import { documentOf, findMachine, findRevision, refuseStale } from "./machines.ts";
 import { recordAudit, type AuditAction } from "./record-audit.ts";
 
@@ -105,6 +112,7 @@ export async function logMove(
 ): Promise<Added> {
   const loaded = await loadJob(deps, by.caller.organisation.id, id, { transaction });
   const { machine, state } = loaded;
+  refuseSigned(loaded.row);
   refuseUnknownParts(loaded, move);
   const plan = state.plans.at(-1);
   const planned = plan
@@ -140,11 +148,11 @@ export async function withdrawEntry(
   const loaded = await loadJob(deps, by.caller.organisation.id, place.id, { transaction });
   const entry = loaded.entries.find(({ id }) => id === place.entry);
   if (!entry) throw new HttpProblem("not_found", "The job has no entry with this id.");
-  if (!withdrawable.includes(entry.kind) || isWithdrawn(loaded.entries, entry.id)) {
-    throw new HttpProblem(
-      "entry_not_withdrawable",
-      `An entry of kind ${entry.kind} is not withdrawn, and none twice.`,
-    );
+  if (!withdrawable.includes(entry.kind)) {
+    throw new HttpProblem("entry_not_withdrawable", `An entry of kind ${entry.kind} cannot be withdrawn.`);
+  }
+  if (isWithdrawn(loaded.entries, entry.id)) {
+    throw new HttpProblem("entry_not_withdrawable", "The entry has been withdrawn already.");
   }
   const document = { entry: entry.id, reason };
   const added = await appendEntries(deps, transaction, loaded, [{ kind: "withdrawal", document }], by);

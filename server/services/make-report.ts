@@ -30,7 +30,12 @@ export async function readForReport(
   { id, revision }: ReportedJob,
 ): Promise<{ readonly record: JobRecord; readonly context: ReportContext }> {
   const loaded = await loadJob(deps, organisationId, id, revision === undefined ? {} : { revision });
-  const record = await recordOf(deps, loaded);
+  const whole = await recordOf(deps, loaded);
+  // Revisions begun after this one are nothing that it can tell: what was signed is handed out the same for ever.
+  const record = {
+    ...whole,
+    revisions: whole.revisions.filter(({ revision: later }) => later <= whole.revision),
+  };
   const recordHash = hashOf(loaded, await loadResults(deps, loaded));
   const computed = record.surveys
     .map(({ result }) => result?.engineVersion)

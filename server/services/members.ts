@@ -136,7 +136,7 @@ export async function updateMember(
   by: Omit<By, "claim">,
 ): Promise<Member> {
   const organisationId = by.caller.organisation.id;
-  return inTransaction(deps.database.sequelize, async (transaction) => {
+  const changed = await inTransaction(deps.database.sequelize, async (transaction) => {
     // All administrators are locked together, so that two demotions at once cannot leave none.
     const admins = await deps.database.models.members.findAll({
       where: { organisationId, role: "admin", disabledAt: null },
@@ -177,6 +177,10 @@ export async function updateMember(
     });
     return member;
   });
+  const { sessions } = deps.database.models;
+  const open = await sessions.findAll({ attributes: ["id"], where: { memberId: id, endedAt: null } });
+  for (const session of open) deps.credentials.forget(session.id);
+  return changed;
 }
 
 async function lockMember(

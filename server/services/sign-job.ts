@@ -121,12 +121,13 @@ export function hashedRecord(
     machineHash,
     entries: entries
       .filter(({ kind }) => kind !== "signature")
-      .map(({ id, kind, createdAt, memberId, keyId, document }) => ({
+      .map(({ id, kind, createdAt, memberId, keyId, authorName, document }) => ({
         id,
         kind,
         createdAt: createdAt.toISOString(),
         memberId,
         keyId,
+        authorName,
         document,
       })),
     calculations: hashes.map(({ id, resultHash }) => ({ id, resultHash })),

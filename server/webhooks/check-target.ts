@@ -42,7 +42,7 @@ type TargetRules = Pick<Config, "webhookAllowedNetworks" | "webhookPorts" | "pub
  */
 export async function checkTarget(text: string, rules: TargetRules, resolve: ResolveHost): Promise<Target> {
   const url = readTarget(text, rules);
-  const host = url.hostname.replace(/^\[(.*)\]$/, "$1").replace(/\.$/, "");
+  const host = rootless(url.hostname).replace(/^\[(.*)\]$/, "$1");
   const addresses = await addressesOf(host, resolve);
   const allowed = networkList(rules.webhookAllowedNetworks);
   if (addresses.every(({ address }) => holdsAddress(allowed, address))) return { url, addresses };
@@ -75,11 +75,14 @@ function readTarget(text: string, { publicUrl }: TargetRules): URL {
     throw new TargetRefused("An address with a name or password in it is not taken.");
   }
   if (url.hash !== "") throw new TargetRefused("An address ends before a #.");
-  if (publicUrl !== null && url.hostname === new URL(publicUrl).hostname) {
+  if (publicUrl !== null && rootless(url.hostname) === rootless(new URL(publicUrl).hostname)) {
     throw new TargetRefused("The host is this service's own.");
   }
   return url;
 }
+
+/** A name that ends in the dot of the root is the same name. */
+const rootless = (hostname: string): string => hostname.replace(/\.$/, "");
 
 async function addressesOf(host: string, resolve: ResolveHost): Promise<readonly Address[]> {
   const version = isIP(host);

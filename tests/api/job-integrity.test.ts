@@ -161,6 +161,7 @@ describe("what a job's record rests on", () => {
           createdAt: new Date(),
           memberId: null,
           keyId: null,
+          authorName: "",
           event: row.events + 1 + index,
         })),
       );

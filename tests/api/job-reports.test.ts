@@ -64,4 +64,34 @@ describe("GET /v1/jobs/{id}/report", () => {
     expect(record.signature.recordHash).toBe(recordHash);
     expect(signed.headers["content-disposition"]).toContain("Unit-2-major-outage-r1.json");
   });
+
+  it("stays the same to the last byte, in every form, once the job goes on and its people are renamed", async () => {
+    const signed = await Promise.all(reportFormats.map(({ extension }) => get(`report.${extension}`)));
+    expect((await job.post(`/v1/jobs/${job.id}/revisions`, { reason: "A late reading." })).status).toBe(201);
+    await job.add("/comments", { text: "Of the second revision." });
+    const { members, tokens } = job.works;
+    const { version } = await app.deps.database.models.members.findOne({
+      where: { id: members.engineer.id },
+      rejectOnEmpty: true,
+    });
+    const renamed = await app
+      .call()
+      .patch(`/v1/members/${members.engineer.id}`)
+      .set("Authorization", `Bearer ${tokens.admin}`)
+      .set("If-Match", `"${version}"`)
+      .send({ name: "Renamed Since" });
+    expect(renamed.status).toBe(200);
+    await job.add("/comments", { text: "By the new name." });
+    for (const [index, { extension }] of reportFormats.entries()) {
+      const again = await get(`report.${extension}?revision=1`);
+      expect([extension, again.headers.etag]).toEqual([extension, signed[index]?.headers.etag]);
+    }
+    const second = JSON.parse(String((await get("report.json")).body)) as {
+      record: { revisions: { revision: number }[]; comments: { author: { member: { name: string } } }[] };
+    };
+    const names = second.record.comments.map(({ author }) => author.member.name);
+    expect(names.at(-1)).toBe("Renamed Since");
+    expect(names.slice(0, -1)).not.toContain("Renamed Since");
+    expect(second.record.revisions.map(({ revision }) => revision)).toEqual([1, 2]);
+  });
 });

@@ -77,6 +77,10 @@ describe("a whole job", () => {
     expect(recordHash).toBe(record.signature?.recordHash);
     const late = await job.post(`/v1/jobs/${job.id}/comments`, { text: "One more thing." });
     expect(late.body).toMatchObject({ status: 409, code: "job_signed" });
+    // Before all else that is wrong with it: a reason would not help.
+    const move = { component: "compressor-casing", at: "2026-11-20T08:00:00Z", finished: true };
+    const moved = await job.post(`/v1/jobs/${job.id}/moves`, move);
+    expect(moved.body).toMatchObject({ status: 409, code: "job_signed" });
   });
 
   it("is corrected as a new revision with a reason, while the old stays readable", async () => {

@@ -83,6 +83,7 @@ describe("where a webhook may go", () => {
     "https://hooks.example.com:80/",
     "https://bores.example.com/",
     "https://BORES.example.com:8443/",
+    "https://bores.example.com./",
     "https://hooks.example.com/#part",
   ])("not to %s, and the answer says why", async (url) => {
     const { status, body } = await order(url);

@@ -38,6 +38,7 @@ export function entry<Kind extends JobEntryKind>(
     createdAt: new Date(Date.UTC(2026, 10, 1, 0, serial)),
     memberId: null,
     keyId: null,
+    authorName: "Ines Alder",
     document,
   };
 }

@@ -63,7 +63,7 @@ export class JobWriter {
   add<Kind extends JobEntryKind>(kind: Kind, document: EntryDocuments[Kind]): string {
     const id = this.newId();
     const createdAt = new Date(startMs + this.entries.length * 60_000);
-    this.entries.push({ kind, id, createdAt, memberId, keyId: null, document });
+    this.entries.push({ kind, id, createdAt, memberId, keyId: null, authorName: writerName, document });
     return id;
   }
 
