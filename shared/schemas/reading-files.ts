@@ -47,11 +47,9 @@ export const readingPreview = z
       }),
     ),
     readings: z.array(readingSchema).meta({ description: "Those without a fault, in the machine's units." }),
-    faults: z
-      .array(fileFault)
-      .meta({
-        description: `The first ${limits.faultsPerPreview}, then how many more. A file is taken only without any.`,
-      }),
+    faults: z.array(fileFault).meta({
+      description: `The first ${limits.faultsPerPreview}, then how many more. A file is taken only without any.`,
+    }),
   })
   .meta({ id: "ReadingPreview" });
 
