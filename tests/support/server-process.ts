@@ -44,8 +44,9 @@ export const nextEntryOf = (jobId: string): Hold => ({
   before: [
     "SET FOREIGN_KEY_CHECKS = 0",
     "START TRANSACTION",
-    `INSERT INTO job_entries (jobId, revision, sequence, id, organisationId, kind, documentText, createdAt)
-     SELECT jobId, revision, sequence + 1, UUID(), organisationId, kind, documentText, createdAt FROM job_entries
+    `INSERT INTO job_entries (jobId, revision, sequence, id, organisationId, kind, documentText, createdAt,
+     authorName)
+     SELECT jobId, revision, sequence + 1, UUID(), organisationId, kind, documentText, createdAt, authorName FROM job_entries
      WHERE jobId = '${jobId}' ORDER BY sequence DESC LIMIT 1`,
   ],
   after: ["ROLLBACK", "SET FOREIGN_KEY_CHECKS = 1"],

@@ -6,9 +6,6 @@ import { moveShareMm } from "./shim-groups.ts";
 import type { ShimSupply } from "./shim-supply.ts";
 import type { ChosenStack, PlaceRow, ShimChoice, ShimTask } from "./shim-task.ts";
 
-/** What solving one quadratic program is worth, in trials of the search. */
-const trialsPerProgram = 100;
-
 /**
  * The rigid move that `changes` make (one per load-bearing place of the task, in its order), with what the upper pads
  * then need. Null when the travel, a stack's limits, the misfit or the counted lines of the stock forbid it.
@@ -60,7 +57,7 @@ function setByJack(
   fitted: readonly number[],
   budget: SearchBudget,
 ): readonly number[] | null {
-  budget.spend(trialsPerProgram + task.travel.length);
+  budget.spend(budget.trialsPerProgram + task.travel.length);
   return task.objective.bestAlong(fitted, task.fit.open, task.travel);
 }
 

@@ -15,11 +15,13 @@ export class SearchBudget {
 
   /**
    * `times` as many trials for the call as a call has that chooses each component's shims once, and `share` of the
-   * trials for each component.
+   * trials for each component. `trialsPerProgram`: what one quadratic program is worth in trials; those of the largest
+   * deviation take several times as long as those of squares.
    */
   constructor(
     private readonly times = 1,
     private readonly share = 1,
+    readonly trialsPerProgram = 100,
   ) {}
 
   startComponent(): void {

@@ -6,7 +6,7 @@ export interface ShimChange {
   readonly changeMm: number;
   readonly addMm: readonly number[];
   readonly removeMm: readonly number[];
-  /** Pieces from stock among those added, each by its line. */
+  /** Pieces from stock among those added, each by its line, in their order. */
   readonly stockLines?: readonly number[];
   /** Pieces handled: added and removed. */
   readonly handled: number;
@@ -15,27 +15,17 @@ export interface ShimChange {
 /** Thicknesses this near are one thickness: far below any gauge, far above rounding. */
 export const sameThicknessMm = 1e-9;
 
-/**
- * Below 0 when the changes `a` together handle fewer pieces than `b`, or as many and take more of the first line of the
- * stock in which they differ. What is below 0 stays so whatever is added to both.
- */
-export function fewerThenStockOrder(a: readonly ShimChange[], b: readonly ShimChange[]): number {
-  const handled = (changes: readonly ShimChange[]) => changes.reduce((sum, each) => sum + each.handled, 0);
-  const fewer = handled(a) - handled(b);
-  if (fewer !== 0) return fewer;
-  const [ones, others] = [linesOf(a), linesOf(b)];
+/** Below 0 when `a` handles fewer pieces than `b`, or as many and takes more of the first line in which they differ. */
+export function fewerThenStockOrder(a: ShimChange, b: ShimChange): number {
+  if (a.handled !== b.handled) return a.handled - b.handled;
+  const { stockLines: ones = [] } = a;
+  const { stockLines: others = [] } = b;
   for (let k = 0; k < Math.max(ones.length, others.length); k++) {
     const [one = Infinity, other = Infinity] = [ones[k], others[k]];
     if (one !== other) return one - other;
   }
   return 0;
 }
-
-/** The stock's line of every piece, in order. */
-const linesOf = (changes: readonly ShimChange[]): readonly number[] =>
-  changes.length === 1
-    ? (changes[0]?.stockLines ?? [])
-    : changes.flatMap(({ stockLines = [] }) => stockLines).sort((x, y) => x - y);
 
 /** What listing one change, and one set of pieces to take out, is worth in trials of the search. */
 const trialsPerWay = 10;

@@ -1,7 +1,8 @@
 import { along, dot, lengthOf } from "./least-squares-in-order.ts";
 import type { SearchBudget } from "./search-budget.ts";
 import type { SearchOption } from "./search-choices.ts";
-import { fewerThenStockOrder, sameThicknessMm, type ShimChange } from "./shim-changes.ts";
+import { sameThicknessMm, type ShimChange } from "./shim-changes.ts";
+import { everyWayOf } from "./ways-together.ts";
 import type { ChangeWays, ShimSupply } from "./shim-supply.ts";
 import type { ShimTask } from "./shim-task.ts";
 import type { Place } from "./support-places.ts";
@@ -86,34 +87,6 @@ export function groupOptions(
     .map((option) => ({ option, cost: dot(option.effect, option.effect) + option.rise + option.price }))
     .sort((a, b) => a.cost - b.cost)
     .map(({ option }) => option);
-}
-
-/** Ways put together that take as long as one trial of the search. */
-const pairsPerTrial = 4;
-
-/** The ways to make the changes of a group: one for each use of the counted lines, of fewest pieces, then first in stock order. */
-function everyWayOf(
-  changes: readonly ChangeWays[],
-  supply: ShimSupply,
-  budget: SearchBudget,
-): ShimChange[][] {
-  const [firsts = [], seconds] = changes.map(({ ways }) => ways);
-  if (!seconds) return firsts.map((way) => [way]);
-  const pairs = firsts.length * seconds.length;
-  budget.spend(pairs / pairsPerTrial);
-  if (pairs < 2) return firsts.flatMap((first) => seconds.map((second) => [first, second]));
-  const used = (ways: readonly ShimChange[]) => ways.map((way) => ({ way, use: supply.countedOf([way]) }));
-  const others = used(seconds);
-  const fewest = new Map<string, readonly [ShimChange, ShimChange]>();
-  for (const first of used(firsts)) {
-    for (const second of others) {
-      const use = first.use.map((count, k) => count + (second.use[k] ?? 0)).join(" ");
-      const known = fewest.get(use);
-      const pair = [first.way, second.way] as const;
-      if (!known || fewerThenStockOrder(pair, known) < 0) fewest.set(use, pair);
-    }
-  }
-  return [...fewest.values()].map((pair) => [...pair]);
 }
 
 function optionOf(

@@ -12,10 +12,10 @@ import { chooseAlone, chooseFromRest, overdrawnBy, type TasksOf } from "./take-f
 export type SolvePass = (shimsOf: (index: number) => ComponentShims | null) => SolvedComponent[];
 
 /** Sharing stock by prices solves every component some tens of times; for the largest deviation a trial takes longer. */
-const sharedByPrices: Record<MoveAim, { readonly calls: number; readonly share: number }> = {
-  least_squares: { calls: 4, share: 0.5 },
-  minimax: { calls: 2.2, share: 0.3 },
-};
+const sharedByPrices = {
+  least_squares: { calls: 3.5, share: 0.5, perProgram: 100 },
+  minimax: { calls: 1.2, share: 0.15, perProgram: 600 },
+} as const satisfies Record<MoveAim, object>;
 /** What comes of taking in turn is only where sharing begins. */
 const shareInTurn = 0.1;
 
@@ -69,8 +69,8 @@ export function solveWithShims(problem: MoveProblem, pass: SolvePass): Solved {
     components,
     alone,
     turn,
-    new SearchBudget(),
-    new SearchBudget(priced.calls, priced.share),
+    new SearchBudget(1, 1, priced.perProgram),
+    new SearchBudget(priced.calls, priced.share, priced.perProgram),
   );
   const inOrder = pass((index) => ({ supply, choose: () => shared.byComponent.get(index) ?? null }));
   return { inOrder, search: shared.search };

@@ -15,8 +15,9 @@ interface Removal {
   readonly left: number;
 }
 
-/** What listing one way is worth in trials of the search. */
+/** What listing one way is worth in trials of the search, and comparing it with so many others. */
 const trialsPerWay = 2;
+const comparedPerTrial = 20;
 
 /**
  * The changes of one stack within `from` to `to`, thinnest first, with pieces from stock, and one cut to size if they are
@@ -61,12 +62,12 @@ export function stockChangesWithin(
         if (made.cutMm > 0) addMm.push(made.cutMm);
         const changeMm = addMm.reduce((sum, mm) => sum + mm, 0) - sumMm;
         const way = { changeMm, addMm, removeMm: pieces, handled, stockLines };
-        if (!known || fewerThenStockOrder([way], [known]) < 0) ways.set(use, way);
+        if (!known || fewerThenStockOrder(way, known) < 0) ways.set(use, way);
       }
     }
   }
   return [...kept.values()]
-    .map((ways) => undominated(supply, [...ways.values()]))
+    .map((ways) => undominated(supply, [...ways.values()], budget))
     .map((ways) => ({ changeMm: ways[0]?.changeMm ?? 0, ways }))
     .sort((a, b) => a.changeMm - b.changeMm);
 }
@@ -78,13 +79,14 @@ function ensure(kept: Map<number, Map<string, ShimChange>>, key: number): Map<st
 }
 
 /** Fewest pieces first, then in stock order; none that one before it makes with no more of any counted line. */
-function undominated(supply: ShimSupply, ways: readonly ShimChange[]): ShimChange[] {
+function undominated(supply: ShimSupply, ways: readonly ShimChange[], budget: SearchBudget): ShimChange[] {
   if (ways.length < 2) return [...ways];
   const inOrder = ways
     .map((way) => ({ way, use: supply.countedOf([way]) }))
-    .sort((a, b) => fewerThenStockOrder([a.way], [b.way]));
+    .sort((a, b) => fewerThenStockOrder(a.way, b.way));
   const kept: typeof inOrder = [];
   for (const each of inOrder) {
+    budget.spend(kept.length / comparedPerTrial);
     if (!kept.some(({ use }) => use.every((count, k) => count <= (each.use[k] ?? 0)))) kept.push(each);
   }
   return kept.map(({ way }) => way);
