@@ -49,11 +49,16 @@ describe("a key that ends", () => {
     expect(told.map(([, count]) => count)).toEqual([0, 0, 1, 0, 1, 0, 1, 0]);
 
     await hooks.worker.runDue();
-    expect(receiver.received.map(({ payload }) => [payload.type, payload.data])).toEqual(
-      [14, 7, 1].map((days) => [
-        "key.expiring",
-        { keyId: id, days, expiresAt: new Date(startMs + 90 * DAY_MS).toISOString() },
-      ]),
+    // Those that are due together are sent together, and arrive in any order.
+    const arrived = receiver.received.map(({ payload }) => [payload.type, payload.data]);
+    expect(arrived).toHaveLength(3);
+    expect(arrived).toEqual(
+      expect.arrayContaining(
+        [14, 7, 1].map((days) => [
+          "key.expiring",
+          { keyId: id, days, expiresAt: new Date(startMs + 90 * DAY_MS).toISOString() },
+        ]),
+      ),
     );
 
     expect(await sendQueuedMails(app.deps)).toBe(3);
